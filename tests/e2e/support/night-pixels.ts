@@ -1,0 +1,17 @@
+import { expect, type Page } from '@playwright/test'
+import { PNG } from 'pngjs'
+
+/** Fails when a screenshot of the whole page holds one pixel whose green or blue is above zero; names the first of them. */
+export async function expectOnlyRedPixels(page: Page, screen: string): Promise<void> {
+  const { data, width, height } = PNG.sync.read(await page.screenshot({ fullPage: true }))
+  let strayCount = 0
+  let first: string | null = null
+  for (let offset = 0; offset < width * height * 4; offset += 4) {
+    if (data[offset + 1] > 0 || data[offset + 2] > 0) {
+      strayCount += 1
+      const pixel = offset / 4
+      first ??= `x ${pixel % width}, y ${Math.floor(pixel / width)}: rgb(${data[offset]}, ${data[offset + 1]}, ${data[offset + 2]})`
+    }
+  }
+  expect({ strayCount, first }, `pixels with green or blue on ${screen}`).toEqual({ strayCount: 0, first: null })
+}
