@@ -1,0 +1,59 @@
+import type { ReactNode } from 'react'
+import { Card } from './card'
+
+export interface KeyFigure {
+  label: ReactNode
+  /** The figure as text, minus sign and digits already right. */
+  value: ReactNode
+  /** Its standard error as text, without the ± sign. */
+  uncertainty?: ReactNode
+  unit?: ReactNode
+  /** A word or two behind it, such as “real change”. */
+  remark?: ReactNode
+}
+
+/** The key figures of a screen, side by side; on a phone two in a row. */
+export function FigureStrip({ figures, label = 'Key figures' }: { figures: readonly KeyFigure[]; label?: string }) {
+  return (
+    <Card aria-label={label} className="overflow-hidden">
+      <dl className="-mt-px -ml-px grid grid-cols-2 md:grid-flow-col md:auto-cols-fr md:grid-cols-none">
+        {figures.map((figure, index) => (
+          <div
+            key={index}
+            className="min-w-0 border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:last:odd:col-span-2"
+          >
+            <dt className="text-sm text-soft">{figure.label}</dt>
+            <dd className="mt-0.5">
+              <Figure {...figure} />
+            </dd>
+          </div>
+        ))}
+      </dl>
+    </Card>
+  )
+}
+
+/** One large figure with its uncertainty, smaller and softer, and its unit. */
+export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'label'>) {
+  return (
+    <span className="figures">
+      <span className="text-figure font-semibold">{value}</span>
+      <span className="text-base text-soft">
+        {uncertainty === undefined ? null : (
+          <>
+            {' '}
+            ±{'\u2009'}
+            {uncertainty}
+          </>
+        )}
+        {unit === undefined ? null : (
+          <>
+            {'\u2009'}
+            {unit}
+          </>
+        )}
+        {remark === undefined ? null : <span className="ml-3">{remark}</span>}
+      </span>
+    </span>
+  )
+}
