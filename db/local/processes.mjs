@@ -1,0 +1,44 @@
+import { spawn, spawnSync } from 'node:child_process'
+
+/** Runs a program to its end with its output on ours; answers the exit code (1 when it could not start). */
+export function run(command, args, options = {}) {
+  return new Promise((resolve) => {
+    const child = spawn(command, args, { stdio: 'inherit', ...options })
+    child.on('error', (error) => {
+      console.error(`${command}: ${error.message}`)
+      resolve(1)
+    })
+    child.on('exit', (code, signal) => resolve(code ?? (signal ? 1 : 0)))
+  })
+}
+
+/** Runs a program to its end in silence; answers what it printed and whether it succeeded. */
+export function capture(command, args, options = {}) {
+  const result = spawnSync(command, args, { encoding: 'utf8', maxBuffer: 64 * 1024 * 1024, ...options })
+  return {
+    ok: !result.error && result.status === 0,
+    stdout: result.stdout ?? '',
+    stderr: result.error ? result.error.message : (result.stderr ?? ''),
+  }
+}
+
+/** Whether a process with this id exists (also when it belongs to someone else). */
+export function isAlive(pid) {
+  try {
+    process.kill(pid, 0)
+    return true
+  } catch (error) {
+    return error.code === 'EPERM'
+  }
+}
+
+export function isRoot() {
+  return typeof process.getuid === 'function' && process.getuid() === 0
+}
+
+/** What the person at the terminal must do; told without a stack trace. */
+export class SetUpError extends Error {}
+
+export function pause(milliseconds) {
+  return new Promise((resolve) => setTimeout(resolve, milliseconds))
+}
