@@ -2,7 +2,7 @@ import { createRandom } from '@/lib/analysis/random'
 import type { SimulatedSeeing } from './options'
 
 /** Sources of chance; each has a stream of random numbers of its own. */
-export const CHANCE = { seeing: 1, declination: 2, wander: 3, cadence: 4 } as const
+export const CHANCE = { seeing: 1, declination: 2, wander: 3, cadence: 4, night: 5 } as const
 
 /**
  * Standard normal numbers for one source of chance of one run. The stream's number is mixed into the seed by an odd
