@@ -70,15 +70,17 @@ interface Projection {
 
 const LARGEST_ITERATION_COUNT = 200
 const LARGEST_POLISH_COUNT = 60
-/** Relative step of the frequencies below which the damped iteration hands over. */
-const STEP_TOLERANCE = 1e-8
+/** Relative step of the frequencies below which the damped iteration hands over to the polish, or ends without one. */
+const STEP_TOLERANCE = 1e-6
+/** Fits that only choose among models compare sums of squares, so they may stop where that no longer falls. */
+const RSS_TOLERANCE = 1e-6
 
 /**
  * Joint fit of drift, worm harmonics and free lines, e = Σ c_j τ^j + Σ (a_k cos kθ + b_k sin kθ) + Σ (α_l cos + β_l sin).
  *
  * Variable projection: only frequencies are iterated on, with the Jacobian of the projected residual
  * J_m = −[P⊥ D_m c + Q R^{−T} D_mᵀ r]. Each damped step is solved on the problem compressed by QR to one row per free
- * frequency. It never stops on the sum of squares, which is flat to rounding long before the parameters are; then
+ * frequency. A polished fit never stops on the sum of squares, which is flat to rounding long before the parameters are;
  * undamped Gauss–Newton on all parameters goes on while its largest scaled step shrinks.
  *
  * @returns the fit; `few-points` with fewer than p + 10 samples; `singular` where columns depend on each other
@@ -117,7 +119,7 @@ export function fitJointly(request: JointFitRequest): JointFit | Failure {
 
   const start = project(new Float64Array(unknowns.length).fill(1))
   if ('ok' in start) return start
-  const damped = iterateDamped({ start, unknowns, time, project })
+  const damped = iterateDamped({ start, unknowns, time, project, isPolished: request.isPolished })
   let scaled = damped.scaled
   let current = damped.projection
   if (request.isPolished && unknowns.length > 0 && damped.escaped.length === 0) {
@@ -175,6 +177,7 @@ interface DampedOptions {
   unknowns: readonly Unknown[]
   time: CentredTime
   project: (scaled: Float64Array) => Projection | Failure
+  isPolished: boolean
 }
 
 interface DampedResult {
@@ -184,7 +187,7 @@ interface DampedResult {
   escaped: number[]
 }
 
-function iterateDamped({ start, unknowns, time, project }: DampedOptions): DampedResult {
+function iterateDamped({ start, unknowns, time, project, isPolished }: DampedOptions): DampedResult {
   let scaled = new Float64Array(unknowns.length).fill(1)
   let projection = start
   if (unknowns.length === 0) return { scaled, projection, isConverged: true, escaped: [] }
@@ -208,8 +211,12 @@ function iterateDamped({ start, unknowns, time, project }: DampedOptions): Dampe
     }
     const candidate = project(next)
     if (!('ok' in candidate) && candidate.solution.rss <= projection.solution.rss) {
+      const fall = projection.solution.rss - candidate.solution.rss
       scaled = next
       projection = candidate
+      if (!isPolished && fall < RSS_TOLERANCE * candidate.solution.rss) {
+        return { scaled, projection, isConverged: true, escaped: lines }
+      }
       compressed = compressStep(projection, unknowns, time)
       damping = Math.max(damping / 10, 1e-12)
     } else {

@@ -190,9 +190,21 @@ export function euclideanNorm(values: Float64Array, start = 0): number {
   return largest * Math.sqrt(scaled)
 }
 
+/** H = 1 − 2vvᵀ applied to target. Four sums at once, since a single running sum waits for each addition. */
 function reflectInPlace(reflector: Float64Array, start: number, target: Float64Array): void {
-  let sum = 0
-  for (let i = start; i < target.length; i++) sum += reflector[i] * target[i]
-  const twice = 2 * sum
-  for (let i = start; i < target.length; i++) target[i] -= twice * reflector[i]
+  const length = target.length
+  let sum0 = 0
+  let sum1 = 0
+  let sum2 = 0
+  let sum3 = 0
+  let i = start
+  for (; i + 3 < length; i += 4) {
+    sum0 += reflector[i] * target[i]
+    sum1 += reflector[i + 1] * target[i + 1]
+    sum2 += reflector[i + 2] * target[i + 2]
+    sum3 += reflector[i + 3] * target[i + 3]
+  }
+  for (; i < length; i++) sum0 += reflector[i] * target[i]
+  const twice = 2 * (sum0 + sum1 + (sum2 + sum3))
+  for (let j = start; j < length; j++) target[j] -= twice * reflector[j]
 }

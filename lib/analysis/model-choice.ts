@@ -1,0 +1,233 @@
+import { averageBlocks, scatterWithinBlocks } from './block-average'
+import type { BlockAverage } from './block-average'
+import { amplitudeError, autoregressiveCovariance, listOscillations } from './fit-covariance'
+import { fitJointly } from './joint-fit'
+import type { JointFit, JointFitRequest } from './joint-fit'
+import { factorQr } from './least-squares'
+import { correctLagOne, effectiveSampleCount, lagOneCorrelation } from './noise-model'
+import type { Failure, ModelCandidate, ModelChoice, Track } from './types'
+
+export interface ModelChoiceRequest {
+  track: Track
+  cadenceSeconds: number
+  worm: { frequencyHz: number; isFree: boolean }
+  lines: readonly { frequencyHz: number; isFree: boolean }[]
+  highestFrequencyHz: number
+  /** Degrees and counts to choose from; a single one is not chosen but kept. */
+  degrees: readonly number[]
+  largestHarmonicCount: number
+  fixedHarmonicCount: number | null
+}
+
+export interface ChosenModel {
+  ok: true
+  driftDegree: number
+  harmonicCount: number
+  /** The worm's frequency in the chosen model, a good start for the final fit. */
+  wormHz: number
+  choice: ModelChoice
+  effectiveSampleCount: number
+}
+
+/** Records longer than this are averaged in blocks while models are compared. */
+const DIRECT_SAMPLE_COUNT = 2000
+/** Models whose BIC lies so close to the smallest count as equal; the simplest is taken. */
+const BIC_TOLERANCE = 2
+
+/** N_eff ln(RSS/N) + p ln N_eff (Schwarz 1978, Ann. Stat. 6, 461, with the number of independent samples). */
+export function informationCriterion(options: {
+  rss: number
+  sampleCount: number
+  effectiveCount: number
+  parameterCount: number
+}): number {
+  const { rss, sampleCount, effectiveCount, parameterCount } = options
+  return effectiveCount * Math.log(rss / sampleCount) + parameterCount * Math.log(effectiveCount)
+}
+
+/**
+ * F-test that one more harmonic (two parameters) explains no more than noise: F = [(RSS_0 − RSS_1)/2]/[RSS_1/(N_eff − p_1)];
+ * for two numerator degrees of freedom p = (1 + 2F/ν)^{−ν/2} exactly.
+ */
+export function harmonicTest(options: {
+  rssWithout: number
+  rssWith: number
+  effectiveCount: number
+  parameterCountWith: number
+}): { f: number; probability: number } | null {
+  const { rssWithout, rssWith, effectiveCount, parameterCountWith } = options
+  const freedom = effectiveCount - parameterCountWith
+  if (!(freedom > 0) || !(rssWith > 0)) return null
+  const f = Math.max(0, (rssWithout - rssWith) / 2 / (rssWith / freedom))
+  return { f, probability: Math.exp((-freedom / 2) * Math.log1p((2 * f) / freedom)) }
+}
+
+/**
+ * Drift degree and number of harmonics together, by BIC on N_eff from the richest model's corrected lag-one correlation;
+ * of all within 2 of the smallest, the lowest degree and then the fewest harmonics.
+ *
+ * Harmonics above the highest one that stands out of the richest fit (A ≥ 3 standard errors), and two more, are not tried.
+ */
+export function chooseModel(request: ModelChoiceRequest): ChosenModel | Failure {
+  const { track, cadenceSeconds, degrees, fixedHarmonicCount } = request
+  const sampleCount = track.timeSeconds.length
+  const topDegree = Math.max(...degrees)
+  const richest = fitRichest(request, topDegree, fixedHarmonicCount ?? request.largestHarmonicCount)
+  if (!richest.ok) return richest
+  const lagOne = lagOneCorrelation(track.timeSeconds, richest.residual, cadenceSeconds)
+  const corrected = correctLagOne(lagOne, sampleCount, richest.parameterCount)
+  const effectiveCount = effectiveSampleCount(sampleCount, corrected)
+  const richestCount = richest.shape.wormOrders.length
+  const highestCount = fixedHarmonicCount ?? Math.min(richestCount, standingOrders(richest, request, corrected) + 2)
+
+  const search = prepareSearch(request, richest)
+  const candidates: (ModelCandidate & { wormHz: number; rss: number; parameterCount: number })[] = []
+  let wormHz = richest.frequencies.wormHz
+  for (const driftDegree of [...degrees].sort((a, b) => b - a)) {
+    for (let count = highestCount; count >= (fixedHarmonicCount ?? 1); count--) {
+      const isRichest = driftDegree === topDegree && count === richestCount
+      const fit = isRichest ? richest : fitCandidate(request, search, { driftDegree, count, wormHz })
+      if (!fit.ok) continue
+      const rss = isRichest ? richest.rss : search.totalRss(fit.rss)
+      const { parameterCount } = fit
+      candidates.push({
+        driftDegree,
+        harmonicCount: count,
+        bic: informationCriterion({
+          rss: Math.max(rss, Number.MIN_VALUE),
+          sampleCount,
+          effectiveCount,
+          parameterCount,
+        }),
+        residualRmsArcsec: Math.sqrt(rss / sampleCount),
+        wormHz: fit.frequencies.wormHz,
+        rss,
+        parameterCount,
+      })
+      if (driftDegree === topDegree) wormHz = fit.frequencies.wormHz
+    }
+    wormHz = richest.frequencies.wormHz
+  }
+  if (candidates.length === 0) return { ok: false, reason: 'singular' }
+  candidates.sort((a, b) => a.driftDegree - b.driftDegree || a.harmonicCount - b.harmonicCount)
+  const smallest = Math.min(...candidates.map(({ bic }) => bic))
+  const chosen = candidates.find(({ bic }) => bic <= smallest + BIC_TOLERANCE) ?? candidates[0]
+  const next = candidates.find(
+    ({ driftDegree, harmonicCount }) =>
+      driftDegree === chosen.driftDegree && harmonicCount === chosen.harmonicCount + 1,
+  )
+  const test = next
+    ? harmonicTest({
+        rssWithout: chosen.rss,
+        rssWith: next.rss,
+        effectiveCount,
+        parameterCountWith: next.parameterCount,
+      })
+    : null
+  return {
+    ok: true,
+    driftDegree: chosen.driftDegree,
+    harmonicCount: chosen.harmonicCount,
+    wormHz: chosen.wormHz,
+    effectiveSampleCount: effectiveCount,
+    choice: {
+      candidates: candidates.map(({ driftDegree, harmonicCount, bic, residualRmsArcsec }) => ({
+        driftDegree,
+        harmonicCount,
+        bic,
+        residualRmsArcsec,
+      })),
+      isDegreeChosenByEvidence: degrees.length > 1,
+      isCountChosenByEvidence: fixedHarmonicCount === null,
+      nextHarmonicProbability: test?.probability ?? null,
+    },
+  }
+}
+
+/** Orders 1 … count as a list. */
+export function firstOrders(count: number): number[] {
+  return Array.from({ length: count }, (_, k) => k + 1)
+}
+
+function baseRequest(request: ModelChoiceRequest): Omit<JointFitRequest, 'driftDegree' | 'worm'> {
+  const { track, lines, highestFrequencyHz } = request
+  return { track, lines, highestFrequencyHz, isPolished: false }
+}
+
+/** The fit with everything allowed; where its columns depend on each other, with ever fewer harmonics. */
+function fitRichest(request: ModelChoiceRequest, driftDegree: number, count: number): JointFit | Failure {
+  let fit: JointFit | Failure = { ok: false, reason: 'singular' }
+  for (let k = count; k >= 1; k--) {
+    fit = fitJointly({ ...baseRequest(request), driftDegree, worm: { ...request.worm, orders: firstOrders(k) } })
+    if (fit.ok || request.fixedHarmonicCount !== null) return fit
+  }
+  return fit
+}
+
+/** The highest order whose amplitude is at least 3 AR(1) standard errors in the richest fit. */
+function standingOrders(fit: JointFit, request: ModelChoiceRequest, lagOne: number): number {
+  const qr = factorQr(fit.jacobian)
+  if (!qr.ok) return fit.shape.wormOrders.length
+  const { cadenceSeconds, track } = request
+  const covariance = autoregressiveCovariance({ fit, qr, timeSeconds: track.timeSeconds, cadenceSeconds, lagOne })
+  let highest = 1
+  listOscillations(fit)
+    .slice(0, fit.shape.wormOrders.length)
+    .forEach(({ column }, index) => {
+      const [a, b] = [fit.coefficients[column], fit.coefficients[column + 1]]
+      if (Math.hypot(a, b) >= 3 * amplitudeError(a, b, covariance, column)) highest = fit.shape.wormOrders[index]
+    })
+  return highest
+}
+
+interface Search {
+  track: Track
+  lines: ModelChoiceRequest['lines']
+  /** RSS on all samples from the RSS on the search's samples. */
+  totalRss(rss: number): number
+}
+
+/**
+ * What candidates are fitted to: the samples themselves, or block means of at most a 60th of a turn, with the scatter
+ * inside the blocks taken from the richest fit. Lines are taken off first then, for block means would weaken them.
+ */
+function prepareSearch(request: ModelChoiceRequest, richest: JointFit): Search {
+  const { track, cadenceSeconds, worm, lines } = request
+  const sampleCount = track.timeSeconds.length
+  const longest = Math.floor(1 / (worm.frequencyHz * 60 * cadenceSeconds))
+  const size = Math.min(Math.ceil(sampleCount / DIRECT_SAMPLE_COUNT), longest)
+  if (size < 2) return { track, lines, totalRss: (rss) => rss }
+  const withoutLines = subtractLines(track, richest)
+  const blocks: BlockAverage = averageBlocks(withoutLines, { size, cadenceSeconds })
+  const share = sampleCount / (blocks.track.timeSeconds.length * size)
+  const within = scatterWithinBlocks(blocks, richest.residual)
+  return { track: blocks.track, lines: [], totalRss: (rss) => share * (size * rss + within) }
+}
+
+function subtractLines(track: Track, fit: JointFit): Track {
+  const raArcsec = track.raArcsec.slice()
+  const first = fit.shape.driftDegree + 1 + 2 * fit.shape.wormOrders.length
+  for (let j = first; j < fit.coefficients.length; j++) {
+    const column = fit.jacobian[j]
+    for (let i = 0; i < raArcsec.length; i++) raArcsec[i] -= fit.coefficients[j] * column[i]
+  }
+  return { timeSeconds: track.timeSeconds, raArcsec }
+}
+
+function fitCandidate(
+  request: ModelChoiceRequest,
+  search: Search,
+  { driftDegree, count, wormHz }: { driftDegree: number; count: number; wormHz: number },
+): JointFit | Failure {
+  const fit = fitJointly({
+    ...baseRequest(request),
+    track: search.track,
+    lines: search.lines,
+    driftDegree,
+    worm: { orders: firstOrders(count), frequencyHz: wormHz, isFree: request.worm.isFree },
+  })
+  if (!fit.ok) return fit
+  // Lines that were taken off before still count as parameters.
+  const missing = request.lines.length - search.lines.length
+  return missing > 0 ? { ...fit, parameterCount: fit.parameterCount + 3 * missing } : fit
+}
