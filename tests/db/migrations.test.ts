@@ -3,9 +3,9 @@ import { sql } from 'kysely'
 import { expect, test } from 'vitest'
 import { migrateTo, migrateToLatest } from '@/db/migrate'
 import { migrations } from '@/db/migrations'
-import { useTestDatabase } from '../support/test-database'
+import { openTestDatabase } from '../support/test-database'
 
-const database = useTestDatabase({ isEmpty: true })
+const database = openTestDatabase({ isEmpty: true })
 const names = Object.keys(migrations)
 
 /** Columns, constraints and indexes as PostgreSQL describes them: equal descriptions, equal schema. */

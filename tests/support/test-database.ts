@@ -9,7 +9,7 @@ type Connection = ReturnType<typeof createDatabase>
  * A database of this test file's own, cloned from the migrated template; DATABASE_URL points to it meanwhile, so code of
  * the server meets it too. Give `isEmpty` for one without any table.
  */
-export function useTestDatabase({ isEmpty = false } = {}): { readonly db: Connection['db']; readonly url: string } {
+export function openTestDatabase({ isEmpty = false } = {}): { readonly db: Connection['db']; readonly url: string } {
   const name = `turnwright_test_${randomBytes(6).toString('hex')}`
   const cluster = inject('testCluster')
   const url = urlOfDatabase(cluster.url, name)

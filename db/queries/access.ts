@@ -1,0 +1,59 @@
+import type { Kysely } from 'kysely'
+import type { Role } from '@/lib/schemas/api'
+import type { Database } from '../schema'
+import { Refusal, unknownThing } from './refusal'
+
+/** What each role may do in a project; the one place that says so. */
+export const RIGHTS = {
+  viewer: { read: true, edit: false, manage: false },
+  editor: { read: true, edit: true, manage: false },
+  owner: { read: true, edit: true, manage: true },
+} as const satisfies Record<Role, Record<string, boolean>>
+
+/**
+ * 'read': see everything, download. 'edit': runs, analyses, notes, correction tables, optics, the drive train.
+ * 'manage': the project itself, and other people's notes.
+ */
+export type Right = keyof (typeof RIGHTS)[Role]
+
+declare const granted: unique symbol
+
+/**
+ * Proof that this person was found to have this right in this project. Only accessProject makes one, and every query
+ * below a project asks for one, so no query can be reached without the check.
+ */
+export interface ProjectAccess<R extends Right = Right> {
+  readonly projectId: string
+  readonly userId: string
+  readonly role: Role
+  readonly [granted]: R
+}
+
+export interface AccessRequest<R extends Right> {
+  userId: string
+  projectId: string
+  right: R
+}
+
+/** @throws {Refusal} 'unknown' to everyone who is no member, 'forbidden' to a member without the right */
+export async function accessProject<R extends Right>(
+  db: Kysely<Database>,
+  { userId, projectId, right }: AccessRequest<R>,
+): Promise<ProjectAccess<R>> {
+  const membership = await db
+    .selectFrom('memberships')
+    .select('role')
+    .where('projectId', '=', projectId)
+    .where('userId', '=', userId)
+    .executeTakeFirst()
+  if (!membership) throw unknownThing('project')
+  const { role } = membership
+  if (!RIGHTS[role][right]) {
+    throw new Refusal({ kind: 'forbidden' }, `As ${role} of this project you may look but not do this`)
+  }
+  return { projectId, userId, role } as ProjectAccess<R>
+}
+
+export function hasRight(access: ProjectAccess, right: Right): boolean {
+  return RIGHTS[access.role][right]
+}

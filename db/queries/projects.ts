@@ -1,0 +1,143 @@
+import { sql, type Kysely, type Transaction } from 'kysely'
+import type { DriveTrain } from '@/lib/analysis/types'
+import type { Database } from '../schema'
+import type { LastImport } from '../tables/projects'
+import { accessProject, type ProjectAccess } from './access'
+import { insertDriveTrain } from './drive-trains'
+import { changedMeanwhile } from './changed-meanwhile'
+import { unknownThing } from './refusal'
+
+const count = (table: 'runs' | 'analyses' | 'memberships') =>
+  sql<number>`(select count(*)::int from ${sql.table(table)} where project_id = projects.id)`
+
+/** A project with its present drive train and counts, as the member of `memberships` sees it. */
+function projectsOfMember(db: Kysely<Database>, userId: string) {
+  return db
+    .selectFrom('memberships')
+    .innerJoin('projects', 'projects.id', 'memberships.projectId')
+    .innerJoinLateral(
+      (eb) =>
+        eb
+          .selectFrom('driveTrains')
+          .select(['driveTrains.id', 'axisKind', 'wheelTeeth', 'wormStarts', 'stages'])
+          .whereRef('driveTrains.projectId', '=', 'projects.id')
+          .orderBy('number', 'desc')
+          .limit(1)
+          .as('train'),
+      (join) => join.onTrue(),
+    )
+    .where('memberships.userId', '=', userId)
+    .select([
+      'projects.id',
+      'projects.version',
+      'projects.name',
+      'memberships.role',
+      'projects.lastImport',
+      'projects.createdAt',
+      'projects.updatedAt',
+      'train.id as driveTrainId',
+      'train.axisKind',
+      'train.wheelTeeth',
+      'train.wormStarts',
+      'train.stages',
+      count('runs').as('runCount'),
+      count('analyses').as('analysisCount'),
+      count('memberships').as('memberCount'),
+    ])
+}
+
+type ProjectRow = Awaited<ReturnType<ReturnType<typeof projectsOfMember>['execute']>>[number]
+
+function withDriveTrain({ axisKind, wheelTeeth, wormStarts, stages, ...project }: ProjectRow) {
+  return { ...project, driveTrain: { axisKind, wheelTeeth, wormStarts, stages } }
+}
+
+/** The person's projects, the last changed first. */
+export async function listProjects(db: Kysely<Database>, userId: string) {
+  const rows = await projectsOfMember(db, userId).orderBy('projects.updatedAt', 'desc').orderBy('projects.id').execute()
+  return rows.map(withDriveTrain)
+}
+
+export async function findProject(db: Kysely<Database>, access: ProjectAccess) {
+  const row = await projectsOfMember(db, access.userId).where('projects.id', '=', access.projectId).executeTakeFirst()
+  if (!row) throw unknownThing('project')
+  return withDriveTrain(row)
+}
+
+export interface NewProject {
+  name: string
+  driveTrain: DriveTrain
+}
+
+/** Makes a project whose maker owns it; a transaction, since a project without an owner must never be seen. */
+export async function insertProject(trx: Transaction<Database>, userId: string, { name, driveTrain }: NewProject) {
+  const { id: projectId } = await trx
+    .insertInto('projects')
+    .values({ name, createdBy: userId, updatedBy: userId })
+    .returning('id')
+    .executeTakeFirstOrThrow()
+  await trx.insertInto('memberships').values({ projectId, userId, role: 'owner' }).execute()
+  const access = await accessProject(trx, { userId, projectId, right: 'edit' })
+  await insertDriveTrain(trx, access, driveTrain)
+  return access
+}
+
+/** Takes the next version number, or refuses when another change came first. */
+async function takeVersion(trx: Transaction<Database>, access: ProjectAccess, version: number, name?: string) {
+  const updated = await trx
+    .updateTable('projects')
+    .set({
+      version: sql<number>`version + 1`,
+      updatedAt: sql<Date>`now()`,
+      updatedBy: access.userId,
+      ...(name === undefined ? {} : { name }),
+    })
+    .where('id', '=', access.projectId)
+    .where('version', '=', version)
+    .returning('id')
+    .executeTakeFirst()
+  if (updated) return
+  const current = await findProject(trx, access)
+  throw await changedMeanwhile(trx, { table: 'projects', id: access.projectId, what: 'project', current })
+}
+
+export async function updateProjectName(
+  trx: Transaction<Database>,
+  access: ProjectAccess<'manage'>,
+  { version, name }: { version: number; name: string },
+) {
+  await takeVersion(trx, access, version, name)
+  return findProject(trx, access)
+}
+
+export async function replaceDriveTrain(
+  trx: Transaction<Database>,
+  access: ProjectAccess<'edit'>,
+  { version, driveTrain }: { version: number; driveTrain: DriveTrain },
+) {
+  await takeVersion(trx, access, version)
+  await insertDriveTrain(trx, access, driveTrain)
+  return findProject(trx, access)
+}
+
+/** Remembers the choices of an import for the next one; no edit of the project, so its version stays. */
+export async function updateLastImport(trx: Transaction<Database>, access: ProjectAccess<'edit'>, last: LastImport) {
+  await trx
+    .updateTable('projects')
+    .set({ lastImport: JSON.stringify(last) })
+    .where('id', '=', access.projectId)
+    .execute()
+}
+
+/** Owners first, then by the day they joined. */
+export function listMembers(db: Kysely<Database>, access: ProjectAccess) {
+  return db
+    .selectFrom('memberships')
+    .innerJoin('users', 'users.id', 'memberships.userId')
+    .select(['users.id as userId', 'users.displayName', 'memberships.role', 'memberships.joinedAt'])
+    .where('memberships.projectId', '=', access.projectId)
+    .orderBy(sql`array_position(array['owner', 'editor', 'viewer'], memberships.role)`)
+    .orderBy('memberships.joinedAt')
+    .orderBy('users.id')
+    .execute()
+}
