@@ -1,0 +1,118 @@
+import type { AnalysisResult, AnalysisViews } from '@/lib/analysis/types'
+import { formatNumber, formatPeriod } from '@/lib/units'
+import { logScale, short, type Tick } from './svg-geometry'
+
+export interface LandingStem {
+  x: number
+  y: number
+  label: string
+  /** The label stands above the dot, or beside it where a taller neighbour is near. */
+  labelX: number
+  labelY: number
+  anchor: 'start' | 'middle' | 'end'
+  kind: 'worm' | 'line'
+}
+
+/** Swings found, as stems over the spectrum of what they leave; longest period at the left, both axes logarithmic. */
+export interface LandingStems {
+  width: number
+  height: number
+  plot: { left: number; right: number; top: number; bottom: number }
+  /** Closed outline of the spectrum that the lines leave. */
+  leftOverPath: string
+  stems: LandingStem[]
+  /** Whole orders along the top. */
+  orderTicks: Tick[]
+  periodTicks: Tick[]
+  amplitudeTicks: Tick[]
+}
+
+const WIDTH = 760
+const HEIGHT = 240
+const PLOT = { left: 46, right: 752, top: 40, bottom: 200 }
+const LOWEST_ARCSEC = 0.01
+
+export function landingStems(result: AnalysisResult, { spectrum }: AnalysisViews): LandingStems {
+  const { worm, lines, run } = result
+  const longest = 1 / Math.max(spectrum.frequencyHz.find((f) => f > 0) ?? 0, 1 / run.durationSeconds)
+  const shortest = Math.max(1 / (spectrum.frequencyHz.at(-1) ?? 1), run.shortestPeriodSeconds)
+  const swings = [
+    ...(worm?.harmonics ?? []).map((harmonic) => ({
+      periodSeconds: harmonic.periodSeconds,
+      amplitudeArcsec: harmonic.amplitudeArcsec.value,
+      label: harmonic.order === 1 ? 'worm' : `worm ×${harmonic.order}`,
+      kind: 'worm' as const,
+    })),
+    ...lines.map((line) => ({
+      periodSeconds: line.periodSeconds.value,
+      amplitudeArcsec: line.amplitudeArcsec.value,
+      label: line.source ?? formatPeriod(line.periodSeconds.value),
+      kind: 'line' as const,
+    })),
+  ].filter(({ periodSeconds }) => periodSeconds <= longest && periodSeconds >= shortest)
+  const highest = Math.max(1, ...swings.map(({ amplitudeArcsec }) => amplitudeArcsec * 1.6))
+  const x = logScale([longest, shortest], [PLOT.left, PLOT.right])
+  const y = logScale([LOWEST_ARCSEC, highest], [PLOT.bottom, PLOT.top])
+  return {
+    width: WIDTH,
+    height: HEIGHT,
+    plot: PLOT,
+    leftOverPath: leftOver(spectrum, x, y),
+    stems: labelled(
+      swings.map(({ periodSeconds, amplitudeArcsec, label, kind }) => ({
+        x: x(periodSeconds),
+        y: y(Math.max(amplitudeArcsec, LOWEST_ARCSEC)),
+        label,
+        kind,
+      })),
+    ),
+    orderTicks: worm ? orderTicks(worm.periodSeconds.value, shortest, x) : [],
+    periodTicks: [1000, 300, 100, 30, 10]
+      .filter((seconds) => seconds < longest && seconds > shortest)
+      .map((seconds) => ({ at: x(seconds), label: formatPeriod(seconds) })),
+    amplitudeTicks: [0.01, 0.1, 1, 10]
+      .filter((arcsec) => arcsec <= highest)
+      .map((arcsec) => ({ at: y(arcsec), label: formatNumber(arcsec, arcsec < 0.1 ? 2 : arcsec < 1 ? 1 : 0) })),
+  }
+}
+
+/** Half of the room that a label of usual length takes. */
+const LABEL_REACH = 46
+
+/** Puts each label above its dot; beside it, away from a neighbour whose stem would run through it. */
+function labelled(stems: Pick<LandingStem, 'x' | 'y' | 'label' | 'kind'>[]): LandingStem[] {
+  return stems.map((stem) => {
+    const inTheWay = stems.filter(
+      (other) => other !== stem && Math.abs(other.x - stem.x) < LABEL_REACH && other.y < stem.y + 6,
+    )
+    const isLeftTaken = inTheWay.some((other) => other.x < stem.x)
+    const isRightTaken = inTheWay.some((other) => other.x >= stem.x)
+    if (isLeftTaken && !isRightTaken) return { ...stem, labelX: stem.x + 8, labelY: stem.y + 4, anchor: 'start' }
+    if (isRightTaken && !isLeftTaken) return { ...stem, labelX: stem.x - 8, labelY: stem.y + 4, anchor: 'end' }
+    return { ...stem, labelX: stem.x, labelY: stem.y - 10, anchor: 'middle' }
+  })
+}
+
+/** The largest amplitude in each pixel column, closed along the bottom: an average would hide single peaks. */
+function leftOver(
+  { frequencyHz, afterArcsec }: AnalysisViews['spectrum'],
+  x: (s: number) => number,
+  y: (a: number) => number,
+) {
+  const peaks = new Map<number, number>()
+  for (let i = 0; i < frequencyHz.length; i++) {
+    const column = frequencyHz[i] > 0 ? Math.round(x(1 / frequencyHz[i])) : NaN
+    if (!(column >= PLOT.left && column <= PLOT.right) || !Number.isFinite(afterArcsec[i])) continue
+    peaks.set(column, Math.max(peaks.get(column) ?? 0, afterArcsec[i]))
+  }
+  const columns = [...peaks.keys()].sort((a, b) => a - b)
+  if (columns.length < 2) return ''
+  const outline = columns.map((column) => `L${column} ${short(y(Math.max(peaks.get(column)!, LOWEST_ARCSEC)))}`)
+  return `M${columns[0]} ${PLOT.bottom}${outline.join('')}L${columns.at(-1)} ${PLOT.bottom}Z`
+}
+
+function orderTicks(wormPeriodSeconds: number, shortestSeconds: number, x: (s: number) => number): Tick[] {
+  return [1, 2, 3, 4, 6, 8, 12, 24, 48, 96]
+    .filter((order) => wormPeriodSeconds / order > shortestSeconds)
+    .map((order) => ({ at: x(wormPeriodSeconds / order), label: formatNumber(order, 0) }))
+}
