@@ -31,7 +31,9 @@ export function harmonicCountSentence(choice: ModelChoice | null, recipe: Recipe
   const { nextHarmonicProbability: next } = choice
   const base =
     'As many as the record supports: the Bayesian information criterion is least, counting linked samples once.'
-  return next === null ? base : `${base} Noise alone would make one more look this useful with a chance of ${formatProbability(next)}.`
+  return next === null
+    ? base
+    : `${base} Noise alone would make one more look this useful with a chance of ${formatProbability(next)}.`
 }
 
 /** Words for the estimate of error that was largest, hence reported. */
