@@ -1,0 +1,75 @@
+import { complexFft, nextPowerOfTwo } from './fft'
+import { gaussLegendre } from './special-functions'
+
+/** Cells over which a sample is spread, and the matching sharpness of the kernel at oversampling 2. */
+const KERNEL_WIDTH = 10
+const KERNEL_SHARPNESS = 2.3 * KERNEL_WIDTH
+const OVERSAMPLING = 2
+
+export interface NonuniformTransform {
+  /** Σ g_i e^{−2πi f t_i} and Σ h_i e^{−2πi f t_i} at f = index·stepHz, interleaved re, im from firstIndex on. */
+  first: Float64Array
+  second: Float64Array
+}
+
+/**
+ * Fourier sums of two real columns at unevenly spaced times in one complex transform: each sample is spread over ten
+ * cells of a fine even grid with the kernel exp(β(√(1 − z²) − 1)), the grid is transformed, and the kernel's own
+ * transform divided out. Accurate to about 1e-9 of Σ|g|.
+ *
+ * @see Barnett, Magland & af Klinteberg (2019), SIAM J. Sci. Comput. 41, C479
+ */
+export function nonuniformFft(options: {
+  time: Float64Array
+  first: Float64Array
+  second: Float64Array | null
+  stepHz: number
+  firstIndex: number
+  count: number
+}): NonuniformTransform {
+  const { time, first, second, stepHz, firstIndex, count } = options
+  const largestIndex = firstIndex + count - 1
+  const size = nextPowerOfTwo(Math.max(2 * KERNEL_WIDTH, OVERSAMPLING * (2 * largestIndex + 1)))
+  const grid = new Float64Array(2 * size)
+  const half = KERNEL_WIDTH / 2
+  for (let i = 0; i < time.length; i++) {
+    const turns = time[i] * stepHz
+    const position = (turns - Math.floor(turns)) * size
+    const start = Math.ceil(position - half)
+    const g = first[i]
+    const h = second === null ? 0 : second[i]
+    for (let cell = start; cell < start + KERNEL_WIDTH; cell++) {
+      const z = (cell - position) / half
+      const weight = Math.exp(KERNEL_SHARPNESS * (Math.sqrt(Math.max(0, 1 - z * z)) - 1))
+      const at = 2 * (cell & (size - 1))
+      grid[at] += g * weight
+      grid[at + 1] += h * weight
+    }
+  }
+  const bins = complexFft(grid)
+  return unpack(bins, { size, firstIndex, count })
+}
+
+/** Splits Z = G + iH by G(f) = (Z(f) + Z(−f)*)/2, H(f) = (Z(f) − Z(−f)*)/2i and divides by the kernel's transform. */
+function unpack(bins: Float64Array, range: { size: number; firstIndex: number; count: number }): NonuniformTransform {
+  const { size, firstIndex, count } = range
+  const first = new Float64Array(2 * count)
+  const second = new Float64Array(2 * count)
+  const { nodes, weights } = gaussLegendre(24)
+  const kernel = nodes.map((z, k) => weights[k] * Math.exp(KERNEL_SHARPNESS * (Math.sqrt(1 - z * z) - 1)))
+  for (let j = 0; j < count; j++) {
+    const index = firstIndex + j
+    let transform = 0
+    for (let k = 0; k < nodes.length; k++) {
+      transform += kernel[k] * Math.cos((Math.PI * index * KERNEL_WIDTH * nodes[k]) / size)
+    }
+    const scale = 1 / (KERNEL_WIDTH * transform) // (w/2)·∫, and the ½ of the split
+    const up = 2 * index
+    const down = 2 * ((size - index) & (size - 1))
+    first[2 * j] = scale * (bins[up] + bins[down])
+    first[2 * j + 1] = scale * (bins[up + 1] - bins[down + 1])
+    second[2 * j] = scale * (bins[up + 1] + bins[down + 1])
+    second[2 * j + 1] = scale * (bins[down] - bins[up])
+  }
+  return { first, second }
+}
