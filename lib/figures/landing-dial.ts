@@ -9,7 +9,7 @@ export interface LandingDial {
   rimRadius: number
   zeroRadius: number
   /** Circles of equal displacement; `at` is the radius. */
-  rings: Tick[]
+  rings: (Tick & { labelX: number; labelY: number })[]
   /** Short strokes on the rim every 10°, longer ones every 90°. */
   rimPath: string
   rimLabels: { x: number; y: number; label: string }[]
@@ -17,9 +17,9 @@ export interface LandingDial {
   curvePath: string
 }
 
-const SIZE = 420
+const SIZE = 440
 const CENTRE = SIZE / 2
-const RIM_RADIUS = 172
+const RIM_RADIUS = 178
 /** The zero circle stands at this share of the rim's radius, the furthest point at the second one. */
 const ZERO_SHARE = 0.52
 const FURTHEST_SHARE = 0.93
@@ -31,23 +31,39 @@ export function landingDial(turn: NonNullable<AnalysisViews['turn']>): LandingDi
   const pxPerArcsec = ((FURTHEST_SHARE - ZERO_SHARE) * RIM_RADIUS) / furthest
   const radius = (arcsec: number) => zeroRadius + arcsec * pxPerArcsec
   const ringStep = evenTicks(0, furthest, 2)[1] ?? furthest
+  const rings = [-ringStep, ringStep]
+  const labelAngle = freestAngle(turn, rings)
   return {
     size: SIZE,
     centre: CENTRE,
     rimRadius: RIM_RADIUS,
     zeroRadius,
-    rings: [-ringStep, ringStep].map((arcsec) => ({
-      at: radius(arcsec),
-      label: formatNumber(arcsec, 0, { isSigned: true }),
-    })),
+    rings: rings.map((arcsec) => {
+      const { x, y } = pointAt(labelAngle, radius(arcsec))
+      return { at: radius(arcsec), label: formatNumber(arcsec, 0, { isSigned: true }), labelX: x, labelY: y }
+    }),
     rimPath: rimStrokes(),
     rimLabels: [0, 90, 180, 270].map((degrees) => ({
-      ...pointAt(degrees, RIM_RADIUS + 22),
+      ...pointAt(degrees, RIM_RADIUS + 25),
       label: formatNumber(degrees, 0, { unit: '°' }),
     })),
     turnPaths: turn.turns.map(({ angleDegrees, arcsec }) => polarPath(angleDegrees, arcsec, radius)),
     curvePath: polarPath(turn.angleDegrees, turn.curveArcsec, radius, true),
   }
+}
+
+/** The diagonal on which the curve keeps furthest from the circles, so that their labels stand clear of it. */
+function freestAngle({ angleDegrees, curveArcsec }: NonNullable<AnalysisViews['turn']>, rings: number[]): number {
+  const room = (degrees: number) => {
+    let nearest = Infinity
+    for (let i = 0; i < angleDegrees.length; i++) {
+      const away = Math.abs(((angleDegrees[i] - degrees + 540) % 360) - 180)
+      if (away > 12) continue
+      for (const ring of rings) nearest = Math.min(nearest, Math.abs(curveArcsec[i] - ring))
+    }
+    return nearest
+  }
+  return [45, 135, 225, 315].reduce((best, degrees) => (room(degrees) > room(best) ? degrees : best))
 }
 
 function pointAt(degrees: number, radius: number) {

@@ -3,7 +3,7 @@ import { formatNumber } from '@/lib/units'
 import { landingDial, type LandingDial } from './landing-dial'
 import { landingFindings, type LandingFindings } from './landing-findings'
 import { landingStems, type LandingStems } from './landing-stems'
-import { bands, evenTicks, linearScale, pathOf, type Band, type Tick } from './svg-geometry'
+import { bands, evenTicks, linearScale, pathOf, type Band, type PlotBox, type Tick } from './svg-geometry'
 
 /** Everything that the landing page draws, in the units of each drawing's own view box. */
 export interface LandingPicture {
@@ -17,7 +17,7 @@ export interface LandingPicture {
 export interface LandingTrack {
   width: number
   height: number
-  plot: Band & { top: number; bottom: number }
+  plot: PlotBox
   recordedPath: string
   fittedPath: string
   driftPath: string
@@ -38,8 +38,8 @@ export function landingPicture({ result, views }: Pick<AnalysisSuccess, 'result'
 }
 
 const WIDTH = 760
-const HEIGHT = 320
-const PLOT = { left: 46, right: 752, top: 30, bottom: 276 }
+const HEIGHT = 352
+const PLOT = { left: 58, right: 752, top: 52, bottom: 298 }
 
 /** The recorded track with what was fitted to it, drawn over the drift. */
 function landingTrack(result: AnalysisResult, { track }: AnalysisViews): LandingTrack {
@@ -54,7 +54,7 @@ function landingTrack(result: AnalysisResult, { track }: AnalysisViews): Landing
   return {
     width: WIDTH,
     height: HEIGHT,
-    plot: { ...PLOT, x: PLOT.left, width: PLOT.right - PLOT.left },
+    plot: PLOT,
     recordedPath: pathOf(track.timeSeconds, track.recordedArcsec, x, y),
     fittedPath: pathOf(track.modelTimeSeconds, track.fittedArcsec, x, y),
     driftPath: pathOf(track.modelTimeSeconds, track.driftArcsec, x, y),

@@ -1,15 +1,9 @@
 import type { AnalysisResult, AnalysisViews } from '@/lib/analysis/types'
 import { formatNumber, formatPeriod } from '@/lib/units'
-import { logScale, short, type Tick } from './svg-geometry'
+import { placeStemLabels, type LabelledStem, type LabelPlace } from './landing-labels'
+import { logScale, short, type PlotBox, type Tick } from './svg-geometry'
 
-export interface LandingStem {
-  x: number
-  y: number
-  label: string
-  /** The label stands above the dot, or beside it where a taller neighbour is near. */
-  labelX: number
-  labelY: number
-  anchor: 'start' | 'middle' | 'end'
+export interface LandingStem extends LabelledStem, LabelPlace {
   kind: 'worm' | 'line'
 }
 
@@ -17,7 +11,7 @@ export interface LandingStem {
 export interface LandingStems {
   width: number
   height: number
-  plot: { left: number; right: number; top: number; bottom: number }
+  plot: PlotBox
   /** Closed outline of the spectrum that the lines leave. */
   leftOverPath: string
   stems: LandingStem[]
@@ -28,8 +22,8 @@ export interface LandingStems {
 }
 
 const WIDTH = 760
-const HEIGHT = 240
-const PLOT = { left: 46, right: 752, top: 40, bottom: 200 }
+const HEIGHT = 262
+const PLOT = { left: 58, right: 752, top: 58, bottom: 216 }
 const LOWEST_ARCSEC = 0.01
 
 export function landingStems(result: AnalysisResult, { spectrum }: AnalysisViews): LandingStems {
@@ -53,44 +47,27 @@ export function landingStems(result: AnalysisResult, { spectrum }: AnalysisViews
   const highest = Math.max(1, ...swings.map(({ amplitudeArcsec }) => amplitudeArcsec * 1.6))
   const x = logScale([longest, shortest], [PLOT.left, PLOT.right])
   const y = logScale([LOWEST_ARCSEC, highest], [PLOT.bottom, PLOT.top])
+  const stems = swings.map(({ periodSeconds, amplitudeArcsec, label, kind }) => ({
+    x: x(periodSeconds),
+    y: y(Math.max(amplitudeArcsec, LOWEST_ARCSEC)),
+    label,
+    kind,
+  }))
+  const places = placeStemLabels(stems, { ...PLOT, top: 0 })
   return {
     width: WIDTH,
     height: HEIGHT,
     plot: PLOT,
     leftOverPath: leftOver(spectrum, x, y),
-    stems: labelled(
-      swings.map(({ periodSeconds, amplitudeArcsec, label, kind }) => ({
-        x: x(periodSeconds),
-        y: y(Math.max(amplitudeArcsec, LOWEST_ARCSEC)),
-        label,
-        kind,
-      })),
-    ),
+    stems: stems.map((stem, i) => ({ ...stem, ...places[i] })),
     orderTicks: worm ? orderTicks(worm.periodSeconds.value, shortest, x) : [],
     periodTicks: [1000, 300, 100, 30, 10]
       .filter((seconds) => seconds < longest && seconds > shortest)
-      .map((seconds) => ({ at: x(seconds), label: formatPeriod(seconds) })),
+      .map((seconds) => ({ at: x(seconds), label: formatNumber(seconds, 0, { unit: 's' }) })),
     amplitudeTicks: [0.01, 0.1, 1, 10]
       .filter((arcsec) => arcsec <= highest)
       .map((arcsec) => ({ at: y(arcsec), label: formatNumber(arcsec, arcsec < 0.1 ? 2 : arcsec < 1 ? 1 : 0) })),
   }
-}
-
-/** Half of the room that a label of usual length takes. */
-const LABEL_REACH = 46
-
-/** Puts each label above its dot; beside it, away from a neighbour whose stem would run through it. */
-function labelled(stems: Pick<LandingStem, 'x' | 'y' | 'label' | 'kind'>[]): LandingStem[] {
-  return stems.map((stem) => {
-    const inTheWay = stems.filter(
-      (other) => other !== stem && Math.abs(other.x - stem.x) < LABEL_REACH && other.y < stem.y + 6,
-    )
-    const isLeftTaken = inTheWay.some((other) => other.x < stem.x)
-    const isRightTaken = inTheWay.some((other) => other.x >= stem.x)
-    if (isLeftTaken && !isRightTaken) return { ...stem, labelX: stem.x + 8, labelY: stem.y + 4, anchor: 'start' }
-    if (isRightTaken && !isLeftTaken) return { ...stem, labelX: stem.x - 8, labelY: stem.y + 4, anchor: 'end' }
-    return { ...stem, labelX: stem.x, labelY: stem.y - 10, anchor: 'middle' }
-  })
 }
 
 /** The largest amplitude in each pixel column, closed along the bottom: an average would hide single peaks. */

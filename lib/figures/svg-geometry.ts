@@ -12,6 +12,14 @@ export interface Band {
   width: number
 }
 
+/** The part of a drawing that the axes enclose. */
+export interface PlotBox {
+  left: number
+  right: number
+  top: number
+  bottom: number
+}
+
 export type Scale = (value: number) => number
 
 /** Maps one interval onto another in a straight line. */

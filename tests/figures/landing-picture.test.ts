@@ -1,0 +1,53 @@
+import { describe, expect, test } from 'vitest'
+import { landingDial } from '@/lib/figures/landing-dial'
+
+const degrees = Float64Array.from({ length: 180 }, (_, i) => 2 * i)
+const radiansOf = (value: number) => (value * Math.PI) / 180
+
+describe('landingDial', () => {
+  test('a curve of zero is the zero circle', () => {
+    const curveArcsec = new Float64Array(180)
+    const turns = [{ turnNumber: 1, angleDegrees: Float64Array.of(0), arcsec: Float64Array.of(5) }]
+    const { curvePath, centre, zeroRadius } = landingDial({
+      angleDegrees: degrees,
+      curveArcsec,
+      turns,
+      tableArcsec: null,
+    })
+    for (const { x, y } of pointsOf(curvePath)) {
+      expect(Math.abs(Math.hypot(x - centre, y - centre) - zeroRadius)).toBeLessThan(0.1)
+    }
+  })
+
+  test('starts on top, runs clockwise, has ahead outside and stays within the rim', () => {
+    // Furthest ahead at 90°: the rightmost point is further out than the leftmost one.
+    const curveArcsec = degrees.map((angle) => 8 * Math.sin(radiansOf(angle)))
+    const dial = landingDial({ angleDegrees: degrees, curveArcsec, turns: [], tableArcsec: null })
+    const points = pointsOf(dial.curvePath)
+    expect(points[0].x).toBeCloseTo(dial.centre, 1)
+    expect(points[0].y).toBeCloseTo(dial.centre - dial.zeroRadius, 1)
+    expect(points[45].x).toBeGreaterThan(dial.centre + dial.zeroRadius)
+    expect(points[135].x).toBeGreaterThan(dial.centre - dial.zeroRadius)
+    for (const { x, y } of points) expect(Math.hypot(x - dial.centre, y - dial.centre)).toBeLessThan(dial.rimRadius)
+    expect(dial.curvePath.endsWith('Z')).toBe(true)
+  })
+
+  test('a turn breaks at a missing value and where it passes from 360° to 0°', () => {
+    const angleDegrees = Float64Array.of(350, 355, 1, 5, 9)
+    const arcsec = Float64Array.of(1, 1, 1, NaN, 1)
+    const turns = [{ turnNumber: 1, angleDegrees, arcsec }]
+    const { turnPaths } = landingDial({ angleDegrees: degrees, curveArcsec: degrees, turns, tableArcsec: null })
+    expect(turnPaths[0].match(/M/g)).toHaveLength(3)
+  })
+
+  test('names its circles with signs, at the radius of the value', () => {
+    const curveArcsec = degrees.map((angle) => 8 * Math.sin(radiansOf(angle)))
+    const { rings, zeroRadius } = landingDial({ angleDegrees: degrees, curveArcsec, turns: [], tableArcsec: null })
+    expect(rings.map(({ label }) => label)).toEqual(['−5', '+5'])
+    expect(rings[1].at - zeroRadius).toBeCloseTo(zeroRadius - rings[0].at, 9)
+  })
+})
+
+function pointsOf(path: string) {
+  return [...path.matchAll(/[ML](-?[\d.]+) (-?[\d.]+)/g)].map(([, x, y]) => ({ x: Number(x), y: Number(y) }))
+}
