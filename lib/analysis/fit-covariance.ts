@@ -12,6 +12,8 @@ import {
   localAmplitudeError,
 } from './noise-model'
 import type { PowerLaw } from './noise-model'
+import { residualSpectrum } from './residual-spectrum'
+import type { ResidualSpectrum } from './residual-spectrum'
 import type { ErrorModel, Estimate, Failure } from './types'
 
 /** Covariances of all parameters of a joint fit in the order of its Jacobian (frequencies in hertz), and how they came. */
@@ -29,6 +31,7 @@ export interface FitErrors {
   correctedLagOne: number
   effectiveSampleCount: number
   powerLaw: PowerLaw
+  spectrum: ResidualSpectrum
 }
 
 /** s²(JᵀJ)^{−1} from the full Jacobian, s² = RSS/(N − p). */
@@ -144,7 +147,8 @@ export function estimateErrors(fit: JointFit, timeSeconds: Float64Array, cadence
   const autoregressive = autoregressiveCovariance({ fit, qr, timeSeconds, cadenceSeconds, lagOne: correctedLagOne })
   const oscillations = listOscillations(fit)
   const linesHz = oscillations.map(({ frequencyHz }) => frequencyHz)
-  const powerLaw = fitPowerLaw({ timeSeconds, residual, cadenceSeconds, linesHz })
+  const spectrum = residualSpectrum(timeSeconds, residual, 0.5 / cadenceSeconds)
+  const powerLaw = fitPowerLaw(spectrum, { cadenceSeconds, linesHz })
   const variance = rss / (sampleCount - parameterCount)
   const span = timeSeconds[sampleCount - 1] - timeSeconds[0]
 
@@ -166,7 +170,7 @@ export function estimateErrors(fit: JointFit, timeSeconds: Float64Array, cadence
     const whiteError = amplitudeError(a, b, white, column)
     const sandwichError = amplitudeError(a, b, autoregressive, column)
     if (!(whiteError > 0) || !(sandwichError > 0)) return correctedLagOne > 0 ? 'ar1' : 'white'
-    const local = localAmplitudeError({ timeSeconds, residual, frequencyHz, linesHz }) ?? 0
+    const local = localAmplitudeError(spectrum, frequencyHz, linesHz) ?? 0
     const ways: { model: ErrorModel; factor: number }[] = [
       { model: correctedLagOne > 0 ? 'ar1' : 'white', factor: sandwichError / whiteError },
       { model: 'power-law', factor: powerLawFactor(frequencyHz) },
@@ -195,6 +199,7 @@ export function estimateErrors(fit: JointFit, timeSeconds: Float64Array, cadence
     correctedLagOne,
     effectiveSampleCount: effectiveSampleCount(sampleCount, correctedLagOne),
     powerLaw,
+    spectrum,
   }
 }
 

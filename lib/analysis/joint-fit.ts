@@ -18,6 +18,7 @@ import {
   solveWithFactors,
 } from './least-squares'
 import type { LeastSquaresSolution } from './least-squares'
+import { drain } from './drain'
 import type { Failure, Track } from './types'
 
 export interface JointFitRequest {
@@ -83,10 +84,12 @@ const RSS_TOLERANCE = 1e-6
  * frequency. A polished fit never stops on the sum of squares, which is flat to rounding long before the parameters are;
  * undamped Gauss–Newton on all parameters goes on while its largest scaled step shrinks.
  *
+ * Yields between steps, so that a long fit can be given up.
+ *
  * @returns the fit; `few-points` with fewer than p + 10 samples; `singular` where columns depend on each other
  * @see Golub & Pereyra (1973), SIAM J. Numer. Anal. 10, 413; (2003), Inverse Problems 19, R1; Marquardt (1963), J. SIAM 11, 431
  */
-export function fitJointly(request: JointFitRequest): JointFit | Failure {
+export function* fitJointlyInSteps(request: JointFitRequest): Generator<void, JointFit | Failure> {
   const { track, driftDegree, worm, lines } = request
   const shape: FitShape = { driftDegree, wormOrders: worm?.orders ?? [], lineCount: lines.length }
   const time = centreTime(track.timeSeconds)
@@ -119,11 +122,11 @@ export function fitJointly(request: JointFitRequest): JointFit | Failure {
 
   const start = project(new Float64Array(unknowns.length).fill(1))
   if ('ok' in start) return start
-  const damped = iterateDamped({ start, unknowns, time, project, isPolished: request.isPolished })
+  const damped = yield* iterateDamped({ start, unknowns, time, project, isPolished: request.isPolished })
   let scaled = damped.scaled
   let current = damped.projection
   if (request.isPolished && unknowns.length > 0 && damped.escaped.length === 0) {
-    scaled = polish({
+    scaled = yield* polish({
       scaled,
       current,
       unknowns,
@@ -153,6 +156,11 @@ export function fitJointly(request: JointFitRequest): JointFit | Failure {
     isConverged: damped.isConverged,
     escapedLines: damped.escaped,
   }
+}
+
+/** The same in one go. */
+export function fitJointly(request: JointFitRequest): JointFit | Failure {
+  return drain(fitJointlyInSteps(request))
 }
 
 function listUnknowns(request: JointFitRequest, shape: FitShape, time: CentredTime): Unknown[] {
@@ -187,7 +195,7 @@ interface DampedResult {
   escaped: number[]
 }
 
-function iterateDamped({ start, unknowns, time, project, isPolished }: DampedOptions): DampedResult {
+function* iterateDamped({ start, unknowns, time, project, isPolished }: DampedOptions): Generator<void, DampedResult> {
   let scaled = new Float64Array(unknowns.length).fill(1)
   let projection = start
   if (unknowns.length === 0) return { scaled, projection, isConverged: true, escaped: [] }
@@ -209,6 +217,7 @@ function iterateDamped({ start, unknowns, time, project, isPolished }: DampedOpt
     if (largest < STEP_TOLERANCE) {
       return { scaled, projection, isConverged: atEdge.length === 0, escaped: lines }
     }
+    yield
     const candidate = project(next)
     if (!('ok' in candidate) && candidate.solution.rss <= projection.solution.rss) {
       const fall = projection.solution.rss - candidate.solution.rss
@@ -301,13 +310,15 @@ interface PolishOptions {
 }
 
 /** Undamped Gauss–Newton on the full parameter set by QR, without a test on RSS, while the largest scaled step shrinks. */
-function polish({ scaled, current, unknowns, time, track, columnsAt }: PolishOptions): Float64Array {
+function* polish(options: PolishOptions): Generator<void, Float64Array> {
+  const { scaled, current, unknowns, time, track, columnsAt } = options
   let q = scaled
   let linear = current.linear
   let coefficients = current.solution.coefficients
   let residual = current.solution.residual
   let previous = Infinity
   for (let count = 0; count < LARGEST_POLISH_COUNT; count++) {
+    yield
     const derivatives = unknowns.map(({ block, startHz }) =>
       derivativeColumn(time, linear, coefficients, block).map((value) => value * startHz),
     )

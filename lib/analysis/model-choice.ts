@@ -1,7 +1,8 @@
+import { drain } from './drain'
 import { averageBlocks, scatterWithinBlocks } from './block-average'
 import type { BlockAverage } from './block-average'
 import { amplitudeError, autoregressiveCovariance, listOscillations } from './fit-covariance'
-import { fitJointly } from './joint-fit'
+import { fitJointlyInSteps } from './joint-fit'
 import type { JointFit, JointFitRequest } from './joint-fit'
 import { factorQr } from './least-squares'
 import { correctLagOne, effectiveSampleCount, lagOneCorrelation } from './noise-model'
@@ -66,13 +67,14 @@ export function harmonicTest(options: {
  * Drift degree and number of harmonics together, by BIC on N_eff from the richest model's corrected lag-one correlation;
  * of all within 2 of the smallest, the lowest degree and then the fewest harmonics.
  *
- * Harmonics above the highest one that stands out of the richest fit (A ≥ 3 standard errors), and two more, are not tried.
+ * Harmonics above the highest one that stands out of the richest fit (A ≥ 3 standard errors), and two more, are not tried,
+ * nor what cannot come near the smallest even without any penalty.
  */
-export function chooseModel(request: ModelChoiceRequest): ChosenModel | Failure {
+export function* chooseModelInSteps(request: ModelChoiceRequest): Generator<void, ChosenModel | Failure> {
   const { track, cadenceSeconds, degrees, fixedHarmonicCount } = request
   const sampleCount = track.timeSeconds.length
   const topDegree = Math.max(...degrees)
-  const richest = fitRichest(request, topDegree, fixedHarmonicCount ?? request.largestHarmonicCount)
+  const richest = yield* fitRichest(request, topDegree, fixedHarmonicCount ?? request.largestHarmonicCount)
   if (!richest.ok) return richest
   const lagOne = lagOneCorrelation(track.timeSeconds, richest.residual, cadenceSeconds)
   const corrected = correctLagOne(lagOne, sampleCount, richest.parameterCount)
@@ -86,7 +88,7 @@ export function chooseModel(request: ModelChoiceRequest): ChosenModel | Failure 
   for (const driftDegree of [...degrees].sort((a, b) => b - a)) {
     for (let count = highestCount; count >= (fixedHarmonicCount ?? 1); count--) {
       const isRichest = driftDegree === topDegree && count === richestCount
-      const fit = isRichest ? richest : fitCandidate(request, search, { driftDegree, count, wormHz })
+      const fit = isRichest ? richest : yield* fitCandidate(request, search, { driftDegree, count, wormHz })
       if (!fit.ok) continue
       const rss = isRichest ? richest.rss : search.totalRss(fit.rss)
       const { parameterCount } = fit
@@ -105,6 +107,10 @@ export function chooseModel(request: ModelChoiceRequest): ChosenModel | Failure 
         parameterCount,
       })
       if (driftDegree === topDegree) wormHz = fit.frequencies.wormHz
+      // Fewer harmonics can only raise RSS: what they save in parameters bounds what this degree can still reach.
+      const { bic } = candidates[candidates.length - 1]
+      const smallest = Math.min(...candidates.map((candidate) => candidate.bic))
+      if (bic - 2 * (count - 1) * Math.log(effectiveCount) > smallest + BIC_TOLERANCE) break
     }
     wormHz = richest.frequencies.wormHz
   }
@@ -144,6 +150,11 @@ export function chooseModel(request: ModelChoiceRequest): ChosenModel | Failure 
   }
 }
 
+/** The same in one go. */
+export function chooseModel(request: ModelChoiceRequest): ChosenModel | Failure {
+  return drain(chooseModelInSteps(request))
+}
+
 /** Orders 1 … count as a list. */
 export function firstOrders(count: number): number[] {
   return Array.from({ length: count }, (_, k) => k + 1)
@@ -155,10 +166,18 @@ function baseRequest(request: ModelChoiceRequest): Omit<JointFitRequest, 'driftD
 }
 
 /** The fit with everything allowed; where its columns depend on each other, with ever fewer harmonics. */
-function fitRichest(request: ModelChoiceRequest, driftDegree: number, count: number): JointFit | Failure {
+function* fitRichest(
+  request: ModelChoiceRequest,
+  driftDegree: number,
+  count: number,
+): Generator<void, JointFit | Failure> {
   let fit: JointFit | Failure = { ok: false, reason: 'singular' }
   for (let k = count; k >= 1; k--) {
-    fit = fitJointly({ ...baseRequest(request), driftDegree, worm: { ...request.worm, orders: firstOrders(k) } })
+    fit = yield* fitJointlyInSteps({
+      ...baseRequest(request),
+      driftDegree,
+      worm: { ...request.worm, orders: firstOrders(k) },
+    })
     if (fit.ok || request.fixedHarmonicCount !== null) return fit
   }
   return fit
@@ -214,12 +233,12 @@ function subtractLines(track: Track, fit: JointFit): Track {
   return { timeSeconds: track.timeSeconds, raArcsec }
 }
 
-function fitCandidate(
+function* fitCandidate(
   request: ModelChoiceRequest,
   search: Search,
   { driftDegree, count, wormHz }: { driftDegree: number; count: number; wormHz: number },
-): JointFit | Failure {
-  const fit = fitJointly({
+): Generator<void, JointFit | Failure> {
+  const fit = yield* fitJointlyInSteps({
     ...baseRequest(request),
     track: search.track,
     lines: search.lines,

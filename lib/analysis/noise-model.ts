@@ -1,4 +1,5 @@
-import { fourierSums } from './fourier-sums'
+import { STEPS_PER_RESOLUTION, meanAmplitude } from './residual-spectrum'
+import type { ResidualSpectrum } from './residual-spectrum'
 
 /**
  * Lag-one correlation of residuals over neighbours spaced Δ ± 20 %: r_1 = [Σ r_i r_{i+1}/(pairs + 1)]/(RSS/N).
@@ -57,28 +58,23 @@ export interface PowerLaw {
  *
  * @see Whittle (1953), Ark. Mat. 2, 423
  */
-export function fitPowerLaw(options: {
-  timeSeconds: Float64Array
-  residual: Float64Array
-  cadenceSeconds: number
-  linesHz: readonly number[]
-}): PowerLaw {
-  const { timeSeconds, residual, cadenceSeconds, linesHz } = options
-  const sampleCount = residual.length
-  const span = timeSeconds[sampleCount - 1] - timeSeconds[0]
-  const count = Math.floor(0.5 * (span / cadenceSeconds)) - 1
+export function fitPowerLaw(
+  spectrum: ResidualSpectrum,
+  options: { cadenceSeconds: number; linesHz: readonly number[] },
+): PowerLaw {
+  const { cadenceSeconds, linesHz } = options
+  const { sampleCount, spanSeconds, stepHz, firstIndex, power } = spectrum
   const none: PowerLaw = { isPreferred: false, exponent: 0, level: 0, at: () => 0 }
-  if (count < 8) return none
-  const { re, im } = fourierSums({ timeSeconds, values: residual, firstHz: 1 / span, stepHz: 1 / span, count })
   const sines: number[] = []
   const cosines: number[] = []
   const powers: number[] = []
-  for (let j = 0; j < count; j++) {
-    const f = (j + 1) / span
-    if (f < 1.2 / span || linesHz.some((line) => Math.abs(f - line) < 1 / span)) continue
+  for (let j = 0; j < power.length; j += STEPS_PER_RESOLUTION) {
+    const f = (firstIndex + j) * stepHz
+    if (f >= 0.5 / cadenceSeconds - 1 / spanSeconds) break
+    if (f < 1.2 / spanSeconds || linesHz.some((line) => Math.abs(f - line) < 1 / spanSeconds)) continue
     sines.push(2 * Math.sin(Math.PI * f * cadenceSeconds))
     cosines.push(Math.cos(2 * Math.PI * f * cadenceSeconds))
-    powers.push((re[j] * re[j] + im[j] * im[j]) / sampleCount)
+    powers.push(power[j] / sampleCount)
   }
   if (powers.length < 8 || !powers.some((power) => power > 0)) return none
   const deviance = (shape: (j: number) => number) => {
@@ -111,30 +107,19 @@ export function fitPowerLaw(options: {
  *
  * @returns arc seconds (the values' unit), or null where nothing is left of the interval
  */
-export function localAmplitudeError(options: {
-  timeSeconds: Float64Array
-  residual: Float64Array
-  frequencyHz: number
-  linesHz: readonly number[]
-}): number | null {
-  const { timeSeconds, residual, frequencyHz, linesHz } = options
-  const sampleCount = residual.length
-  const span = timeSeconds[sampleCount - 1] - timeSeconds[0]
-  const stepHz = 0.1 / span
-  const first = Math.max(10, Math.ceil((frequencyHz - 5 / span) / stepHz))
-  const last = Math.floor((frequencyHz + 5 / span) / stepHz)
-  const count = last - first + 1
-  if (count < 1) return null
-  const { re, im } = fourierSums({ timeSeconds, values: residual, firstHz: first * stepHz, stepHz, count })
-  let sum = 0
-  let used = 0
-  for (let j = 0; j < count; j++) {
-    const f = (first + j) * stepHz
-    if (Math.abs(f - frequencyHz) >= 5 / span || linesHz.some((line) => Math.abs(f - line) < 1 / span)) continue
-    sum += (2 * Math.hypot(re[j], im[j])) / sampleCount
-    used += 1
-  }
-  return used === 0 ? null : Math.sqrt(2 / Math.PI) * (sum / used)
+export function localAmplitudeError(
+  spectrum: ResidualSpectrum,
+  frequencyHz: number,
+  linesHz: readonly number[],
+): number | null {
+  const resolution = 1 / spectrum.spanSeconds
+  const mean = meanAmplitude(spectrum, {
+    lowestHz: Math.max(resolution, frequencyHz - 5 * resolution),
+    highestHz: frequencyHz + 5 * resolution,
+    linesHz,
+    marginHz: resolution,
+  })
+  return mean === null ? null : Math.sqrt(2 / Math.PI) * mean
 }
 
 /** Golden-section search after a coarse scan of 24 points, so that a second valley is not missed. */
