@@ -1,0 +1,326 @@
+import type { Annotation, Layout, ScatterData, Shape } from 'plotly.js-dist-min'
+import type { AnalysisResult, AnalysisViews } from '@/lib/analysis/types'
+import { harmonicName } from '@/lib/findings/words'
+import { formatNumber, formatPeriod, formatProbability } from '@/lib/units'
+import { withAlpha } from './chart-colors'
+import {
+  axisNote,
+  baseAxis,
+  baseLayout,
+  extent,
+  isNarrow,
+  noteMark,
+  plotWidth,
+  SANS,
+  type Figure,
+  type FigureFrame,
+} from './figure'
+import { placeLabels } from './place-labels'
+import { decadeTicks, orderTicks, periodTicks } from './ticks'
+
+export interface SpectrumFigureInput {
+  result: AnalysisResult
+  spectrum: AnalysisViews['spectrum']
+  chanceLevel: number
+  isBeforeShown: boolean
+  notes: readonly { number: number; periodSeconds: number }[]
+  frame: FigureFrame
+}
+
+interface Stem {
+  periodSeconds: number
+  amplitudeArcsec: number
+  name: string
+  isWorm: boolean
+  hover: string
+}
+
+/** Log amplitude against log period, longest at the left: what the lines leave, what was before, lines as stems. */
+export function spectrumFigure(input: SpectrumFigureInput): Figure {
+  const { result, spectrum, frame, isBeforeShown } = input
+  const { colors } = frame
+  const narrow = isNarrow(frame)
+  const margin = { l: 52, r: 14, t: narrow ? 52 : 46, b: 44 }
+  const heightPx = narrow ? 320 : 330
+  const stems = stemsOf(result)
+  const periods = spectrum.frequencyHz.map((frequency) => 1 / frequency)
+  const [shortest, longest] = periodRange(periods)
+  const range = frame.zoom ?? ([longest, shortest] as [number, number])
+  const yRange = amplitudeRange(spectrum, stems)
+  const yLog: [number, number] = [Math.log10(yRange[0]), Math.log10(yRange[1])]
+  const xLog: [number, number] = [Math.log10(range[0]), Math.log10(range[1])]
+  const width = plotWidth(frame, margin)
+  const wormPeriod = result.worm?.periodSeconds.value ?? null
+  const yTicks = decadeTicks(yRange)
+  const xTicks = periodTicks([range[1], range[0]], {
+    firstSeconds: wormPeriod,
+    widthPx: width,
+    spacingPx: narrow ? 44 : 52,
+  })
+  const floor = (values: Float64Array) =>
+    values.map((value) => (value > 0 ? Math.max(value, yRange[0] / 2) : yRange[0] / 2))
+  const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.periodSeconds }, frame))
+  const ruler = wormPeriod === null ? null : rulerOf({ wormPeriod, range, width, frame })
+  const layout: Partial<Layout> = {
+    ...baseLayout(frame, { heightPx, margin }),
+    hovermode: 'closest',
+    xaxis: {
+      ...baseAxis(frame),
+      type: 'log',
+      range: xLog,
+      tickvals: xTicks.values,
+      ticktext: xTicks.labels,
+      ticks: 'outside',
+      ticklen: 4,
+      showline: true,
+    },
+    yaxis: {
+      ...baseAxis(frame),
+      type: 'log',
+      range: yLog,
+      tickvals: yTicks.values,
+      ticktext: yTicks.labels,
+      showgrid: true,
+    },
+    shapes: [...(ruler?.shapes ?? []), ...marks.map(({ shape }) => ({ ...shape }))],
+    annotations: [
+      axisNote('arcsec amplitude', frame, { x: 0, y: 1, xanchor: 'left', yanchor: 'top', xshift: 4, yshift: -2 }),
+      axisNote('period', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
+      ...(ruler?.annotations ?? []),
+      chanceLabel(input, { range, yRange }),
+      ...stemLabels(stems, { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b, frame }),
+      ...marks.map(({ annotation }) => annotation),
+    ],
+  }
+  const orders = wormPeriod === null ? null : spectrum.frequencyHz.map((frequency) => frequency * wormPeriod)
+  const hover = orders ? 'order %{customdata:.3f}<br>%{x:.4~r} s<br>%{y:.3~r}″' : '%{x:.4~r} s<br>%{y:.3~r}″'
+  const curve = (name: string, y: Float64Array): Partial<ScatterData> => ({
+    type: 'scatter',
+    mode: 'lines',
+    name,
+    x: periods,
+    y: floor(y),
+    ...(orders ? { customdata: orders } : {}),
+    hovertemplate: `${hover}<extra>${name}</extra>`,
+  })
+  return {
+    layout,
+    data: [
+      ...(isBeforeShown
+        ? [{ ...curve('before', spectrum.beforeArcsec), line: { color: colors.steel, width: 0.75 }, opacity: 0.5 }]
+        : []),
+      {
+        ...curve('left after the lines', spectrum.afterArcsec),
+        line: { color: colors.steel, width: 1.1 },
+        fill: 'tozeroy',
+        fillcolor: withAlpha(colors.steel, 0.16),
+      },
+      {
+        ...curve('chance level', spectrum.chanceArcsec),
+        line: { color: colors.oxide, width: 1.5, dash: 'dot' },
+      },
+      ...stemTraces(
+        stems.filter(({ isWorm }) => !isWorm),
+        { floor: yRange[0] / 2, line: colors.verdigris, dot: colors.verdigris, ring: colors.card, symbol: 'diamond' },
+      ),
+      ...stemTraces(
+        stems.filter(({ isWorm }) => isWorm),
+        { floor: yRange[0] / 2, line: colors.brass, dot: colors['brass-fill'], ring: colors.card, symbol: 'circle' },
+      ),
+    ],
+    table: {
+      columns: [
+        { name: 'period_seconds', values: periods },
+        ...(orders ? [{ name: 'order', values: orders }] : []),
+        { name: 'before_arcsec', values: spectrum.beforeArcsec },
+        { name: 'left_arcsec', values: spectrum.afterArcsec },
+        { name: 'chance_arcsec', values: spectrum.chanceArcsec },
+        { name: 'line_name', values: stems.map(({ name }) => name) },
+        { name: 'line_period_seconds', values: stems.map(({ periodSeconds }) => periodSeconds) },
+        { name: 'line_amplitude_arcsec', values: stems.map(({ amplitudeArcsec }) => amplitudeArcsec) },
+      ],
+    },
+    x: { range, isLog: true, marginLeftPx: margin.l, marginRightPx: margin.r },
+  }
+}
+
+function stemsOf({ worm, lines }: AnalysisResult): Stem[] {
+  const ofWorm = (worm?.harmonics ?? []).map(({ order, periodSeconds, amplitudeArcsec }): Stem => ({
+    periodSeconds,
+    amplitudeArcsec: amplitudeArcsec.value,
+    name: harmonicName(order),
+    isWorm: true,
+    hover: `order ${order}<br>${formatPeriod(periodSeconds)}<br>${formatNumber(amplitudeArcsec.value, 3)}″`,
+  }))
+  const others = lines.map(({ order, periodSeconds, amplitudeArcsec, source }): Stem => ({
+    periodSeconds: periodSeconds.value,
+    amplitudeArcsec: amplitudeArcsec.value,
+    name: source ?? 'unexplained',
+    isWorm: false,
+    hover: `${order ? `order ${formatNumber(order.value, 3)}<br>` : ''}${formatPeriod(periodSeconds.value)}<br>${formatNumber(amplitudeArcsec.value, 3)}″`,
+  }))
+  return [...ofWorm, ...others].filter(({ amplitudeArcsec }) => amplitudeArcsec > 0)
+}
+
+function stemTraces(
+  stems: readonly Stem[],
+  look: { floor: number; line: string; dot: string; ring: string; symbol: 'circle' | 'diamond' },
+): Partial<ScatterData>[] {
+  if (stems.length === 0) return []
+  return [
+    {
+      type: 'scatter',
+      mode: 'lines',
+      hoverinfo: 'skip',
+      x: stems.flatMap(({ periodSeconds }) => [periodSeconds, periodSeconds, null]),
+      y: stems.flatMap(({ amplitudeArcsec }) => [look.floor, amplitudeArcsec, null]),
+      line: { color: look.line, width: 2 },
+    },
+    {
+      type: 'scatter',
+      mode: 'markers',
+      x: stems.map(({ periodSeconds }) => periodSeconds),
+      y: stems.map(({ amplitudeArcsec }) => amplitudeArcsec),
+      text: stems.map(({ hover, name }) => `${hover}<extra>${name}</extra>`),
+      hovertemplate: '%{text}',
+      marker: { color: look.dot, size: 10, symbol: look.symbol, line: { color: look.ring, width: 1.5 } },
+    },
+  ]
+}
+
+function stemLabels(
+  stems: readonly Stem[],
+  axes: { xLog: [number, number]; yLog: [number, number]; width: number; heightPx: number; frame: FigureFrame },
+): Partial<Annotation>[] {
+  const { xLog, yLog, width, heightPx, frame } = axes
+  const points = stems
+    .map((stem) => ({
+      stem,
+      text: stem.name,
+      xPx: ((Math.log10(stem.periodSeconds) - xLog[0]) / (xLog[1] - xLog[0])) * width,
+      yPx: (1 - (Math.log10(stem.amplitudeArcsec) - yLog[0]) / (yLog[1] - yLog[0])) * heightPx,
+    }))
+    .filter(({ xPx }) => xPx >= 0 && xPx <= width)
+    .sort((a, b) => b.stem.amplitudeArcsec - a.stem.amplitudeArcsec)
+  return placeLabels(points, width).map(({ xPx, yPx, text, anchor, liftPx }) => {
+    const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
+    return {
+      text,
+      x: xPx / width,
+      xref: 'paper',
+      xanchor: anchor === 'over' ? 'center' : anchor === 'right' ? 'left' : 'right',
+      xshift: anchor === 'over' ? 0 : anchor === 'right' ? 7 : -7,
+      y: 1 - yPx / heightPx,
+      yref: 'paper',
+      yanchor: anchor === 'over' ? 'bottom' : 'middle',
+      yshift: liftPx + (anchor === 'over' ? 5 : 3),
+      showarrow: false,
+      font: { family: SANS, size: 13, weight: 600, color: stem?.isWorm ? frame.colors.brass : frame.colors.verdigris },
+    }
+  })
+}
+
+/** The order ruler over the picture: swings per turn of the worm. */
+function rulerOf({
+  wormPeriod,
+  range,
+  width,
+  frame,
+}: {
+  wormPeriod: number
+  range: [number, number]
+  width: number
+  frame: FigureFrame
+}) {
+  const { colors } = frame
+  const { labelled, plain } = orderTicks([wormPeriod / range[0], wormPeriod / range[1]], {
+    widthPx: width,
+    spacingPx: 26,
+  })
+  const tick = (order: number, length: number): Partial<Shape> => ({
+    type: 'line',
+    xref: 'x',
+    x0: wormPeriod / order,
+    x1: wormPeriod / order,
+    yref: 'paper',
+    yanchor: 1,
+    ysizemode: 'pixel',
+    y0: 21,
+    y1: 21 - length,
+    line: { color: colors.soft, width: 1 },
+  })
+  const baseline: Partial<Shape> = {
+    type: 'line',
+    xref: 'paper',
+    x0: 0,
+    x1: 1,
+    yref: 'paper',
+    yanchor: 1,
+    ysizemode: 'pixel',
+    y0: 21,
+    y1: 21,
+    line: { color: colors.soft, width: 1 },
+  }
+  const label = (order: number): Partial<Annotation> => ({
+    text: String(order),
+    x: Math.log10(wormPeriod / order),
+    xref: 'x',
+    y: 1,
+    yref: 'paper',
+    yanchor: 'bottom',
+    yshift: 21,
+    showarrow: false,
+    font: { size: 12, color: colors.soft },
+  })
+  return {
+    shapes: [baseline, ...labelled.map((order) => tick(order, 12)), ...plain.map((order) => tick(order, 6))],
+    annotations: [
+      axisNote('order', frame, { x: 0, y: 1, xanchor: 'right', xshift: -9, yshift: 21 }),
+      ...labelled.map(label),
+    ],
+  }
+}
+
+function chanceLabel(
+  { result, spectrum, chanceLevel, frame }: SpectrumFigureInput,
+  { range, yRange }: { range: [number, number]; yRange: [number, number] },
+): Partial<Annotation> {
+  const at = range[1]
+  const atFrequency = 1 / at
+  let nearest = 0
+  spectrum.frequencyHz.forEach((frequency, index) => {
+    if (Math.abs(frequency - atFrequency) < Math.abs(spectrum.frequencyHz[nearest] - atFrequency)) nearest = index
+  })
+  const odds = formatProbability(chanceLevel)
+  const text = isNarrow(frame) ? 'chance' : `chance reaches this high ${odds.replace(/^1 in/, '1 time in')}`
+  const highest = extent(spectrum.chanceArcsec)[1]
+  const height = Math.max(yRange[0], result.lines.length + 1 > 0 ? highest : spectrum.chanceArcsec[nearest])
+  return {
+    text,
+    x: 1,
+    xref: 'paper',
+    xanchor: 'right',
+    y: Math.log10(height),
+    yref: 'y',
+    yanchor: 'bottom',
+    yshift: 2,
+    showarrow: false,
+    font: { size: 12, color: frame.colors.soft },
+  }
+}
+
+function periodRange(periods: Float64Array): [number, number] {
+  const [shortest, longest] = extent(periods)
+  return shortest < longest ? [shortest, longest] : [shortest / 2, longest * 2]
+}
+
+/** From a third of a decade over the largest swing down to where the noise lies, at most four decades. */
+function amplitudeRange(spectrum: AnalysisViews['spectrum'], stems: readonly Stem[]): [number, number] {
+  const largest = Math.max(extent(spectrum.beforeArcsec)[1], ...stems.map(({ amplitudeArcsec }) => amplitudeArcsec))
+  const chance = extent(spectrum.chanceArcsec)
+  const high = Math.max(largest, chance[1]) * 2.2
+  const noise = Math.max(chance[0] / 12, high / 1e4)
+  const power = Math.floor(Math.log10(noise))
+  const low = noise >= 3 * 10 ** power ? 3 * 10 ** power : 10 ** power
+  return [low, high]
+}
