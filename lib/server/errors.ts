@@ -1,0 +1,95 @@
+import 'server-only'
+import { ZodError } from 'zod'
+import { Refusal } from '@/db/queries/refusal'
+
+/** Every code that a handler may answer with, and its HTTP status. */
+export const STATUS = {
+  'bad-request': 400,
+  'not-signed-in': 401,
+  'wrong-credentials': 401,
+  'wrong-origin': 403,
+  forbidden: 403,
+  'not-found': 404,
+  'upload-stalled': 408,
+  'changed-meanwhile': 409,
+  'in-use': 409,
+  'run-not-ready': 409,
+  'correction-was-on': 409,
+  'upload-incomplete': 400,
+  'too-large': 413,
+  'not-valid': 422,
+  'unreadable-file': 422,
+  'no-table': 422,
+  'sense-not-confirmed': 422,
+  'too-many-attempts': 429,
+  unknown: 500,
+  busy: 503,
+} as const
+
+export type ErrorCode = keyof typeof STATUS
+
+export interface ErrorDetails {
+  fields?: Record<string, string>
+  changedBy?: string
+  changedAt?: string
+  current?: unknown
+  /** Where the fault of a file lies, and of which kind it is. */
+  fault?: { code: string; row: number | null; column: string | null }
+  retryAfterSeconds?: number
+}
+
+/** Something that we refuse for a reason that the asker may read. */
+export class AppError extends Error {
+  constructor(
+    readonly code: ErrorCode,
+    message: string,
+    readonly details: ErrorDetails = {},
+  ) {
+    super(message)
+    this.name = 'AppError'
+  }
+}
+
+export function notSignedIn(): AppError {
+  return new AppError('not-signed-in', 'Sign in first')
+}
+
+/** Gives known refusals the one form that is answered; undefined for what nobody foresaw. */
+export function toAppError(error: unknown): AppError | undefined {
+  if (error instanceof AppError) return error
+  if (error instanceof ZodError) {
+    const fields: Record<string, string> = {}
+    for (const { path, message } of error.issues) fields[path.join('.')] ??= message
+    return new AppError('not-valid', 'Some of this can’t be taken as it is', { fields })
+  }
+  if (!(error instanceof Refusal)) return undefined
+  const { reason, message } = error
+  switch (reason.kind) {
+    case 'unknown':
+      return new AppError('not-found', message)
+    case 'forbidden':
+      return new AppError('forbidden', message)
+    case 'in-use':
+      return new AppError('in-use', message)
+    case 'changed': {
+      const { change, current } = reason
+      return new AppError('changed-meanwhile', message, {
+        changedBy: change.by,
+        changedAt: change.at.toISOString(),
+        current,
+      })
+    }
+  }
+}
+
+/** The one form of every refusal (errorAnswerSchema); what nobody foresaw is logged and answered blandly. */
+export function errorResponse(error: unknown): Response {
+  const known = toAppError(error)
+  if (!known) console.error(error)
+  const { code, message, details } =
+    known ?? new AppError('unknown', 'Something went wrong on the server. Nothing was changed; try again in a moment.')
+  const { retryAfterSeconds, ...rest } = details
+  const headers = new Headers({ 'cache-control': 'no-store' })
+  if (retryAfterSeconds !== undefined) headers.set('retry-after', String(retryAfterSeconds))
+  return Response.json({ error: { code, message, ...rest } }, { status: STATUS[code], headers })
+}

@@ -1,0 +1,73 @@
+import 'server-only'
+import { createHash } from 'node:crypto'
+import { database } from '@/db'
+import { countAttempt, findLimitState, forgetAttempts, type Limit } from '@/db/queries/rate-limits'
+import { environment } from './environment'
+import { AppError } from './errors'
+
+const QUARTER_HOUR = 900
+const HOUR = 3600
+
+/** How often within how many seconds. Addresses that can't be told apart share one count, so it is larger. */
+const LIMITS = {
+  'sign-in account': { most: 10, windowSeconds: QUARTER_HOUR },
+  'sign-in address': { most: 50, windowSeconds: QUARTER_HOUR },
+  'sign-up address': { most: 20, windowSeconds: HOUR },
+  'upload account': { most: 300, windowSeconds: HOUR },
+  'upload address': { most: 600, windowSeconds: HOUR },
+} as const
+
+const SHARED_FACTOR = 20
+
+export type LimitName = keyof typeof LIMITS
+
+/**
+ * The asker's network address as our proxy saw it: the last entry of x-forwarded-for. Without TRUST_PROXY that header may
+ * be the asker's own invention, and a handler sees no other address: null.
+ */
+function addressOf(request: Request): string | null {
+  if (!environment().isProxyTrusted) return null
+  return request.headers.get('x-forwarded-for')?.split(',').at(-1)?.trim() || null
+}
+
+/** Accounts and addresses are kept as hashes: the counters need to tell them apart, not to know them. */
+function limitOf(name: LimitName, who: string | null): Limit {
+  const { most, windowSeconds } = LIMITS[name]
+  if (who === null) return { key: `${name} shared`, most: most * SHARED_FACTOR, windowSeconds }
+  return { key: `${name} ${createHash('sha256').update(who).digest('hex')}`, most, windowSeconds }
+}
+
+export function addressLimit(name: LimitName, request: Request): Limit {
+  return limitOf(name, addressOf(request))
+}
+
+export function accountLimit(name: LimitName, account: string): Limit {
+  return limitOf(name, account.toLowerCase())
+}
+
+function tooMany(secondsLeft: number): AppError {
+  const minutes = Math.max(1, Math.ceil(secondsLeft / 60))
+  return new AppError('too-many-attempts', `Too many attempts. Try again in ${minutes} min.`, {
+    retryAfterSeconds: secondsLeft,
+  })
+}
+
+/** Counts an attempt and refuses the ones past the limit. */
+export async function takeAttempt(limit: Limit): Promise<void> {
+  const { isOver, secondsLeft } = await countAttempt(database(), limit)
+  if (isOver) throw tooMany(secondsLeft)
+}
+
+/** Refuses once failures have filled the limit, without counting. */
+export async function assertBelow(limit: Limit): Promise<void> {
+  const { isOver, secondsLeft } = await findLimitState(database(), limit)
+  if (isOver) throw tooMany(secondsLeft)
+}
+
+export async function countFailure(limit: Limit): Promise<void> {
+  await countAttempt(database(), limit)
+}
+
+export async function forgetFailures(limit: Limit): Promise<void> {
+  await forgetAttempts(database(), limit.key)
+}

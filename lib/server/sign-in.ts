@@ -1,0 +1,42 @@
+import 'server-only'
+import type { z } from 'zod'
+import { database } from '@/db'
+import { insertAccountEvent } from '@/db/queries/audit'
+import { findUserForSignIn, insertUser } from '@/db/queries/users'
+import type { signInSchema, signUpSchema } from '@/lib/schemas/api'
+import type { SignedInUser } from './auth'
+import { AppError } from './errors'
+import { hashPassword, isPasswordRight } from './passwords'
+import { accountLimit, addressLimit, assertBelow, countFailure, forgetFailures, takeAttempt } from './rate-limit'
+
+/** Makes an account. @throws {AppError} not-valid with fields.email when the address has one */
+export async function signUp(request: Request, form: z.output<typeof signUpSchema>): Promise<SignedInUser> {
+  await takeAttempt(addressLimit('sign-up address', request))
+  const passwordHash = await hashPassword(form.password)
+  const { displayName, email } = form
+  return database()
+    .transaction()
+    .execute(async (trx) => {
+      const user = await insertUser(trx, { displayName, email, passwordHash })
+      if (!user) {
+        const taken = 'There is an account with this address already. Sign in instead.'
+        throw new AppError('not-valid', taken, { fields: { email: taken } })
+      }
+      await insertAccountEvent(trx, user.id, { action: 'account.sign-up', subject: email })
+      return user
+    })
+}
+
+/** Only failures count towards the limits. @throws {AppError} wrong-credentials, the same for an unknown address */
+export async function signIn(request: Request, form: z.output<typeof signInSchema>): Promise<SignedInUser> {
+  const limits = [accountLimit('sign-in account', form.email), addressLimit('sign-in address', request)]
+  for (const limit of limits) await assertBelow(limit)
+  const found = await findUserForSignIn(database(), form.email)
+  if (!(await isPasswordRight(found?.passwordHash, form.password)) || !found) {
+    for (const limit of limits) await countFailure(limit)
+    throw new AppError('wrong-credentials', 'The e-mail address or the password is not right')
+  }
+  await forgetFailures(limits[0])
+  await insertAccountEvent(database(), found.id, { action: 'account.sign-in', subject: found.email })
+  return { id: found.id, displayName: found.displayName, email: found.email }
+}
