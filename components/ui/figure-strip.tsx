@@ -1,4 +1,5 @@
 import type { ReactNode } from 'react'
+import { withSpace } from '@/lib/units'
 import { Card } from './card'
 
 export interface KeyFigure {
@@ -7,7 +8,8 @@ export interface KeyFigure {
   value: ReactNode
   /** Its standard error as text, without the ± sign. */
   uncertainty?: ReactNode
-  unit?: ReactNode
+  /** With or without the space before it. */
+  unit?: string
   /** A word or two behind it, such as “real change”. */
   remark?: ReactNode
 }
@@ -46,12 +48,7 @@ export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'la
             {uncertainty}
           </>
         )}
-        {unit === undefined ? null : (
-          <>
-            {'\u2009'}
-            {unit}
-          </>
-        )}
+        {unit ? withSpace(unit.trimStart()) : null}
         {remark === undefined ? null : <span className="ml-3">{remark}</span>}
       </span>
     </span>

@@ -1,6 +1,7 @@
 'use client'
 
-import { useState, type ComponentProps } from 'react'
+import { useEffect, useRef, useState, type ComponentProps, type ReactNode } from 'react'
+import { Field } from './field'
 import { classNames } from './class-names'
 import { numberText, parseNumberText } from './number-text'
 
@@ -14,24 +15,40 @@ interface NumberInputProps extends Omit<ComponentProps<'input'>, 'value' | 'onCh
   min?: number
   max?: number
   isInteger?: boolean
+  /** An empty field is a fault; it gives no number. */
+  isRequired?: boolean
 }
 
-/** A field for one number. What was typed stays in the field, also when it can't be read. */
+/** A field for one number. While it has the focus, and as long as it can't be read, what was typed stays in it. */
 export function NumberInput(props: NumberInputProps) {
-  const { value, onValue, onFault, unit, min, max, isInteger = false, className, onBlur, ...rest } = props
-  const [draft, setDraft] = useState<{ text: string; value: number | null } | null>(null)
-  const text = draft && draft.value === value ? draft.text : numberText(value)
-  const fault = faultIn(text, { min, max, isInteger })
+  const {
+    value,
+    onValue,
+    onFault,
+    unit,
+    min,
+    max,
+    isInteger = false,
+    isRequired = false,
+    className,
+    onBlur,
+    ...rest
+  } = props
+  const [draft, setDraft] = useState<string | null>(null)
+  const text = draft ?? numberText(value)
+  const limits = { min, max, isInteger, isRequired }
+  const fault = faultIn(text, limits)
+  const input = useRef<HTMLInputElement>(null)
+
+  // So that a form can ask all its fields at once whether they may be sent.
+  useEffect(() => input.current?.setCustomValidity(fault ?? ''), [fault])
 
   function take(typed: string) {
-    const parsed = parseNumberText(typed)
-    const typedFault = faultIn(typed, { min, max, isInteger })
+    setDraft(typed)
+    const typedFault = faultIn(typed, limits)
     onFault?.(typedFault)
-    if (typedFault || parsed === 'not-a-number') {
-      setDraft({ text: typed, value })
-      return
-    }
-    setDraft({ text: typed, value: parsed })
+    const parsed = parseNumberText(typed)
+    if (typedFault || parsed === 'not-a-number') return
     onValue(parsed)
   }
 
@@ -39,6 +56,7 @@ export function NumberInput(props: NumberInputProps) {
     <span className="relative block">
       <input
         {...rest}
+        ref={input}
         type="text"
         inputMode={isInteger && (min ?? -1) >= 0 ? 'numeric' : 'decimal'}
         autoComplete="off"
@@ -62,10 +80,33 @@ export function NumberInput(props: NumberInputProps) {
   )
 }
 
-function faultIn(text: string, { min, max, isInteger }: { min?: number; max?: number; isInteger: boolean }) {
+interface NumberFieldProps extends Omit<NumberInputProps, 'id' | 'onFault'> {
+  label: ReactNode
+  hint?: ReactNode
+  error?: string | null
+}
+
+/** A number with its label; what is wrong with it stands below it. */
+export function NumberField({ label, hint, error, ...rest }: NumberFieldProps) {
+  const [fault, setFault] = useState<string | null>(null)
+  return (
+    <Field label={label} hint={hint} error={fault ?? error}>
+      {(control) => <NumberInput {...control} {...rest} onFault={setFault} />}
+    </Field>
+  )
+}
+
+interface Limits {
+  min?: number
+  max?: number
+  isInteger: boolean
+  isRequired: boolean
+}
+
+function faultIn(text: string, { min, max, isInteger, isRequired }: Limits): string | null {
   const value = parseNumberText(text)
   if (value === 'not-a-number') return 'This is not a number'
-  if (value === null) return null
+  if (value === null) return isRequired ? 'Type a number' : null
   if (isInteger && !Number.isInteger(value)) return 'A whole number, please'
   if (min !== undefined && value < min) return `At least ${numberText(min)}`
   if (max !== undefined && value > max) return `At most ${numberText(max)}`

@@ -1,15 +1,7 @@
 'use client'
 
 import { useSyncExternalStore } from 'react'
-
-export const themes = ['day', 'dusk', 'night'] as const
-export type Theme = (typeof themes)[number]
-
-export const themeCookieName = 'theme'
-
-export function isTheme(value: unknown): value is Theme {
-  return themes.some((theme) => theme === value)
-}
+import { isTheme, themeCookieName, type Theme } from './theme-names'
 
 const oneYearSeconds = 365 * 24 * 3600
 const darkQuery = '(prefers-color-scheme: dark)'

@@ -1,0 +1,17 @@
+import type { Metadata } from 'next'
+import { SwrFallback } from '@/components/shell/swr-fallback'
+import { requireProjectPage } from '@/lib/server/current-user'
+import { loadProject } from '@/lib/server/load-projects'
+
+export async function generateMetadata({ params }: LayoutProps<'/projects/[projectId]'>): Promise<Metadata> {
+  const { access } = await requireProjectPage((await params).projectId)
+  const { name } = await loadProject(access)
+  return { title: { default: name, template: `%s · ${name} · Turnwright` } }
+}
+
+/** Hands the project to everything below it. Each page checks for itself who asks: a layout is not run on every move. */
+export default async function ProjectLayout({ children, params }: LayoutProps<'/projects/[projectId]'>) {
+  const { access } = await requireProjectPage((await params).projectId)
+  const project = await loadProject(access)
+  return <SwrFallback fallback={{ [`/api/projects/${project.id}`]: project }}>{children}</SwrFallback>
+}

@@ -1,0 +1,19 @@
+import type { Metadata } from 'next'
+import { NewProjectForm } from '@/components/projects/new-project-form'
+import { PageHeading } from '@/components/shell/page-heading'
+import { Card } from '@/components/ui/card'
+import { requirePageUser } from '@/lib/server/current-user'
+
+export const metadata: Metadata = { title: 'New project' }
+
+export default async function NewProjectPage() {
+  await requirePageUser('/projects/new')
+  return (
+    <>
+      <PageHeading crumbs={[{ label: 'Projects', href: '/projects' }, { label: 'New' }]} title="Which mount is it?" />
+      <Card className="max-w-xl p-6 max-sm:p-4">
+        <NewProjectForm />
+      </Card>
+    </>
+  )
+}

@@ -1,0 +1,53 @@
+'use client'
+
+import { useState } from 'react'
+import { PageHeading } from '@/components/shell/page-heading'
+import { ThemeSwitch } from '@/components/shell/theme-switch'
+import { Button } from '@/components/ui/button'
+import { Notice } from '@/components/ui/notice'
+import { FactRow, SheetSection } from '@/components/ui/sheet-section'
+import { sendOnly } from '@/lib/client/fetcher'
+import { openAfresh } from '@/lib/client/open-afresh'
+
+export function AccountScreen({ user }: { user: { displayName: string; email: string } }) {
+  const [fault, setFault] = useState<string | null>(null)
+
+  async function signOut() {
+    setFault(null)
+    try {
+      await sendOnly('POST', '/api/auth/sign-out')
+      openAfresh('/')
+    } catch (error) {
+      setFault(error instanceof Error ? error.message : 'Try again in a moment.')
+    }
+  }
+
+  return (
+    <>
+      <PageHeading
+        title={`You are signed in as ${user.displayName}`}
+        actions={<Button onClick={() => void signOut()}>Sign out</Button>}
+      />
+      {fault ? (
+        <Notice tone="error" title="You are still signed in" isLive>
+          {fault}
+        </Notice>
+      ) : null}
+      <SheetSection title="You" question="How others in your projects see you, and how you sign in.">
+        <dl className="max-w-md">
+          <FactRow name="name">
+            <span className="font-sans">{user.displayName}</span>
+          </FactRow>
+          <FactRow name="e-mail">{user.email}</FactRow>
+        </dl>
+      </SheetSection>
+      <SheetSection title="Theme" question="Remembered in this browser.">
+        <ThemeSwitch />
+        <p className="mt-3 max-w-[70ch] text-soft">
+          Night is for use at the telescope: nothing on the page has any green or blue in it, so that your eyes stay
+          adapted to the dark. Dialogs of the system, such as the one that picks a file, can’t be tinted.
+        </p>
+      </SheetSection>
+    </>
+  )
+}

@@ -1,0 +1,57 @@
+'use client'
+
+import { PageHeading } from '@/components/shell/page-heading'
+import { DataState } from '@/components/ui/data-state'
+import { DataTable } from '@/components/ui/data-table'
+import type { DataColumn } from '@/components/ui/data-table-model'
+import { formatDay } from '@/lib/client/dates'
+import { useMembers, useProject, type Member } from '@/lib/client/project-data'
+import { capitalised, counted } from '@/lib/findings/words'
+
+const mayDo: Record<Member['role'], string> = {
+  owner: 'everything, and decides who else is here',
+  editor: 'bring in runs, analyse, write notes, make correction tables',
+  viewer: 'read and download',
+}
+
+const columns: readonly DataColumn<Member>[] = [
+  { id: 'name', header: 'Name', value: ({ displayName }) => displayName },
+  { id: 'role', header: 'Role', value: ({ role }) => role },
+  { id: 'may', header: 'May', isSecondary: true, value: ({ role }) => mayDo[role] },
+  {
+    id: 'since',
+    header: 'Since',
+    isNumeric: true,
+    value: ({ joinedAt }) => joinedAt,
+    cell: ({ joinedAt }) => formatDay(joinedAt),
+  },
+]
+
+export function PeopleScreen({ projectId }: { projectId: string }) {
+  const project = useProject(projectId)
+  const { data, error, mutate } = useMembers(projectId)
+  return (
+    <DataState what="the people" data={data} error={error} onRetry={() => void mutate()}>
+      {({ members }) => (
+        <>
+          <PageHeading
+            crumbs={[{ label: project.data?.name ?? 'Project', href: `/projects/${projectId}` }, { label: 'People' }]}
+            title={
+              members.length === 1
+                ? 'One person works on this mount'
+                : `${capitalised(counted(members.length, 'person', 'people'))} share this mount`
+            }
+            lead={
+              project.data ? `You are ${article(project.data.role)} and may ${mayDo[project.data.role]}.` : undefined
+            }
+          />
+          <DataTable caption="people" columns={columns} rows={members} rowId={({ userId }) => userId} />
+        </>
+      )}
+    </DataState>
+  )
+}
+
+function article(role: Member['role']): string {
+  return role === 'viewer' ? 'a viewer' : `an ${role}`
+}

@@ -1,0 +1,107 @@
+'use client'
+
+import { useState } from 'react'
+import { PageHeading } from '@/components/shell/page-heading'
+import { Button } from '@/components/ui/button'
+import { ConflictNotice } from '@/components/ui/conflict-notice'
+import { DataState } from '@/components/ui/data-state'
+import { Actions } from '@/components/ui/dialog'
+import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
+import { Notice } from '@/components/ui/notice'
+import { SheetSection } from '@/components/ui/sheet-section'
+import type { DriveTrain } from '@/lib/analysis/types'
+import { formatMinute } from '@/lib/client/dates'
+import { sendJson } from '@/lib/client/fetcher'
+import { useProject } from '@/lib/client/project-data'
+import { findingText } from '@/lib/findings/finding'
+import { driveFinding } from '@/lib/findings/drive-finding'
+import { projectSchema, type Project } from '@/lib/schemas/api'
+import { DriveTrainEditor } from './drive-train-editor'
+import { PredictedOrdersTable } from './predicted-orders-table'
+import { useSave } from './use-save'
+
+export function DriveScreen({ projectId }: { projectId: string }) {
+  const { data, error, mutate } = useProject(projectId)
+  return (
+    <DataState what="the drive train" data={data} error={error} onRetry={() => void mutate()}>
+      {(project) => <DriveForm project={project} onSaved={(saved) => void mutate(saved, { revalidate: false })} />}
+    </DataState>
+  )
+}
+
+function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: Project) => void }) {
+  const [typed, setTyped] = useState<DriveTrain>(project.driveTrain)
+  const [version, setVersion] = useState(project.version)
+  const { save, isBusy, isSaved, fault, conflict, dropConflict } = useSave(projectSchema)
+  const isReadOnly = project.role === 'viewer'
+  const isChanged = JSON.stringify(typed) !== JSON.stringify(project.driveTrain)
+
+  async function send(fromVersion: number) {
+    const body = { version: fromVersion, driveTrain: typed }
+    const saved = await save(() => sendJson('PUT', `/api/projects/${project.id}/drive-train`, body, projectSchema))
+    if (!saved) return
+    setVersion(saved.version)
+    onSaved(saved)
+  }
+
+  return (
+    <>
+      <PageHeading
+        crumbs={[{ label: project.name, href: `/projects/${project.id}` }, { label: 'Drive train' }]}
+        title={findingText(driveFinding(typed))}
+        lead="Every part of the drive swings the axis at its own period. Knowing the teeth tells which swing comes from which part, and which of them a table for the worm can take out."
+      />
+      <SheetSection
+        title="Parts"
+        question="What turns the axis, from the worm wheel back to the motor? Count teeth or take them from the maker’s data."
+        aside={<PredictedOrdersTable driveTrain={typed} />}
+      >
+        <form
+          noValidate
+          onSubmit={(event) => {
+            event.preventDefault()
+            if (focusFirstInvalid(event.currentTarget)) return
+            void send(version)
+          }}
+        >
+          <DriveTrainEditor value={typed} onValue={setTyped} isReadOnly={isReadOnly} key={version} />
+          <div className="mt-5 flex flex-col gap-3">
+            {conflict ? (
+              <ConflictNotice
+                thing="this project"
+                changedBy={conflict.changedBy}
+                changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
+                onKeepMine={() => void send(conflict.current.version)}
+                onTakeTheirs={() => {
+                  setTyped(conflict.current.driveTrain)
+                  setVersion(conflict.current.version)
+                  dropConflict()
+                  onSaved(conflict.current)
+                }}
+              />
+            ) : null}
+            {fault ? (
+              <Notice tone="error" title="Not saved" isLive>
+                {fault}
+              </Notice>
+            ) : null}
+            {isSaved && !isChanged ? (
+              <Notice tone="good" isLive>
+                Saved. Runs analysed from now on use it; saved analyses keep the drive train that they were made with.
+              </Notice>
+            ) : null}
+            {isReadOnly ? (
+              <p className="text-sm text-soft">You can read this project; its owner and editors change it.</p>
+            ) : (
+              <Actions className="mt-0">
+                <Button type="submit" variant="primary" disabled={isBusy || !isChanged}>
+                  Save the drive train
+                </Button>
+              </Actions>
+            )}
+          </div>
+        </form>
+      </SheetSection>
+    </>
+  )
+}

@@ -1,0 +1,100 @@
+import Link from 'next/link'
+import { formatDay } from '@/lib/client/dates'
+import { historyMarks } from '@/lib/figures/history-marks'
+import type { HistoryPoint } from '@/lib/findings/project-history'
+import { arcsec } from '@/lib/findings/words'
+import { formatNumber } from '@/lib/units'
+
+interface HistoryPictureProps {
+  projectId: string
+  history: readonly HistoryPoint[]
+  summary: string
+}
+
+/** The worm over the years: amplitude as filled dots, peak-to-peak as hollow squares. Each pair leads to its analysis. */
+export function HistoryPicture({ projectId, history, summary }: HistoryPictureProps) {
+  const { points, ticks } = historyMarks(history)
+  const line = (top: 'amplitudeTop' | 'peakToPeakTop') => points.map((point) => `${point.left},${point[top]}`).join(' ')
+  return (
+    <figure className="text-sm" aria-label={summary}>
+      <p className="figures mb-2 pl-12 text-xs text-soft" aria-hidden="true">
+        ″ of axis
+      </p>
+      <div className="flex">
+        <div className="figures relative h-48 w-12 shrink-0 text-xs text-soft" aria-hidden="true">
+          {ticks.map(({ top, value }) => (
+            <span key={value} className="absolute right-2 -translate-y-1/2" style={{ top: `${100 * top}%` }}>
+              {formatNumber(value, value % 1 === 0 ? 0 : 1)}
+            </span>
+          ))}
+        </div>
+        <div className="relative h-48 min-w-0 flex-1">
+          <svg viewBox="0 0 1 1" preserveAspectRatio="none" className="absolute inset-0 size-full" aria-hidden="true">
+            {ticks.map(({ top, value }) => (
+              <line
+                key={value}
+                x1="0"
+                x2="1"
+                y1={top}
+                y2={top}
+                className={value === 0 ? 'stroke-soft' : 'stroke-faint'}
+                vectorEffect="non-scaling-stroke"
+              />
+            ))}
+            <polyline
+              points={line('peakToPeakTop')}
+              fill="none"
+              strokeDasharray="4 4"
+              className="stroke-steel"
+              vectorEffect="non-scaling-stroke"
+            />
+            <polyline
+              points={line('amplitudeTop')}
+              fill="none"
+              strokeWidth="2"
+              className="stroke-brass"
+              vectorEffect="non-scaling-stroke"
+            />
+          </svg>
+          {points.map(({ left, amplitudeTop, peakToPeakTop }, index) => {
+            const point = history[index]
+            const text = `${point.runName}, ${formatDay(point.at)}: worm amplitude ${arcsec(point.wormAmplitudeArcsec)}, peak to peak ${arcsec(point.peakToPeakArcsec)}`
+            return (
+              <Link
+                key={point.analysisId}
+                href={`/projects/${projectId}/analyses/${point.analysisId}`}
+                aria-label={text}
+                title={text}
+                className="absolute inset-y-0 w-6 -translate-x-1/2 rounded-control pointer-coarse:w-11"
+                style={{ left: `${100 * left}%` }}
+              >
+                <span
+                  className="absolute left-1/2 size-2.5 -translate-1/2 border-2 border-steel bg-card"
+                  style={{ top: `${100 * peakToPeakTop}%` }}
+                />
+                <span
+                  className="absolute left-1/2 size-2.5 -translate-1/2 rounded-full bg-brass-fill"
+                  style={{ top: `${100 * amplitudeTop}%` }}
+                />
+              </Link>
+            )
+          })}
+        </div>
+      </div>
+      <div className="figures mt-1 ml-12 flex justify-between text-xs text-soft" aria-hidden="true">
+        <span>{formatDay(history[0].at)}</span>
+        {history.length > 1 ? <span>{formatDay(history[history.length - 1].at)}</span> : null}
+      </div>
+      <ul className="mt-3 flex flex-wrap gap-x-5 gap-y-1 text-soft">
+        <li className="flex items-center gap-2">
+          <span className="size-2.5 rounded-full bg-brass-fill" aria-hidden="true" />
+          worm amplitude
+        </li>
+        <li className="flex items-center gap-2">
+          <span className="size-2.5 border-2 border-steel bg-card" aria-hidden="true" />
+          peak to peak of the periodic part
+        </li>
+      </ul>
+    </figure>
+  )
+}

@@ -1,0 +1,215 @@
+'use client'
+
+import Link from 'next/link'
+import { FindingText } from '@/components/findings/finding-text'
+import { PageHeading } from '@/components/shell/page-heading'
+import { ButtonLink } from '@/components/ui/button'
+import { DataState } from '@/components/ui/data-state'
+import { EmptyState } from '@/components/ui/empty-state'
+import { FigureStrip } from '@/components/ui/figure-strip'
+import { FactRow, SheetSection } from '@/components/ui/sheet-section'
+import { formatDay } from '@/lib/client/dates'
+import {
+  useAnalyses,
+  useAnalysis,
+  useMembers,
+  useProject,
+  useRuns,
+  type AnalysisRow,
+  type RunRow,
+} from '@/lib/client/project-data'
+import { findingText } from '@/lib/findings/finding'
+import { runsFinding } from '@/lib/findings/list-findings'
+import { historyFinding, overviewFinding } from '@/lib/findings/overview-finding'
+import { projectHistory, type HistoryPoint } from '@/lib/findings/project-history'
+import type { Project } from '@/lib/schemas/api'
+import { overviewFiguresSchema } from '@/lib/schemas/kept-figures'
+import { formatNumber } from '@/lib/units'
+import { HistoryPicture } from './history-picture'
+import { overviewKeyFigures } from './overview-figures'
+import { wormPeriodText } from './teeth'
+
+export function OverviewScreen({ projectId }: { projectId: string }) {
+  const project = useProject(projectId)
+  const runs = useRuns(projectId)
+  const analyses = useAnalyses(projectId)
+  const data =
+    project.data && runs.data && analyses.data
+      ? { project: project.data, runs: runs.data, analyses: analyses.data }
+      : undefined
+  return (
+    <DataState
+      what="the project"
+      data={data}
+      error={project.error ?? runs.error ?? analyses.error}
+      onRetry={() => void Promise.all([project.mutate(), runs.mutate(), analyses.mutate()])}
+    >
+      {(all) => <Overview {...all} />}
+    </DataState>
+  )
+}
+
+interface OverviewProps {
+  project: Project
+  runs: RunRow[]
+  analyses: AnalysisRow[]
+}
+
+function Overview({ project, runs, analyses }: OverviewProps) {
+  const base = `/projects/${project.id}`
+  const history = projectHistory(analyses, runs)
+  const last = history.at(-1)
+  const kept = useAnalysis(project.id, last?.analysisId ?? null)
+  const figures = overviewFiguresSchema.safeParse(kept.data?.result)
+  const latest = figures.success ? figures.data : null
+  const canEdit = project.role !== 'viewer'
+  const title = overviewFinding({
+    name: project.name,
+    runCount: runs.length,
+    analysisCount: analyses.length,
+    history,
+    latest,
+  })
+  const upload = (
+    <ButtonLink href={`${base}/runs/new`} variant="primary">
+      Bring in a run
+    </ButtonLink>
+  )
+
+  return (
+    <>
+      <PageHeading
+        crumbs={[{ label: 'Projects', href: '/projects' }, { label: project.name }]}
+        title={findingText(title)}
+        actions={canEdit ? upload : null}
+      />
+      {latest?.worm && last ? (
+        <FigureStrip figures={overviewKeyFigures(latest)} label="Figures of the latest run" />
+      ) : null}
+      {runs.length === 0 ? (
+        <EmptyState title="Bring in a first recording" actions={canEdit ? upload : null}>
+          Record a star for six turns of the worm or more, {durationHint(project)}, with guiding off and no correction
+          playing. The log of your guiding or imaging program will do, as long as it is text with a time and a position.
+        </EmptyState>
+      ) : (
+        <SheetSection
+          title="History"
+          question="How has the worm behaved from run to run? The newest analysis of each run counts."
+          finding={<FindingText finding={historyFinding(history)} />}
+          aside={<HistoryTable projectId={project.id} history={history} />}
+        >
+          {history.length > 0 ? (
+            <HistoryPicture projectId={project.id} history={history} summary={findingText(historyFinding(history))} />
+          ) : (
+            <ButtonLink href={`${base}/runs`}>To the runs</ButtonLink>
+          )}
+        </SheetSection>
+      )}
+      {runs.length > 0 ? (
+        <SheetSection
+          title="Runs"
+          question="The latest recordings."
+          finding={<FindingText finding={runsFinding(runs)} />}
+          aside={<ProjectFacts project={project} />}
+        >
+          <ul>
+            {[...runs]
+              .sort((a, b) => b.createdAt.localeCompare(a.createdAt))
+              .slice(0, 5)
+              .map((run) => (
+                <li
+                  key={run.id}
+                  className="flex flex-wrap justify-between gap-x-4 border-b border-rule py-2 last:border-b-0"
+                >
+                  <Link className="link font-semibold" href={`${base}/runs/${run.id}`}>
+                    {run.name}
+                  </Link>
+                  <span className="text-sm text-soft">
+                    {run.facts.startedAt
+                      ? `recorded ${formatDay(run.facts.startedAt)}`
+                      : `brought in ${formatDay(run.createdAt)}`}
+                    {', '}
+                    {run.analysisCount === 1 ? 'one analysis' : `${run.analysisCount} analyses`}
+                  </span>
+                </li>
+              ))}
+          </ul>
+        </SheetSection>
+      ) : null}
+    </>
+  )
+}
+
+function durationHint({ driveTrain: { wheelTeeth, wormStarts } }: Project): string {
+  return wheelTeeth === null
+    ? 'most often an hour'
+    : `six times ${wormPeriodText(wheelTeeth, wormStarts)} for this mount`
+}
+
+function HistoryTable({ projectId, history }: { projectId: string; history: readonly HistoryPoint[] }) {
+  if (history.length === 0)
+    return <p className="text-sm text-soft">The figures of each analysed run will stand here.</p>
+  return (
+    <table className="w-full text-sm">
+      <caption className="pb-1 text-left font-semibold text-soft">Worm, run by run</caption>
+      <thead>
+        <tr className="border-b border-rule text-soft">
+          <th scope="col" className="py-1.5 text-left font-medium">
+            recorded
+          </th>
+          <th scope="col" className="py-1.5 pl-2 text-right font-medium">
+            ampl. ″
+          </th>
+          <th scope="col" className="py-1.5 pl-2 text-right font-medium">
+            p–p ″
+          </th>
+        </tr>
+      </thead>
+      <tbody>
+        {[...history]
+          .reverse()
+          .slice(0, 8)
+          .map((point) => (
+            <tr key={point.analysisId} className="border-b border-rule">
+              <th scope="row" className="py-1.5 text-left font-normal whitespace-nowrap">
+                <Link href={`/projects/${projectId}/analyses/${point.analysisId}`} className="hover:underline">
+                  {formatDay(point.at)}
+                </Link>
+              </th>
+              <td className="figures py-1.5 pl-2 text-right">{formatNumber(point.wormAmplitudeArcsec, 2)}</td>
+              <td className="figures py-1.5 pl-2 text-right">{formatNumber(point.peakToPeakArcsec, 1)}</td>
+            </tr>
+          ))}
+      </tbody>
+    </table>
+  )
+}
+
+function ProjectFacts({ project }: { project: Project }) {
+  const { data } = useMembers(project.id)
+  const { wheelTeeth, wormStarts, stages } = project.driveTrain
+  const base = `/projects/${project.id}`
+  return (
+    <>
+      <h3 className="text-sm font-semibold text-soft">This mount</h3>
+      <dl>
+        <FactRow name="wheel">{wheelTeeth === null ? 'unknown' : `${wheelTeeth} teeth`}</FactRow>
+        <FactRow name="worm period, by the teeth">{wormPeriodText(wheelTeeth, wormStarts)}</FactRow>
+        <FactRow name="stages before the worm">{stages.length}</FactRow>
+      </dl>
+      <p className="mt-2 text-sm">
+        <Link className="link" href={`${base}/drive`}>
+          All parts and periods
+        </Link>
+      </p>
+      <h3 className="mt-4 text-sm font-semibold text-soft">People</h3>
+      <dl>
+        {data?.members.map(({ userId, displayName, role }) => (
+          <FactRow key={userId} name={displayName}>
+            <span className="font-sans">{role}</span>
+          </FactRow>
+        ))}
+      </dl>
+    </>
+  )
+}

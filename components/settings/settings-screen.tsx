@@ -1,0 +1,54 @@
+'use client'
+
+import { PageHeading } from '@/components/shell/page-heading'
+import { DataState } from '@/components/ui/data-state'
+import { SheetSection } from '@/components/ui/sheet-section'
+import { useOpticsPresets, useProject } from '@/lib/client/project-data'
+import { capitalised, counted } from '@/lib/findings/words'
+import { NameForm } from './name-form'
+import { OpticsPresets } from './optics-presets'
+
+export function SettingsScreen({ projectId }: { projectId: string }) {
+  const project = useProject(projectId)
+  const presets = useOpticsPresets(projectId)
+  const data = project.data && presets.data ? { project: project.data, presets: presets.data.presets } : undefined
+  return (
+    <DataState
+      what="the settings"
+      data={data}
+      error={project.error ?? presets.error}
+      onRetry={() => void Promise.all([project.mutate(), presets.mutate()])}
+    >
+      {({ project: shown, presets: list }) => (
+        <>
+          <PageHeading
+            crumbs={[{ label: shown.name, href: `/projects/${projectId}` }, { label: 'Settings' }]}
+            title={
+              list.length === 0
+                ? 'No optics are kept yet, so each run asks for its image scale'
+                : `${capitalised(counted(list.length, 'set'))} of optics kept for the next run`
+            }
+          />
+          <SheetSection title="Name" question="What people around this mount call it.">
+            <NameForm
+              key={shown.version}
+              project={shown}
+              onSaved={(saved) => void project.mutate(saved, { revalidate: false })}
+            />
+          </SheetSection>
+          <SheetSection
+            title="Optics"
+            question="A telescope and camera that are used together. Their image scale turns pixels into seconds of arc; its uncertainty scales every figure alike."
+          >
+            <OpticsPresets
+              projectId={projectId}
+              presets={list}
+              canEdit={shown.role !== 'viewer'}
+              onChanged={() => void presets.mutate()}
+            />
+          </SheetSection>
+        </>
+      )}
+    </DataState>
+  )
+}

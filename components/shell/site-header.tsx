@@ -1,0 +1,40 @@
+import Link from 'next/link'
+import type { Theme } from '@/lib/client/theme-names'
+import { Mark } from './mark'
+import { SiteNav } from './site-nav'
+import { ThemeSwitch } from './theme-switch'
+
+interface SiteHeaderProps {
+  user: { displayName: string } | null
+  serverTheme?: Theme
+}
+
+export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
+  return (
+    <header className="no-print border-b border-rule bg-card">
+      <div className="mx-auto flex max-w-[1680px] flex-wrap items-center gap-x-7 gap-y-2 px-8 py-2.5 max-sm:px-4">
+        <Link href="/" className="flex items-center gap-2.5 rounded-control text-finding font-semibold">
+          <Mark className="size-7" />
+          Turnwright
+        </Link>
+        <SiteNav isSignedIn={user !== null} />
+        <div className="ml-auto flex items-center gap-4 max-sm:gap-3">
+          <ThemeSwitch serverTheme={serverTheme} />
+          {user ? (
+            <Link
+              href="/account"
+              className="max-w-40 truncate text-soft hover:text-ink pointer-coarse:py-2.5"
+              title="Your account"
+            >
+              {user.displayName}
+            </Link>
+          ) : (
+            <Link href="/sign-in" className="whitespace-nowrap text-soft hover:text-ink pointer-coarse:py-2.5">
+              Sign in
+            </Link>
+          )}
+        </div>
+      </div>
+    </header>
+  )
+}

@@ -1,0 +1,35 @@
+'use client'
+
+import Link from 'next/link'
+import { usePathname } from 'next/navigation'
+import { classNames } from '@/components/ui/class-names'
+import { currentHref, navItems } from './nav-items'
+
+/** Inside a project its parts, elsewhere the ways in. On a phone the row scrolls. */
+export function SiteNav({ isSignedIn }: { isSignedIn: boolean }) {
+  const pathname = usePathname()
+  const items = navItems(pathname, isSignedIn)
+  const current = currentHref(pathname, items)
+  return (
+    <nav aria-label="Main" className="-mx-1 flex min-w-0 overflow-x-auto px-1 max-md:order-last max-md:w-full">
+      <ul className="flex gap-5">
+        {items.map(({ href, label }) => (
+          <li key={href}>
+            <Link
+              href={href}
+              aria-current={href === current ? 'page' : undefined}
+              className={classNames(
+                'block border-b-2 px-0.5 py-1 whitespace-nowrap -outline-offset-2 pointer-coarse:py-2.5',
+                href === current
+                  ? 'border-brass-fill font-semibold text-ink'
+                  : 'border-transparent text-soft hover:text-ink',
+              )}
+            >
+              {label}
+            </Link>
+          </li>
+        ))}
+      </ul>
+    </nav>
+  )
+}

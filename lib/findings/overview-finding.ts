@@ -1,0 +1,37 @@
+import type { OverviewFigures } from '@/lib/schemas/kept-figures'
+import { formatEstimate } from '@/lib/units'
+import { finding, worm, type Finding } from './finding'
+import type { HistoryPoint } from './project-history'
+import { arcsec, capitalised, counted } from './words'
+
+interface OverviewState {
+  name: string
+  runCount: number
+  analysisCount: number
+  history: readonly HistoryPoint[]
+  /** Figures of the last point of the history, once they are there. */
+  latest: OverviewFigures | null
+}
+
+/** The sentence over a project: what its worm does now. */
+export function overviewFinding({ name, runCount, analysisCount, history, latest }: OverviewState): Finding {
+  if (runCount === 0) return finding`${name} has no recording yet`
+  if (analysisCount === 0) {
+    return finding`${capitalised(counted(runCount, 'run'))} of ${name} ${runCount === 1 ? 'waits' : 'wait'} for a first analysis`
+  }
+  const last = history.at(-1)
+  if (!last) return finding`None of the analyses of ${name} has a figure for the worm yet`
+  const swing = latest?.worm
+    ? formatEstimate(latest.worm.peakToPeakArcsec, { unit: '″' })
+    : arcsec(last.peakToPeakArcsec)
+  return finding`The worm swings the axis ${worm(swing)} peak to peak in the latest analysed run`
+}
+
+/** The sentence over the history; it states the figures and leaves the verdict to a comparison. */
+export function historyFinding(history: readonly HistoryPoint[]): Finding {
+  const [first, last] = [history.at(0), history.at(-1)]
+  if (!first || !last) return finding`There is no history yet: save an analysis of a run to begin it.`
+  if (history.length === 1)
+    return finding`One analysed run so far; the history begins with ${worm(arcsec(last.peakToPeakArcsec))} peak to peak.`
+  return finding`From the first to the last of ${counted(history.length, 'analysed run')} the peak-to-peak went from ${arcsec(first.peakToPeakArcsec)} to ${worm(arcsec(last.peakToPeakArcsec))}.`
+}
