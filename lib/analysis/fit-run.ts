@@ -1,0 +1,332 @@
+import { estimateErrors, listOscillations } from './fit-covariance'
+import type { FitErrors } from './fit-covariance'
+import { orderOf, sourceOf } from './describe-fit'
+import { fitJointlyInSteps } from './joint-fit'
+import type { JointFit } from './joint-fit'
+import { chooseModelInSteps, firstOrders } from './model-choice'
+import type { ChosenModel } from './model-choice'
+import { prewhiten } from './prewhiten'
+import type { FoundLine } from './prewhiten'
+import { highestDriftDegree, periodInterval, runLengthRule } from './sampling'
+import type {
+  AnalysisWarning,
+  Estimate,
+  Failure,
+  ModelChoice,
+  PredictedOrder,
+  Progress,
+  Reason,
+  Recipe,
+  Track,
+} from './types'
+import { warning } from './warnings'
+import { findStrongestPeriod, findSubharmonic } from './worm-start'
+
+export interface FitRunContext {
+  track: Track
+  cadenceSeconds: number
+  highestFrequencyHz: number
+  gearPeriodSeconds: number | null
+}
+
+/** What the worm's period starts from, or why there is none. */
+export interface WormStart {
+  frequencyHz: number | null
+  isFree: boolean
+  source: 'fitted' | 'gear' | 'typed'
+  reason: Reason | null
+  intervalSeconds: [number, number] | null
+  warnings: AnalysisWarning[]
+}
+
+export interface WormModel {
+  start: WormStart
+  driftDegree: number
+  orders: number[]
+  wormHz: number | null
+  choice: ModelChoice | null
+}
+
+export interface FittedRun {
+  ok: true
+  fit: JointFit
+  errors: FitErrors
+  found: FoundLine[]
+  model: WormModel
+  fittedPeriodSeconds: Estimate | null
+  warnings: AnalysisWarning[]
+}
+
+const LARGEST_HARMONIC_COUNT = 12
+const LARGEST_ORDER = 64
+
+/** The stage's progress, so that a caller can hand it on. */
+const report = (stage: Progress['stage'], fraction: number): Progress => ({ stage, fraction })
+
+/** Hands a part's steps on as progress of one stage. */
+function* during<Result>(progress: Progress, steps: Generator<unknown, Result>): Generator<Progress, Result> {
+  for (;;) {
+    const step = steps.next()
+    if (step.done) return step.value
+    yield progress
+  }
+}
+
+/**
+ * Where the worm's period comes from. Under one turn there is no worm figure; under three the period must be given (by
+ * gear or hand), else only the interval that the record allows; from three it may be free.
+ */
+export function findWormStart(context: FitRunContext, recipe: Recipe): WormStart {
+  const { track, gearPeriodSeconds } = context
+  const span = track.timeSeconds[track.timeSeconds.length - 1] - track.timeSeconds[0]
+  const warnings: AnalysisWarning[] = []
+  const none = (reason: Reason, intervalSeconds: [number, number] | null = null): WormStart => ({
+    frequencyHz: null,
+    isFree: false,
+    source: recipe.wormPeriod,
+    reason,
+    intervalSeconds,
+    warnings,
+  })
+  const held = (periodSeconds: number, source: 'gear' | 'typed'): WormStart => {
+    const turns = span / periodSeconds
+    if (turns < 1) {
+      warnings.push(warning('short-run', { turns, neededTurns: 1 }))
+      return none('short-run')
+    }
+    if (1 / periodSeconds > context.highestFrequencyHz) return none('out-of-range')
+    const start = { frequencyHz: 1 / periodSeconds, isFree: false, source, reason: null, intervalSeconds: null }
+    return { ...start, warnings }
+  }
+  if (recipe.wormPeriod === 'typed') {
+    const typed = recipe.typedPeriodSeconds
+    if (typed === null) return none('no-period')
+    return typed > 0 && Number.isFinite(typed) ? held(typed, 'typed') : none('out-of-range')
+  }
+  if (recipe.wormPeriod === 'gear') {
+    if (gearPeriodSeconds !== null) return held(gearPeriodSeconds, 'gear')
+    warnings.push(warning('gear-unknown'))
+    return none('no-period')
+  }
+  if (gearPeriodSeconds !== null) return freeNearGear(context, gearPeriodSeconds, span, held, warnings)
+
+  // Nothing is known: the strongest swing under any drift, else under a straight one for a short record.
+  const degree = recipe.driftDegree === 'auto' ? 3 : recipe.driftDegree
+  const search = { ...context, driftDegree: degree }
+  let found = findStrongestPeriod(search)
+  if (found.ok && found.frequencyHz * span < 3 && degree > 1) {
+    const straight = findStrongestPeriod({ ...search, driftDegree: 1 })
+    if (straight.ok) found = straight
+  }
+  if (!found.ok) return none(found.reason === 'singular' ? 'no-period' : found.reason)
+  const turns = found.frequencyHz * span
+  if (runLengthRule(turns) !== 'period-free') {
+    const interval = periodInterval(1 / found.frequencyHz, span)
+    warnings.push(warning('short-run', { turns, neededTurns: 3 }))
+    return none('short-run', Array.isArray(interval) ? interval : null)
+  }
+  const driftDegree = recipe.driftDegree === 'auto' ? Math.min(1, highestDriftDegree(turns)) : recipe.driftDegree
+  const factor = findSubharmonic({ ...context, driftDegree, frequencyHz: found.frequencyHz })
+  const frequencyHz = found.frequencyHz / factor
+  if (factor > 1) warnings.push(warning('sub-harmonic-taken', { factor, periodSeconds: 1 / frequencyHz }))
+  return { frequencyHz, isFree: true, source: 'fitted', reason: null, intervalSeconds: null, warnings }
+}
+
+/** A free period with a gear known: the peak within one resolution element of it, never a stronger line elsewhere. */
+function freeNearGear(
+  context: FitRunContext,
+  gearPeriodSeconds: number,
+  span: number,
+  held: (periodSeconds: number, source: 'gear') => WormStart,
+  warnings: AnalysisWarning[],
+): WormStart {
+  const gearHz = 1 / gearPeriodSeconds
+  const turns = span * gearHz
+  if (turns < 3) {
+    if (turns >= 1) warnings.push(warning('short-run', { turns, neededTurns: 3 }))
+    return held(gearPeriodSeconds, 'gear')
+  }
+  const withinHz: [number, number] = [gearHz - 0.7 / span, gearHz + 0.7 / span]
+  const near = findStrongestPeriod({ ...context, driftDegree: 1, withinHz })
+  const frequencyHz = near.ok ? near.frequencyHz : gearHz
+  return { frequencyHz, isFree: true, source: 'fitted', reason: null, intervalSeconds: null, warnings }
+}
+
+/** Drift degree and harmonics for the start; without a worm the drift alone. */
+export function* chooseWormModel(
+  context: FitRunContext,
+  recipe: Recipe,
+  start: WormStart,
+): Generator<Progress, (WormModel & { ok: true; warnings: AnalysisWarning[] }) | Failure> {
+  const { track, cadenceSeconds, highestFrequencyHz } = context
+  const { frequencyHz } = start
+  if (frequencyHz === null) {
+    const driftDegree = recipe.driftDegree === 'auto' ? 1 : recipe.driftDegree
+    return { ok: true, start, driftDegree, orders: [], wormHz: null, choice: null, warnings: [] }
+  }
+  const sampleCount = track.timeSeconds.length
+  const span = track.timeSeconds[sampleCount - 1] - track.timeSeconds[0]
+  const turns = span * frequencyHz
+  const topDegree = highestDriftDegree(turns)
+  const degrees = recipe.driftDegree === 'auto' ? [0, 1, 2, 3].filter((d) => d <= topDegree) : [recipe.driftDegree]
+  const perTurn = Math.floor(sampleCount / turns / 4)
+  const allowed = Math.max(1, Math.min(perTurn, Math.floor(highestFrequencyHz / frequencyHz), LARGEST_HARMONIC_COUNT))
+  const wanted = recipe.harmonicCount
+  const chosen: ChosenModel | Failure = yield* during(
+    report('fitting', 0.2),
+    chooseModelInSteps({
+      track,
+      cadenceSeconds,
+      worm: { frequencyHz, isFree: start.isFree },
+      lines: [],
+      highestFrequencyHz,
+      degrees,
+      largestHarmonicCount: allowed,
+      fixedHarmonicCount: wanted === 'auto' ? null : Math.min(wanted, allowed),
+    }),
+  )
+  if (!chosen.ok) return chosen
+  const warnings =
+    wanted !== 'auto' && chosen.harmonicCount < wanted
+      ? [warning('harmonics-dropped', { wanted, kept: chosen.harmonicCount })]
+      : []
+  return {
+    ok: true,
+    start,
+    driftDegree: chosen.driftDegree,
+    orders: firstOrders(chosen.harmonicCount),
+    wormHz: chosen.wormHz,
+    choice: chosen.choice,
+    warnings,
+  }
+}
+
+/** Lines beside the worm's harmonics; those locked to the worm join its orders. */
+export function* findLines(
+  context: FitRunContext,
+  recipe: Recipe,
+  model: WormModel,
+  predicted: readonly PredictedOrder[],
+): Generator<Progress, { ok: true; found: FoundLine[]; orders: number[]; warnings: AnalysisWarning[] } | Failure> {
+  if (!recipe.isLineSearchOn) return { ok: true, found: [], orders: model.orders, warnings: [] }
+  const result = yield* during(
+    report('lines', 0.45),
+    prewhiten({
+      ...context,
+      driftDegree: model.driftDegree,
+      worm: wormOf(model, model.orders),
+      chanceLevel: recipe.chanceLevel,
+    }),
+  )
+  if (!result.ok) return result
+  const warnings = result.stoppedBy === 'line-limit' ? [warning('line-limit', { count: result.lines.length })] : []
+  if (model.wormHz === null || result.lines.length === 0) {
+    return { ok: true, found: result.lines, orders: model.orders, warnings }
+  }
+  const fit = yield* during(
+    report('lines', 0.55),
+    fitJointlyInSteps(requestFor(context, model, model.orders, result.lines)),
+  )
+  const errors = fit.ok ? estimateErrors(fit, context.track.timeSeconds, context.cadenceSeconds) : fit
+  if (!fit.ok || !errors.ok) return { ok: true, found: result.lines, orders: model.orders, warnings }
+  const span = 2 * fit.time.halfSpanSeconds
+  const orders = new Set(model.orders)
+  const found = result.lines.filter((_, index) => {
+    const line = listOscillations(fit)[model.orders.length + index]
+    const order = orderOf(fit, errors, line)
+    if (order === null) return true
+    const nearest = Math.round(order.value)
+    const isLocked = Math.abs(order.value - nearest) <= 3 * (order.stderr ?? 0)
+    if (!isLocked || nearest < 1 || nearest > LARGEST_ORDER || orders.has(nearest)) return true
+    const isPredictedElsewhere = predicted.some(
+      (part) =>
+        Number.isInteger(part.order) === false && sourceOf(order, span * fit.frequencies.wormHz, [part]) !== null,
+    )
+    if (isPredictedElsewhere) return true
+    orders.add(nearest)
+    return false
+  })
+  return { ok: true, found, orders: [...orders].sort((a, b) => a - b), warnings }
+}
+
+/** The reported fit: everything together, to the last digit, with its errors; and the free period beside a held one. */
+export function* fitFinally(
+  context: FitRunContext,
+  model: WormModel,
+  orders: readonly number[],
+  lines: readonly FoundLine[],
+): Generator<Progress, FittedRun | Failure> {
+  const { track, cadenceSeconds, gearPeriodSeconds } = context
+  const warnings: AnalysisWarning[] = []
+  let found = [...lines]
+  let fit = yield* during(
+    report('fitting', 0.6),
+    fitJointlyInSteps({ ...requestFor(context, model, orders, found), isPolished: true }),
+  )
+  if (fit.ok && fit.escapedLines.length > 0) {
+    const escaped = new Set(fit.escapedLines)
+    found = found.filter((_, index) => !escaped.has(index))
+    fit = yield* during(
+      report('fitting', 0.65),
+      fitJointlyInSteps({ ...requestFor(context, model, orders, found), isPolished: true }),
+    )
+  }
+  if (!fit.ok) return fit
+  yield report('fitting', 0.75)
+  const errors = estimateErrors(fit, track.timeSeconds, cadenceSeconds)
+  if (!errors.ok) return errors
+  if (!fit.isConverged) warnings.push(warning('not-converged'))
+  const span = 2 * fit.time.halfSpanSeconds
+
+  let fittedPeriodSeconds: Estimate | null = null
+  const hasThreeTurns = model.wormHz !== null && span * model.wormHz >= 3
+  if (hasThreeTurns && !fit.isWormFree) {
+    yield report('fitting', 0.78)
+    const request = requestFor(context, model, orders, found)
+    const free = yield* during(
+      report('fitting', 0.8),
+      fitJointlyInSteps({ ...request, worm: request.worm && { ...request.worm, isFree: true }, isPolished: true }),
+    )
+    const freeErrors = free.ok ? estimateErrors(free, track.timeSeconds, cadenceSeconds) : free
+    if (free.ok && freeErrors.ok && free.isConverged) fittedPeriodSeconds = periodOf(free, freeErrors)
+  } else if (fit.isWormFree) {
+    fittedPeriodSeconds = periodOf(fit, errors)
+  }
+  if (gearPeriodSeconds !== null && fittedPeriodSeconds?.stderr) {
+    const standardErrors = Math.abs(fittedPeriodSeconds.value - gearPeriodSeconds) / fittedPeriodSeconds.stderr
+    if (standardErrors > 3) {
+      const details = { fittedSeconds: fittedPeriodSeconds.value, gearSeconds: gearPeriodSeconds, standardErrors }
+      warnings.push(warning('period-differs-from-gear', details))
+    }
+  }
+  return {
+    ok: true,
+    fit,
+    errors,
+    found,
+    model: { ...model, orders: [...orders] },
+    fittedPeriodSeconds: fit.isWormFree ? null : fittedPeriodSeconds,
+    warnings,
+  }
+}
+
+function periodOf(fit: JointFit, errors: FitErrors): Estimate {
+  const parameter = fit.coefficients.length
+  const period = 1 / fit.frequencies.wormHz
+  return { value: period, stderr: Math.sqrt(errors.reported[parameter][parameter]) * period ** 2 }
+}
+
+function wormOf(model: WormModel, orders: readonly number[]) {
+  return model.wormHz === null ? null : { orders, frequencyHz: model.wormHz, isFree: model.start.isFree }
+}
+
+function requestFor(context: FitRunContext, model: WormModel, orders: readonly number[], lines: readonly FoundLine[]) {
+  return {
+    track: context.track,
+    driftDegree: model.driftDegree,
+    worm: wormOf(model, orders),
+    lines: lines.map(({ frequencyHz }) => ({ frequencyHz, isFree: true })),
+    highestFrequencyHz: context.highestFrequencyHz,
+    isPolished: false,
+  }
+}
