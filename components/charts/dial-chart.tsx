@@ -1,0 +1,166 @@
+'use client'
+
+import { useState } from 'react'
+import type { AnalysisViews } from '@/lib/analysis/types'
+import { dialPath, dialPoint, dialRadius, dialScale } from '@/lib/figures/dial'
+import { formatNumber, wrapDegrees } from '@/lib/units'
+import { SvgPicture } from './svg-picture'
+
+const SIZE = 400
+const CENTRE = SIZE / 2
+const RIM = 160
+
+interface DialChartProps {
+  turn: NonNullable<AnalysisViews['turn']>
+  summary: string
+  senseMark: string
+  notes: readonly { number: number; angleDegrees: number }[]
+  onPick?: (angleDegrees: number) => void
+}
+
+/** Every turn round one worm angle: outward is ahead, inward behind; zero is the dotted circle. */
+export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChartProps) {
+  const [pointed, setPointed] = useState<number | null>(null)
+  const scale = dialScale(turn.curveArcsec, ...turn.turns.map(({ arcsec }) => arcsec))
+  const radius = (arcsec: number) => RIM * dialRadius(arcsec, scale)
+  const closed = [...turn.angleDegrees]
+  const index = pointed === null ? null : nearestIndex(closed, pointed)
+
+  return (
+    <div>
+      <SvgPicture
+        name="dial"
+        summary={summary}
+        table={{
+          columns: [
+            { name: 'worm_angle_degrees', values: turn.angleDegrees },
+            { name: 'fitted_arcsec', values: turn.curveArcsec },
+          ],
+        }}
+        width={SIZE}
+        height={SIZE}
+        className="mx-auto block h-auto w-full max-w-100"
+        onPoint={(place) => setPointed(place && angleAt(place))}
+        onPick={onPick ? (place) => onPick(angleAt(place)) : undefined}
+        legend={
+          <span className="figures text-xs" aria-live="off">
+            {index === null
+              ? `outward is ahead${senseMark}`
+              : `at ${formatNumber(closed[index], 0)}° ${formatNumber(turn.curveArcsec[index], 2, { isSigned: true, unit: '″' })}`}
+          </span>
+        }
+      >
+        <g transform={`translate(${CENTRE} ${CENTRE})`}>
+          <circle r={RIM + 8} className="fill-transparent" />
+          <Rim />
+          {scale.ringsArcsec.map((ring) => (
+            <circle
+              key={ring}
+              r={radius(ring)}
+              fill="none"
+              className={ring === 0 ? 'stroke-soft' : 'stroke-faint'}
+              strokeDasharray={ring === 0 ? '2.5 3' : undefined}
+            />
+          ))}
+          {turn.turns.map(({ turnNumber, angleDegrees, arcsec }) => (
+            <path
+              key={turnNumber}
+              d={dialPath(angleDegrees, arcsec, scale, RIM)}
+              fill="none"
+              className="stroke-steel opacity-75"
+              strokeWidth="0.9"
+            />
+          ))}
+          <path
+            d={dialPath(turn.angleDegrees, turn.curveArcsec, scale, RIM)}
+            fill="none"
+            className="stroke-brass"
+            strokeWidth="2.75"
+            strokeLinejoin="round"
+          />
+          {scale.ringsArcsec.map((ring) => (
+            <text
+              key={ring}
+              x={radius(ring) + (ring > 0 ? -4 : 4)}
+              y={-3}
+              textAnchor={ring > 0 ? 'end' : 'start'}
+              className="figures fill-soft"
+              fontSize="12"
+            >
+              {formatNumber(ring, decimals(ring), { isSigned: true })}
+            </text>
+          ))}
+          {notes.map((note) => (
+            <NoteMark key={note.number} {...note} />
+          ))}
+          {index === null ? null : (
+            <circle
+              cx={dialPoint(closed[index], radius(turn.curveArcsec[index])).x}
+              cy={dialPoint(closed[index], radius(turn.curveArcsec[index])).y}
+              r="5"
+              className="fill-brass-fill stroke-card"
+              strokeWidth="1.5"
+            />
+          )}
+        </g>
+      </SvgPicture>
+    </div>
+  )
+}
+
+function Rim() {
+  return (
+    <>
+      {Array.from({ length: 72 }, (_, step) => step * 5).map((angle) => {
+        const length = angle % 90 === 0 ? 9 : angle % 30 === 0 ? 9 : 4
+        const from = dialPoint(angle, RIM)
+        const to = dialPoint(angle, RIM + length)
+        return <line key={angle} x1={from.x} y1={from.y} x2={to.x} y2={to.y} className="stroke-soft" />
+      })}
+      <g className="figures fill-soft" fontSize="12">
+        <text y={-RIM - 15} textAnchor="middle">
+          0°
+        </text>
+        <text x={RIM + 13} y="4">
+          90°
+        </text>
+        <text y={RIM + 25} textAnchor="middle">
+          180°
+        </text>
+        <text x={-RIM - 13} y="4" textAnchor="end">
+          270°
+        </text>
+      </g>
+    </>
+  )
+}
+
+function NoteMark({ number, angleDegrees }: { number: number; angleDegrees: number }) {
+  const from = dialPoint(angleDegrees, 0.2 * RIM)
+  const to = dialPoint(angleDegrees, RIM - 10)
+  return (
+    <g>
+      <line x1={from.x} y1={from.y} x2={to.x} y2={to.y} className="stroke-plum" strokeWidth="1.5" />
+      <rect x={to.x - 8} y={to.y - 8} width="16" height="16" rx="3" className="fill-plum" />
+      <text x={to.x} y={to.y + 4} textAnchor="middle" fontSize="11" className="figures fill-card">
+        {number}
+      </text>
+    </g>
+  )
+}
+
+function angleAt({ x, y }: { x: number; y: number }): number {
+  return wrapDegrees((Math.atan2(x - CENTRE, CENTRE - y) * 180) / Math.PI)
+}
+
+function nearestIndex(angles: readonly number[], angle: number): number {
+  let best = 0
+  angles.forEach((each, index) => {
+    if (Math.abs(each - angle) < Math.abs(angles[best] - angle)) best = index
+  })
+  return best
+}
+
+function decimals(ring: number): number {
+  return ring === 0 || Math.abs(ring) >= 1 ? 0 : Math.ceil(-Math.log10(Math.abs(ring)))
+}

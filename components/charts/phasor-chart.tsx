@@ -1,0 +1,118 @@
+'use client'
+
+import type { HarmonicResult } from '@/lib/analysis/types'
+import { errorEllipse } from '@/lib/figures/error-ellipse'
+import { harmonicName } from '@/lib/findings/words'
+import { formatEstimate, formatNumber } from '@/lib/units'
+import { SvgPicture } from './svg-picture'
+
+const CELL = 216
+const HEIGHT = 262
+const RIM = 76
+const COLUMNS = 4
+
+/** One small picture a harmonic: size and phase as a dot, and the ellipse in which 95 of 100 repeats would fall. */
+export function PhasorChart({
+  harmonics,
+  summary,
+  columns = COLUMNS,
+}: {
+  harmonics: readonly HarmonicResult[]
+  summary: string
+  columns?: number
+}) {
+  const across = Math.min(columns, Math.max(1, harmonics.length))
+  const down = Math.ceil(harmonics.length / across)
+  return (
+    <SvgPicture
+      name="harmonics"
+      summary={summary}
+      width={across * CELL}
+      height={down * HEIGHT}
+      className="mx-auto block h-auto w-full"
+      table={{
+        columns: [
+          { name: 'order', values: harmonics.map(({ order }) => order) },
+          { name: 'amplitude_arcsec', values: harmonics.map(({ amplitudeArcsec }) => amplitudeArcsec.value) },
+          {
+            name: 'amplitude_stderr_arcsec',
+            values: harmonics.map(({ amplitudeArcsec }) => amplitudeArcsec.stderr ?? NaN),
+          },
+          { name: 'phase_degrees', values: harmonics.map(({ phaseDegrees }) => phaseDegrees.value) },
+          { name: 'phase_stderr_degrees', values: harmonics.map(({ phaseDegrees }) => phaseDegrees.stderr ?? NaN) },
+          { name: 'cos_arcsec', values: harmonics.map(({ cosArcsec }) => cosArcsec) },
+          { name: 'sin_arcsec', values: harmonics.map(({ sinArcsec }) => sinArcsec) },
+        ],
+      }}
+    >
+      {harmonics.map((harmonic, index) => (
+        <g
+          key={harmonic.order}
+          transform={`translate(${(index % across) * CELL + CELL / 2} ${Math.floor(index / across) * HEIGHT + 106})`}
+        >
+          <Phasor harmonic={harmonic} />
+        </g>
+      ))}
+    </SvgPicture>
+  )
+}
+
+function Phasor({ harmonic }: { harmonic: HarmonicResult }) {
+  const { order, cosArcsec, sinArcsec, covarianceArcsec2, amplitudeArcsec, phaseDegrees, isPhaseMeaningful } = harmonic
+  const amplitude = Math.hypot(cosArcsec, sinArcsec)
+  const ellipse = errorEllipse(covarianceArcsec2)
+  // The dot lies on the rim, unless the ellipse would leave the picture.
+  const rimArcsec = Math.max(amplitude, ellipse.major * 0.72, 1e-9)
+  const scale = RIM / rimArcsec
+  const x = cosArcsec * scale
+  const y = -sinArcsec * scale
+  return (
+    <>
+      <title>
+        {`${harmonicName(order)}: ${formatEstimate(amplitudeArcsec, { unit: '″' })}, ${isPhaseMeaningful ? `at ${formatEstimate(phaseDegrees, { unit: '°' })}` : 'phase unknown'}`}
+      </title>
+      <rect x={-CELL / 2} y={-104} width={CELL} height={HEIGHT} className="fill-transparent" />
+      <circle r={RIM} fill="none" className="stroke-faint" />
+      <circle r={RIM / 2} fill="none" className="stroke-faint" />
+      <path
+        d={`M${-RIM - 20} 0H${RIM + 20}M0 ${-RIM - 20}V${RIM + 20}`}
+        className="stroke-soft"
+        strokeDasharray="2 3"
+      />
+      <ellipse
+        rx={Math.max(ellipse.major * scale, 1)}
+        ry={Math.max(ellipse.minor * scale, 1)}
+        transform={`translate(${x} ${y}) rotate(${-ellipse.angleDegrees})`}
+        className="fill-brass-fill opacity-40"
+      />
+      <line
+        x1="0"
+        y1="0"
+        x2={x}
+        y2={y}
+        className={isPhaseMeaningful ? 'stroke-brass' : 'stroke-steel'}
+        strokeWidth="1.75"
+        strokeDasharray={isPhaseMeaningful ? undefined : '4 3'}
+      />
+      <circle
+        cx={x}
+        cy={y}
+        r="4"
+        className={isPhaseMeaningful ? 'fill-brass' : 'fill-card stroke-steel'}
+        strokeWidth="1.5"
+      />
+      <text
+        y={RIM + 44}
+        textAnchor="middle"
+        fontSize="13"
+        fontWeight="600"
+        className={isPhaseMeaningful ? 'fill-brass' : 'fill-soft'}
+      >
+        {harmonicName(order)}
+      </text>
+      <text y={RIM + 63} textAnchor="middle" fontSize="12.5" className="figures fill-soft">
+        {isPhaseMeaningful ? `rim ${formatNumber(rimArcsec, rimArcsec < 0.1 ? 3 : 2)}″` : 'not certain'}
+      </text>
+    </>
+  )
+}

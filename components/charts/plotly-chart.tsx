@@ -1,0 +1,130 @@
+'use client'
+
+import { useEffect, useMemo, useRef, useState, type ReactNode } from 'react'
+import type { ChartColors } from '@/lib/figures/chart-colors'
+import type { Figure, FigureFrame } from '@/lib/figures/figure'
+import { loadedPlotly, loadPlotly, type PlotlyParts } from './load-plotly'
+import { Picture, type SvgPicture } from './picture'
+import { useAxisDrag } from './use-axis-drag'
+import { useChartColors } from './use-chart-colors'
+import { useWidth } from './use-width'
+import './plotly-chart.css'
+
+const CONFIG = { displayModeBar: false, showTips: false, scrollZoom: false, doubleClick: false, responsive: false }
+
+export interface PlotlyChartProps {
+  /** For file names: “track”. */
+  name: string
+  /** The picture in words, for those who do not see it. */
+  summary: string
+  /** Makes the figure for a width, the colours of the theme and the part of the axis that is shown. */
+  makeFigure: (frame: FigureFrame) => Figure
+  legend?: ReactNode
+  /** Height to keep free while the drawing is loaded. */
+  heightPx: number
+  /** A stretch of the x axis was selected; `zoomIn` shows it alone. Without this a drag zooms at once. */
+  onSelect?: (range: [number, number], zoomIn: () => void) => void
+  /** A place on the x axis was clicked. */
+  onPick?: (value: number) => void
+  /** Shown below the picture: what to do with the selection. */
+  children?: ReactNode
+}
+
+/** The one place where Plotly draws: client only, `scatter` traces, no buttons or colours but ours. */
+export function PlotlyChart({
+  name,
+  summary,
+  makeFigure,
+  legend,
+  heightPx,
+  onSelect,
+  onPick,
+  children,
+}: PlotlyChartProps) {
+  const holder = useRef<HTMLDivElement>(null)
+  const widthPx = useWidth(holder)
+  const colors = useChartColors()
+  const [zoom, setZoom] = useState<[number, number] | null>(null)
+  const { parts, fault } = usePlotly()
+  const figure = useMemo(
+    () => makeFigure({ widthPx: Math.max(widthPx, 240), colors, zoom }),
+    [makeFigure, widthPx, colors, zoom],
+  )
+  const drag = useAxisDrag({
+    axis: figure.x,
+    onSelect: (range) => (onSelect ? onSelect(range, () => setZoom(range)) : setZoom(range)),
+    onPick,
+  })
+  const toSvg = parts ? () => drawSvg(parts, figure, colors) : null
+
+  return (
+    <Picture
+      name={name}
+      legend={legend}
+      table={figure.table}
+      toSvg={toSvg}
+      actions={
+        zoom ? (
+          <button
+            type="button"
+            onClick={() => setZoom(null)}
+            className="mr-2 rounded-control border border-rule px-2 py-0.5 text-ink hover:bg-faint pointer-coarse:min-h-11"
+          >
+            Show all of it
+          </button>
+        ) : null
+      }
+    >
+      <div
+        ref={holder}
+        role="img"
+        aria-label={summary}
+        aria-busy={parts === null}
+        className="plotly-chart relative touch-pan-y select-none"
+        style={{ minHeight: heightPx }}
+        onDoubleClick={() => setZoom(null)}
+        {...drag.handlers}
+      >
+        {parts && widthPx > 0 ? (
+          <parts.Plot data={figure.data} layout={figure.layout} config={CONFIG} style={{ width: widthPx }} />
+        ) : null}
+        {fault ? (
+          <p className="pt-8 text-soft">The drawing could not be loaded. Reload the page to try again.</p>
+        ) : null}
+        {drag.band ? (
+          <div
+            className="pointer-events-none absolute top-8 bottom-10 border-x border-brass bg-brass-fill opacity-30"
+            style={{ left: drag.band.leftPx, width: drag.band.widthPx }}
+          />
+        ) : null}
+      </div>
+      {children}
+    </Picture>
+  )
+}
+
+function usePlotly(): { parts: PlotlyParts | null; fault: boolean } {
+  const [parts, setParts] = useState<PlotlyParts | null>(null)
+  const [fault, setFault] = useState(false)
+  useEffect(() => {
+    let isGone = false
+    const ready = loadedPlotly()
+    const loading = ready ? Promise.resolve(ready) : loadPlotly()
+    loading.then(
+      (loaded) => !isGone && setParts(loaded),
+      () => !isGone && setFault(true),
+    )
+    return () => {
+      isGone = true
+    }
+  }, [])
+  return { parts, fault }
+}
+
+async function drawSvg(parts: PlotlyParts, figure: Figure, colors: ChartColors): Promise<SvgPicture> {
+  const width = figure.layout.width ?? 800
+  const height = figure.layout.height ?? 300
+  const layout = { ...figure.layout, paper_bgcolor: colors.card }
+  const url = await parts.toImage({ data: figure.data, layout }, { format: 'svg', width, height })
+  return { svg: decodeURIComponent(url.slice(url.indexOf(',') + 1)), width, height }
+}

@@ -1,0 +1,38 @@
+import type { SpanResult } from '@/lib/analysis/types'
+import { arcsec } from '@/lib/findings/words'
+
+interface SpanRow {
+  name: string
+  arcsec: number
+  look: string
+}
+
+/** What the raw track spans, and what is left of it as one part after another is taken away. */
+export function SpanChart({ spans, summary }: { spans: SpanResult; summary: string }) {
+  const rows: SpanRow[] = [
+    { name: 'raw track', arcsec: spans.rawArcsec, look: 'bg-steel opacity-50' },
+    { name: 'drift taken away', arcsec: spans.afterDriftArcsec, look: 'bg-steel opacity-50' },
+    { name: 'worm taken away too', arcsec: spans.afterWormArcsec, look: 'bg-brass-fill' },
+    { name: 'other lines too', arcsec: spans.afterLinesArcsec, look: 'bg-verdigris' },
+  ]
+  const longest = Math.max(...rows.map((row) => row.arcsec), 1e-9)
+  return (
+    <dl
+      aria-label={summary}
+      className="grid grid-cols-[max-content_minmax(0,1fr)] items-center gap-x-6 gap-y-2.5 max-sm:gap-x-3"
+    >
+      {rows.map((row) => (
+        <div key={row.name} className="col-span-2 grid grid-cols-subgrid items-center">
+          <dt className="max-sm:text-sm">{row.name}</dt>
+          <dd className="flex items-center gap-2.5">
+            <span
+              className={`block h-4.5 rounded-[2px] ${row.look}`}
+              style={{ width: `${(82 * row.arcsec) / longest}%` }}
+            />
+            <span className="figures">{arcsec(row.arcsec)}</span>
+          </dd>
+        </div>
+      ))}
+    </dl>
+  )
+}
