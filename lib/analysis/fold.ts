@@ -240,7 +240,7 @@ export function foldTurns(input: FoldInput, orders: readonly number[]): TurnResu
   const { timeSeconds, values, periodSeconds } = input
   const turns = (timeSeconds[timeSeconds.length - 1] - timeSeconds[0]) / periodSeconds
   if (!(turns >= 1)) return failure('short-run', { needed: 1, got: Math.floor(turns) })
-  const explained = explainByPhase(foldPhases(input), values, binCountFor(periodSeconds / medianCadence(timeSeconds)))
+  const explained = explainByPhase(foldPhases(input), values, binCountFor(values.length / turns))
   if ('ok' in explained) return explained
   const repeatability = Math.min(1, Math.max(0, explained.adjustedShare))
   const leftOut = leaveOneTurnOut(input, orders)
