@@ -1,6 +1,7 @@
 import { SIDEREAL_RATE_ARCSEC_PER_SECOND } from './constants'
 import { describeOscillation, listOscillations, propagate } from './fit-covariance'
 import type { FitErrors, FitOscillation } from './fit-covariance'
+import { matchOrder } from './gear-train'
 import { curveExtrema, curveRms, steepestPoint } from './harmonic-curve'
 import type { JointFit } from './joint-fit'
 import type { FoundLine } from './prewhiten'
@@ -172,7 +173,7 @@ export function describeLines(
       },
       falseAlarmProbability: found[index]?.falseAlarmProbability ?? 1,
       signalToNoise: found[index]?.signalToNoise ?? 0,
-      source: order === null ? null : sourceOf(order, span * fit.frequencies.wormHz, predicted),
+      source: order === null ? null : (matchOrder(order, predicted, 1 / (span * fit.frequencies.wormHz))?.name ?? null),
       isUnresolved: nearest < 1 / span,
     }
   })
@@ -187,17 +188,6 @@ export function orderOf(fit: JointFit, errors: FitErrors, line: FitOscillation):
   const wormParameter = listOscillations(fit)[0].frequencyParameter
   if (wormParameter !== null) gradient[wormParameter] = -line.frequencyHz / wormHz ** 2
   return { value: line.frequencyHz / wormHz, stderr: propagate(gradient, errors.reported) }
-}
-
-/** The predicted part whose order lies nearest within max(3 standard errors, half a resolution element). */
-export function sourceOf(order: Estimate, turns: number, predicted: readonly PredictedOrder[]): string | null {
-  const tolerance = Math.max(3 * (order.stderr ?? 0), 0.5 / turns)
-  let best: PredictedOrder | null = null
-  for (const part of predicted) {
-    const distance = Math.abs(part.order - order.value)
-    if (distance <= tolerance && (best === null || distance < Math.abs(best.order - order.value))) best = part
-  }
-  return best?.name ?? null
 }
 
 function scale(value: number | null, factor: number): number | null {

@@ -1,6 +1,7 @@
 import { estimateErrors, listOscillations } from './fit-covariance'
 import type { FitErrors } from './fit-covariance'
-import { orderOf, sourceOf } from './describe-fit'
+import { orderOf } from './describe-fit'
+import { matchOrder } from './gear-train'
 import { fitJointlyInSteps } from './joint-fit'
 import type { JointFit } from './joint-fit'
 import { chooseModelInSteps, firstOrders } from './model-choice'
@@ -238,10 +239,8 @@ export function* findLines(
     const nearest = Math.round(order.value)
     const isLocked = Math.abs(order.value - nearest) <= 3 * (order.stderr ?? 0)
     if (!isLocked || nearest < 1 || nearest > LARGEST_ORDER || orders.has(nearest)) return true
-    const isPredictedElsewhere = predicted.some(
-      (part) =>
-        Number.isInteger(part.order) === false && sourceOf(order, span * fit.frequencies.wormHz, [part]) !== null,
-    )
+    const part = matchOrder(order, predicted, 1 / (span * fit.frequencies.wormHz))
+    const isPredictedElsewhere = part !== null && !Number.isInteger(part.order)
     if (isPredictedElsewhere) return true
     orders.add(nearest)
     return false

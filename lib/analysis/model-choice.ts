@@ -82,6 +82,9 @@ export function* chooseModelInSteps(request: ModelChoiceRequest): Generator<void
   const richestCount = richest.shape.wormOrders.length
   const highestCount = fixedHarmonicCount ?? Math.min(richestCount, standingOrders(richest, request, corrected) + 2)
 
+  // Below this a residual is the rounding of the arithmetic and no evidence.
+  const largestValue = track.raArcsec.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
+  const smallestRss = Math.max(sampleCount * (1e-12 * largestValue) ** 2, Number.MIN_VALUE)
   const search = prepareSearch(request, richest)
   const candidates: (ModelCandidate & { wormHz: number; rss: number; parameterCount: number })[] = []
   let wormHz = richest.frequencies.wormHz
