@@ -27,6 +27,9 @@ export const errorAnswerSchema = z.object({
     changedBy: z.string().optional(),
     changedAt: instant.optional(),
     current: z.unknown().optional(),
+    /** With a file that can't be read: where its fault lies. */
+    row: z.number().int().nullable().optional(),
+    column: z.string().nullable().optional(),
   }),
 })
 
@@ -39,7 +42,10 @@ export const signUpSchema = z.object({
   password: z.string().min(10, { error: 'At least 10 characters' }).max(200),
 })
 /** POST /api/auth/sign-in → 200 meSchema; 401 `wrong-credentials`. POST /api/auth/sign-out → 204. */
-export const signInSchema = z.object({ email: z.email({ error: 'This is not an e-mail address' }), password: z.string().min(1) })
+export const signInSchema = z.object({
+  email: z.email({ error: 'This is not an e-mail address' }),
+  password: z.string().min(1),
+})
 
 /** GET /api/me → 200; user is null without a session. */
 export const meSchema = z.object({
@@ -162,7 +168,10 @@ export const analysisSummarySchema = z.object({
 })
 export const analysisSchema = analysisSummarySchema.extend({ recipe: recipeSchema, result: analysisResultSchema })
 export type Analysis = z.infer<typeof analysisSchema>
-export const analysisListSchema = z.object({ analyses: z.array(analysisSummarySchema), nextCursor: z.string().nullable() })
+export const analysisListSchema = z.object({
+  analyses: z.array(analysisSummarySchema),
+  nextCursor: z.string().nullable(),
+})
 /** A saved recipe or result never changes; a changed recipe is a new analysis. Only the name does. */
 export const analysisChangeSchema = z.object({ version, name })
 

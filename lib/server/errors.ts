@@ -1,6 +1,21 @@
 import 'server-only'
 import { ZodError } from 'zod'
 import { Refusal } from '@/db/queries/refusal'
+import type { ImportFault } from '@/lib/formats/types'
+
+/** A file that can't be read is answered with its fault's own code. */
+const FILE_FAULT_STATUS = {
+  empty: 422,
+  binary: 422,
+  'no-columns': 422,
+  'column-missing': 422,
+  'not-a-number': 422,
+  'bad-time': 422,
+  'time-goes-back': 422,
+  'few-rows': 422,
+  constant: 422,
+  'too-many-faults': 422,
+} as const satisfies Record<Exclude<ImportFault['code'], 'too-large'>, number>
 
 /** Every code that a handler may answer with, and its HTTP status. */
 export const STATUS = {
@@ -18,10 +33,10 @@ export const STATUS = {
   'upload-incomplete': 400,
   'too-large': 413,
   'not-valid': 422,
-  'unreadable-file': 422,
   'no-table': 422,
   'sense-not-confirmed': 422,
   'too-many-attempts': 429,
+  ...FILE_FAULT_STATUS,
   unknown: 500,
   busy: 503,
 } as const
@@ -33,8 +48,9 @@ export interface ErrorDetails {
   changedBy?: string
   changedAt?: string
   current?: unknown
-  /** Where the fault of a file lies, and of which kind it is. */
-  fault?: { code: string; row: number | null; column: string | null }
+  /** Where the fault of a file lies. */
+  row?: number | null
+  column?: string | null
   retryAfterSeconds?: number
 }
 
@@ -52,6 +68,10 @@ export class AppError extends Error {
 
 export function notSignedIn(): AppError {
   return new AppError('not-signed-in', 'Sign in first')
+}
+
+export function unreadableFile({ code, message, row, column }: ImportFault): AppError {
+  return new AppError(code, message, { row, column })
 }
 
 /** Gives known refusals the one form that is answered; undefined for what nobody foresaw. */

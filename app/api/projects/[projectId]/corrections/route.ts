@@ -1,0 +1,18 @@
+import { correctionListSchema, correctionSchema, newCorrectionSchema } from '@/lib/schemas/api'
+import { loadCorrections } from '@/lib/server/load-analyses'
+import { makeCorrection } from '@/lib/server/make-correction'
+import { answer, pageOf, readJson, respondInProject, type RouteContext } from '@/lib/server/respond'
+
+type Context = RouteContext<'projectId'>
+
+export function GET(request: Request, context: Context) {
+  return respondInProject({ request, context, right: 'read' }, async ({ access }) =>
+    answer(correctionListSchema, await loadCorrections(access, pageOf(request))),
+  )
+}
+
+export function POST(request: Request, context: Context) {
+  return respondInProject({ request, context, right: 'edit' }, async ({ access }) =>
+    answer(correctionSchema, await makeCorrection(access, await readJson(request, newCorrectionSchema)), 201),
+  )
+}

@@ -1,0 +1,139 @@
+import { sql, type Kysely, type Transaction } from 'kysely'
+import type { z } from 'zod'
+import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
+import type { analysisResultSchema } from '@/lib/schemas/api'
+import type { Database } from '../schema'
+import type { ProjectAccess } from './access'
+import { changedMeanwhile } from './changed-meanwhile'
+import { decodeCursor, pageSize, toPage, type PageRequest } from './page'
+import { Refusal, unknownThing } from './refusal'
+
+function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
+  return db
+    .selectFrom('analyses')
+    .innerJoin('runs', 'runs.id', 'analyses.runId')
+    .innerJoin('users', 'users.id', 'analyses.createdBy')
+    .where('analyses.projectId', '=', access.projectId)
+    .select([
+      'analyses.id',
+      'analyses.version',
+      'analyses.projectId',
+      'analyses.runId',
+      'runs.name as runName',
+      'analyses.name',
+      'analyses.engineVersion',
+      'analyses.samplesSha256',
+      'analyses.wormPeriodSeconds',
+      'analyses.wormAmplitudeArcsec',
+      'analyses.peakToPeakArcsec',
+      'analyses.createdAt',
+      'analyses.updatedAt',
+      'users.displayName as createdBy',
+    ])
+}
+
+/** Newest first, without recipes and results; of one run when it is named. */
+export async function listAnalyses(
+  db: Kysely<Database>,
+  access: ProjectAccess,
+  { runId, ...page }: PageRequest & { runId?: string },
+) {
+  const size = pageSize(page.limit)
+  const place = page.cursor ? decodeCursor(page.cursor) : null
+  let query = summariesOf(db, access)
+    .orderBy('analyses.createdAt', 'desc')
+    .orderBy('analyses.id', 'desc')
+    .limit(size + 1)
+  if (runId) query = query.where('analyses.runId', '=', runId)
+  if (place) {
+    query = query.where((eb) => eb(eb.refTuple('analyses.createdAt', 'analyses.id'), '<', eb.tuple(place.at, place.id)))
+  }
+  const { rows, nextCursor } = toPage(await query.execute(), size, ({ createdAt, id }) => ({ at: createdAt, id }))
+  return { analyses: rows, nextCursor }
+}
+
+export async function findAnalysis(db: Kysely<Database>, access: ProjectAccess, analysisId: string) {
+  const analysis = await summariesOf(db, access)
+    .select(['analyses.recipe', 'analyses.result'])
+    .where('analyses.id', '=', analysisId)
+    .executeTakeFirst()
+  if (!analysis) throw unknownThing('analysis')
+  return analysis
+}
+
+export interface NewAnalysis {
+  runId: string
+  name: string
+  recipe: Recipe
+  /** As it was shown; kept whole. */
+  result: z.infer<typeof analysisResultSchema>
+  samplesSha256: string
+  /** The result's worm figures, for lists. */
+  worm: AnalysisResult['worm']
+}
+
+export async function insertAnalysis(trx: Transaction<Database>, access: ProjectAccess<'edit'>, fields: NewAnalysis) {
+  const { runId, name, recipe, result, samplesSha256, worm } = fields
+  const { id } = await trx
+    .insertInto('analyses')
+    .values({
+      projectId: access.projectId,
+      runId,
+      name,
+      engineVersion: result.engineVersion,
+      samplesSha256,
+      recipe: JSON.stringify(recipe),
+      result: JSON.stringify(result),
+      wormPeriodSeconds: worm?.periodSeconds.value ?? null,
+      wormAmplitudeArcsec: worm?.harmonics.find(({ order }) => order === 1)?.amplitudeArcsec.value ?? null,
+      peakToPeakArcsec: worm?.peakToPeakArcsec.value ?? null,
+      createdBy: access.userId,
+      updatedBy: access.userId,
+    })
+    .returning('id')
+    .executeTakeFirstOrThrow()
+  return findAnalysis(trx, access, id)
+}
+
+export interface AnalysisChange {
+  analysisId: string
+  version: number
+  name: string
+}
+
+export async function updateAnalysisName(
+  trx: Transaction<Database>,
+  access: ProjectAccess<'edit'>,
+  { analysisId, version, name }: AnalysisChange,
+) {
+  const updated = await trx
+    .updateTable('analyses')
+    .set({ name, version: sql<number>`version + 1`, updatedAt: sql<Date>`now()`, updatedBy: access.userId })
+    .where('projectId', '=', access.projectId)
+    .where('id', '=', analysisId)
+    .where('version', '=', version)
+    .returning('id')
+    .executeTakeFirst()
+  const current = await findAnalysis(trx, access, analysisId)
+  if (updated) return current
+  throw await changedMeanwhile(trx, { table: 'analyses', id: analysisId, what: 'analysis', current })
+}
+
+/** Deletes the analysis and its notes. Refused while correction tables made from it are kept. */
+export async function deleteAnalysis(trx: Transaction<Database>, access: ProjectAccess<'edit'>, analysisId: string) {
+  const { name } = await findAnalysis(trx, access, analysisId)
+  await trx.selectFrom('analyses').select('id').where('id', '=', analysisId).forUpdate().execute()
+  const corrections = await trx
+    .selectFrom('corrections')
+    .select('name')
+    .where('analysisId', '=', analysisId)
+    .orderBy('createdAt')
+    .execute()
+  if (corrections.length > 0) {
+    const tables = corrections.map((correction) => `“${correction.name}”`).join(', ')
+    const message = `Correction tables were made from “${name}”: ${tables}. Delete them first, then the analysis.`
+    throw new Refusal({ kind: 'in-use' }, message)
+  }
+  await trx.deleteFrom('analyses').where('projectId', '=', access.projectId).where('id', '=', analysisId).execute()
+  return { name }
+}
