@@ -99,6 +99,9 @@ function slipAtShare(table: PlayedTable, included: readonly HarmonicCoefficients
   return (Math.max(0, angle) * 180) / Math.PI / leading.order
 }
 
+/** A prime, so that samples fall evenly on all parts of the bins whatever their number. */
+const SLIP_CURVE_SAMPLES = 2003
+
 /** RMS of the worm's curve that is left when the table plays with a slip, over the RMS without a table. */
 export function slipCurve(
   table: PlayedTable,
@@ -106,7 +109,7 @@ export function slipCurve(
   slipDegrees: Float64Array,
 ): { slipDegrees: Float64Array; shareLeft: Float64Array } {
   const before = Math.sqrt(all.reduce((total, { cosArcsec: a, sinArcsec: b }) => total + (a * a + b * b) / 2, 0))
-  const count = 720
+  const count = SLIP_CURVE_SAMPLES
   const curve = Float64Array.from({ length: count }, (_, i) => harmonicValue(all, (2 * Math.PI * i) / count))
   const shareLeft = slipDegrees.map((degrees) => {
     if (before === 0) return 0
