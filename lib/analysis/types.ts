@@ -51,7 +51,7 @@ export interface RunColumns {
   wormAngleDegrees: Float64Array | null
 }
 
-/** How recorded displacement becomes tracking error on the axis (handbook item 1). */
+/** How recorded displacement becomes tracking error on the axis (see convert.ts). */
 export interface Conversion {
   displacementUnit: 'px' | 'arcsec' | 'ra-seconds'
   /** Needed for px only. */
@@ -75,7 +75,7 @@ export interface ExcludedSpan {
   endSeconds: number
 }
 
-/** One stage upstream of the worm (handbook item 2). Stages are listed from the worm towards the motor. */
+/** One stage upstream of the worm (see gear-train.ts). Stages are listed from the worm towards the motor. */
 export type GearStage =
   | { kind: 'gear-pair'; name: string; drivenTeeth: number; drivingTeeth: number }
   | { kind: 'belt'; name: string; drivenTeeth: number; drivingTeeth: number; beltTeeth: number }
@@ -110,7 +110,7 @@ export interface TableSettings {
   origin: { kind: 'run-start' } | { kind: 'index-time'; timeSeconds: number } | { kind: 'worm-angle-column' }
   /** Added to the angle of every bin. */
   offsetDegrees: number
-  /** 'default': amplitude ≥ 3 standard errors and, from three turns, useful on left-out turns (handbook item 10). */
+  /** 'default': amplitude ≥ 3 standard errors and, from three turns, useful on left-out turns. */
   orders: 'default' | number[]
   /** Share of the error taken out, normally 1. */
   gain: number
@@ -247,7 +247,7 @@ export interface TurnPrediction {
 
 export interface TurnResult {
   completeTurns: number
-  /** Adjusted share of variance explained by phase (handbook item 9), 0 … 1. */
+  /** Adjusted share of variance explained by phase (Stellingwerf 1978, ApJ 224, 953), 0 … 1. */
   repeatability: number
   /** √(1 − repeatability): share of the RMS that a perfect table leaves. */
   rmsShareLeft: number
@@ -286,7 +286,7 @@ export interface RateResult {
 export interface ResidualResult {
   rmsArcsec: number
   lagOneCorrelation: number
-  /** Lag-one correlation with the fit's pull removed (handbook r_c). */
+  /** Lag-one correlation with the fit's pull removed, r_c of noise-model.ts. */
   correctedLagOneCorrelation: number
   effectiveSampleCount: number
   seeingFloorArcsec: number
@@ -370,7 +370,7 @@ export interface AnalysisResult {
   lines: LineResult[]
   predictedOrders: PredictedOrder[]
   residual: ResidualResult
-  /** Which of the handbook's estimates gave the largest, hence reported, standard error of the fundamental. */
+  /** Which estimate of noise-model.ts gave the largest, hence reported, standard error of the fundamental. */
   errorModel: ErrorModel
   turn: TurnResult | null
   spans: SpanResult
