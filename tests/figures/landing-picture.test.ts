@@ -1,4 +1,5 @@
 import { describe, expect, test } from 'vitest'
+import { samplePicture } from '@/components/landing/sample-picture'
 import { landingDial } from '@/lib/figures/landing-dial'
 
 const degrees = Float64Array.from({ length: 180 }, (_, i) => 2 * i)
@@ -45,6 +46,35 @@ describe('landingDial', () => {
     const { rings, zeroRadius } = landingDial({ angleDegrees: degrees, curveArcsec, turns: [], tableArcsec: null })
     expect(rings.map(({ label }) => label)).toEqual(['−5', '+5'])
     expect(rings[1].at - zeroRadius).toBeCloseTo(zeroRadius - rings[0].at, 9)
+  })
+})
+
+describe('the sample run on the landing page', () => {
+  test('is drawn whole: six turns, a cloud, three stray points, worm and belt and motor', async () => {
+    const { track, stems, dial, findings } = await samplePicture()
+    expect(track.turns.map(({ label }) => label)).toEqual(['turn 1', 'turn 2', 'turn 3', 'turn 4', 'turn 5', 'turn 6'])
+    expect(track.gaps).toHaveLength(1)
+    expect(track.strayPoints).toHaveLength(3)
+    // A path begins anew after the cloud; every point lies within the axes.
+    expect(track.recordedPath.match(/M/g)!.length).toBeGreaterThan(1)
+    for (const path of [track.recordedPath, track.fittedPath, track.driftPath]) {
+      for (const { x, y } of pointsOf(path)) {
+        expect(x).toBeGreaterThanOrEqual(track.plot.left - 0.1)
+        expect(x).toBeLessThanOrEqual(track.plot.right + 0.1)
+        expect(y).toBeGreaterThanOrEqual(track.plot.top)
+        expect(y).toBeLessThanOrEqual(track.plot.bottom)
+      }
+    }
+    expect(stems.stems.filter(({ kind }) => kind === 'worm')).toHaveLength(4)
+    expect(stems.stems.filter(({ kind }) => kind === 'line')).toHaveLength(2)
+    // The record ends a few seconds into the seventh turn.
+    expect(dial!.turnPaths).toHaveLength(7)
+    expect(JSON.stringify([track, stems, dial])).not.toMatch(/null|NaN/)
+    // The simulator's truth: 15.9″ of peak to peak, 0.35″ a minute of drift over 57 minutes.
+    expect(findings.track).toMatch(
+      /^In 57 minutes the worm swings the axis by 1[56]\.\d″ each turn; drift adds 0\.3[45]″ a minute\.$/,
+    )
+    expect(findings.stems).toContain('four of its harmonics and two swings of other parts')
   })
 })
 
