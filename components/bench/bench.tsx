@@ -1,0 +1,198 @@
+'use client'
+
+import { useCallback, useMemo, useState, type ReactNode } from 'react'
+import { FindingText } from '@/components/findings/finding-text'
+import { Button } from '@/components/ui/button'
+import { Card } from '@/components/ui/card'
+import { FigureStrip } from '@/components/ui/figure-strip'
+import { Notice } from '@/components/ui/notice'
+import { ProgressBar } from '@/components/ui/progress-bar'
+import type { AnalysisOutcome, AnalysisResult, Progress, Recipe } from '@/lib/analysis/types'
+import { keyFigures } from '@/lib/findings/key-figures'
+import { reasonSentence, reasonTitle } from '@/lib/findings/reason-sentence'
+import { titleFinding } from '@/lib/findings/title-finding'
+import type { Note } from '@/lib/schemas/api'
+import type { RunFacts } from '@/lib/schemas/run-facts'
+import { CorrectionStage } from './correction-stage'
+import { HarmonicsStage } from './harmonics-stage'
+import type { TableRequest } from './make-table'
+import { AddNote, NoteList, numberNotes, type NoteActions, type NoteAnchor } from './notes'
+import { SpansStage } from './spans-stage'
+import { SpectrumStage } from './spectrum-stage'
+import type { StageInput } from './stage-props'
+import { TrackStage } from './track-stage'
+import { TurnStage } from './turn-stage'
+import { useRecipeAddress } from './use-recipe-address'
+import { useRecipeHistory } from './use-recipe-history'
+
+export interface BenchProps {
+  /** The last outcome of the core; stays while the next one is computed. Null before the first. */
+  outcome: AnalysisOutcome | null
+  /** Figures as they were saved; they are shown instead of those of `outcome`, which then gives the pictures only. */
+  savedResult?: AnalysisResult | null
+  recipe: Recipe
+  onRecipeChange: (recipe: Recipe) => void
+  /** What the run or the saved analysis starts from: the address holds only what differs. The first recipe unless given. */
+  baseRecipe?: Recipe
+  /** Whether the settings are kept in the address bar. */
+  isAddressBound?: boolean
+  progress: Progress | null
+  isComputing: boolean
+  onCancel: () => void
+  runLabel: string
+  crumbs?: ReactNode
+  /** Buttons at the upper right. */
+  actions?: ReactNode
+  notes: readonly Note[]
+  onAddNote?: (anchor: NoteAnchor, text: string) => void | Promise<void>
+  onChangeNote?: (note: Note, text: string) => void | Promise<void>
+  onDeleteNote?: (note: Note) => void | Promise<void>
+  onMakeTable?: (request: TableRequest) => void | Promise<void>
+  onDownloadTable?: (format: 'csv' | 'json', request: TableRequest) => void | Promise<void>
+  hasWormAngle: boolean
+  /** Whether a correction was playing in the mount during the run; decides what kind of table may be made. */
+  mountCorrection?: RunFacts['mountCorrection']
+  /** Settings can't be changed, notes and tables not be made. */
+  isReadOnly: boolean
+}
+
+/** The worksheet: one finding over it, five key figures, then six stages from the raw track to the correction. */
+export function Bench(props: BenchProps) {
+  const { outcome, savedResult, recipe, onRecipeChange, notes, isReadOnly } = props
+  const [firstRecipe] = useState(recipe)
+  const editing = useRecipeHistory(recipe, onRecipeChange)
+  const onRead = useCallback((read: Recipe) => onRecipeChange(read), [onRecipeChange])
+  useRecipeAddress({ recipe, base: props.baseRecipe ?? firstRecipe, isOn: props.isAddressBound ?? true, onRead })
+
+  const result = savedResult ?? (outcome?.ok ? outcome.result : null)
+  const failure = !result && outcome && !outcome.ok ? outcome : null
+  const noteActions: NoteActions = useMemo(
+    () => (isReadOnly ? {} : { onAdd: props.onAddNote, onChange: props.onChangeNote, onDelete: props.onDeleteNote }),
+    [isReadOnly, props.onAddNote, props.onChangeNote, props.onDeleteNote],
+  )
+  const stage: StageInput = {
+    result,
+    views: outcome?.ok ? outcome.views : null,
+    recipe,
+    change: editing.change,
+    notes: useMemo(() => numberNotes(notes), [notes]),
+    noteActions,
+    isLocked: isReadOnly,
+  }
+
+  return (
+    <div className="mx-auto flex w-full max-w-360 flex-col gap-4 px-8 py-6 max-sm:px-3">
+      <header className="flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
+        <div className="min-w-0 max-w-[60rem]">
+          <p className="text-sm text-soft">{props.crumbs ?? props.runLabel}</p>
+          <h1 className="mt-0.5 text-title font-semibold">
+            {result ? (
+              <FindingText finding={titleFinding(result, recipe)} />
+            ) : failure ? (
+              reasonTitle(failure.reason)
+            ) : (
+              `Reading ${props.runLabel}`
+            )}
+          </h1>
+        </div>
+        <div className="no-print flex flex-wrap items-center gap-2">
+          {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
+          {props.actions}
+        </div>
+      </header>
+      {result ? <FigureStrip figures={keyFigures(result)} /> : null}
+      {failure ? (
+        <Card className="p-5">
+          <Notice tone="error" title="There is nothing to show yet">
+            {reasonSentence(failure)}
+          </Notice>
+        </Card>
+      ) : null}
+      <TrackStage {...stage} />
+      {failure ? null : (
+        <>
+          <SpectrumStage {...stage} />
+          <HarmonicsStage {...stage} />
+          <TurnStage {...stage} />
+          <SpansStage {...stage} />
+          <CorrectionStage
+            {...stage}
+            hasWormAngle={props.hasWormAngle}
+            making={{
+              mountCorrection: props.mountCorrection ?? 'unknown',
+              onMakeTable: props.onMakeTable,
+              onDownloadTable: props.onDownloadTable,
+              isReadOnly,
+            }}
+          />
+          <WholeNotes notes={notes} actions={noteActions} />
+        </>
+      )}
+      {props.isComputing ? (
+        <div className="no-print pointer-events-none sticky bottom-4 z-10 mx-auto w-full max-w-xl">
+          <Computing progress={props.progress} onCancel={props.onCancel} />
+        </div>
+      ) : null}
+    </div>
+  )
+}
+
+const PROGRESS_WORDS: Record<Progress['stage'], string> = {
+  reading: 'Reading the samples',
+  cleaning: 'Looking for gaps and stray points',
+  searching: 'Searching for the worm',
+  fitting: 'Fitting drift and harmonics together',
+  lines: 'Looking for lines beside the worm',
+  folding: 'Laying the turns over one another',
+  correcting: 'Making and rehearsing the table',
+}
+
+/** What is being computed; the bar itself waits 200 ms before it shows. */
+function Computing({ progress, onCancel }: { progress: Progress | null; onCancel: () => void }) {
+  return (
+    <div className="pointer-events-auto rounded-card border border-steel bg-card px-4 py-3 empty:hidden not-has-[[role=progressbar]]:hidden">
+      <ProgressBar
+        label={progress ? PROGRESS_WORDS[progress.stage] : 'Starting'}
+        fraction={progress?.fraction ?? null}
+        onCancel={onCancel}
+      />
+    </div>
+  )
+}
+
+function UndoButtons({ undo, redo }: { undo: (() => void) | null; redo: (() => void) | null }) {
+  return (
+    <>
+      <Button variant="quiet" disabled={!undo} title="Ctrl+Z" onClick={() => undo?.()}>
+        Undo
+      </Button>
+      <Button variant="quiet" disabled={!redo} title="Ctrl+Shift+Z" onClick={() => redo?.()}>
+        Redo
+      </Button>
+    </>
+  )
+}
+
+/** Notes that belong to no place, after the last stage. */
+function WholeNotes({ notes, actions }: { notes: readonly Note[]; actions: NoteActions }) {
+  const [isOpen, setOpen] = useState(false)
+  const whole = notes.filter(({ anchor }) => anchor.kind === 'whole').map((note) => ({ number: null, note }))
+  if (whole.length === 0 && !actions.onAdd) return null
+  return (
+    <Card aria-label="Notes on the whole analysis" className="flex flex-col gap-3 p-5 max-sm:px-4">
+      <h2 className="text-finding font-semibold">Notes on the whole analysis</h2>
+      <NoteList notes={whole} actions={actions} />
+      {actions.onAdd ? (
+        <div className="max-w-xl">
+          <AddNote
+            anchor={{ kind: 'whole' }}
+            onAdd={actions.onAdd}
+            isOpen={isOpen}
+            onOpen={() => setOpen(true)}
+            onClose={() => setOpen(false)}
+          />
+        </div>
+      ) : null}
+    </Card>
+  )
+}

@@ -1,0 +1,119 @@
+'use client'
+
+import { SpanChart } from '@/components/charts/span-chart'
+import { FindingText } from '@/components/findings/finding-text'
+import { advice } from '@/lib/findings/advice'
+import { findingText } from '@/lib/findings/finding'
+import { spansFinding } from '@/lib/findings/spans-finding'
+import { arcsec } from '@/lib/findings/words'
+import { formatDuration, formatPercent, formatSignificant } from '@/lib/units'
+import { AsideGroup, Facts, StageWarnings } from './aside'
+import { PictureSpace } from './picture-space'
+import { NumberSetting } from './setting-rows'
+import { Stage } from './stage'
+import type { StageInput } from './stage-props'
+
+export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
+  const finding = result ? spansFinding(result) : null
+  const given = result ? advice(result, recipe) : null
+  return (
+    <Stage
+      number={5}
+      title="Spans"
+      question={
+        result
+          ? `Where the ${arcsec(result.spans.rawArcsec)} of the raw track come from, one part taken away after another.`
+          : 'Where the span of the raw track comes from, one part taken away after another.'
+      }
+      isLocked={isLocked}
+      settings={
+        <>
+          <NumberSetting
+            label="Tolerance"
+            unit="″ sky"
+            min={0.01}
+            max={3600}
+            value={recipe.toleranceSkyArcsec}
+            onValue={(toleranceSkyArcsec) => change('toleranceSkyArcsec', { ...recipe, toleranceSkyArcsec })}
+          />
+          <NumberSetting
+            label="Exposure"
+            unit="s"
+            min={0.01}
+            max={36_000}
+            value={recipe.pictureExposureSeconds}
+            onValue={(pictureExposureSeconds) =>
+              change('pictureExposureSeconds', { ...recipe, pictureExposureSeconds })
+            }
+          />
+        </>
+      }
+      finding={finding}
+      aside={
+        result ? (
+          <>
+            <AsideGroup title="What that means for pictures">
+              <Facts
+                rows={[
+                  [
+                    'steepest rate',
+                    result.worm ? formatSignificant(result.rate.steepestArcsecPerSecond, 3, { unit: '″/s' }) : '–',
+                  ],
+                  [
+                    'with drift and lines',
+                    formatSignificant(result.rate.steepestWithDriftArcsecPerSecond, 3, { unit: '″/s' }),
+                  ],
+                  ['of the sidereal rate', formatSignificant(result.rate.percentOfSidereal, 2, { unit: '%' })],
+                  [
+                    'guide at least every',
+                    result.rate.longestCorrectionIntervalSeconds === null
+                      ? 'never needed'
+                      : `${formatDuration(result.rate.longestCorrectionIntervalSeconds)} for ${arcsec(recipe.toleranceSkyArcsec)}`,
+                  ],
+                  [
+                    `unguided ${formatDuration(recipe.pictureExposureSeconds)} kept`,
+                    formatPercent(result.rate.framesKeptShare),
+                  ],
+                  [
+                    'seeing floor',
+                    `${result.residual.isSeeingFloorLowerBound ? '≥ ' : ''}${arcsec(result.residual.seeingFloorArcsec)}`,
+                  ],
+                ]}
+              />
+            </AsideGroup>
+            <AsideGroup title="Spans of the parts alone">
+              <Facts
+                rows={[
+                  ['drift', arcsec(result.spans.driftArcsec)],
+                  ['worm', result.worm ? arcsec(result.spans.wormArcsec) : '–'],
+                  ['raw without the worm', arcsec(result.spans.rawWithoutWormArcsec)],
+                ]}
+              />
+            </AsideGroup>
+            <StageWarnings warnings={result.warnings} stage="spans" />
+          </>
+        ) : null
+      }
+    >
+      {result && finding ? (
+        <>
+          <SpanChart spans={result.spans} summary={findingText(finding)} />
+          {given ? (
+            <div className="mt-5 border-t border-rule pt-3">
+              <p className="max-w-[72ch] font-semibold">
+                <FindingText finding={given.sentence} />
+              </p>
+              <p className="mt-0.5 max-w-[72ch] text-sm text-soft">The rule: {lowerFirst(given.rule)}</p>
+            </div>
+          ) : null}
+        </>
+      ) : (
+        <PictureSpace heightPx={150}>The spans appear here.</PictureSpace>
+      )}
+    </Stage>
+  )
+}
+
+function lowerFirst(text: string): string {
+  return text.charAt(0).toLowerCase() + text.slice(1)
+}
