@@ -23,7 +23,7 @@ export interface TableOutcome {
 }
 
 /** Slips that the chart shows, in degrees. */
-const SLIP_DEGREES = Float64Array.from({ length: 181 }, (_, i) => i - 90)
+const SLIP_DEGREES = Float64Array.from({ length: 61 }, (_, i) => 3 * i - 90)
 
 /** The correction table of a result with its rehearsal on turns left out, and what its pictures need. */
 export function makeTable(input: {
