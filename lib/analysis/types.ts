@@ -14,14 +14,7 @@
 
 /** Why a quantity cannot be had; the same words everywhere, shown to people through lib/findings. */
 export type Reason =
-  | 'few-points'
-  | 'short-run'
-  | 'not-finite'
-  | 'not-increasing'
-  | 'singular'
-  | 'out-of-range'
-  | 'no-period'
-  | 'no-index'
+  'few-points' | 'short-run' | 'not-finite' | 'not-increasing' | 'singular' | 'out-of-range' | 'no-period' | 'no-index'
 
 export interface Failure {
   ok: false
