@@ -1,10 +1,9 @@
 import { SIDEREAL_RATE_ARCSEC_PER_SECOND } from './constants'
 import { failure } from './failure'
-import { leaveOneTurnOut, type FoldInput } from './fold'
 import { harmonicValue, shiftHarmonics } from './harmonic-curve'
 import { rehearseTable } from './rehearsal'
 import { fraction, mean, normaliseDegrees, sum } from './statistics'
-import { playAt, type PlayedTable } from './table-playback'
+import type { PlayedTable } from './table-playback'
 import type { Failure, HarmonicCoefficients, TableResult, TableSettings } from './types'
 
 export interface TableInput {
@@ -124,24 +123,6 @@ export function makeCorrectionTable(input: TableInput): TableResult | Failure {
 
 function stepsRoundTheTurn(values: Float64Array): number {
   return sum(values.map((value, j) => values[j + 1 < values.length ? j + 1 : 0] - value))
-}
-
-/**
- * Reduction of the RMS on turns that the table was not made from: for each covered turn a table is made from the
- * others and played over it. Null with fewer than three such turns.
- *
- * @param fold the track minus drift and lines, folded on the table's own origin
- */
-export function tableReductionOnLeftOutTurns(
-  fold: FoldInput,
-  orders: readonly number[],
-  settings: TableSettings,
-): number | null {
-  const leftOut = leaveOneTurnOut(fold, orders, (harmonics) => {
-    const table = playedTable(tableNodes(harmonics, settings), settings)
-    return (angle) => -playAt(table, angle / (2 * Math.PI))
-  })
-  return leftOut.ok ? leftOut.heldOutReduction : null
 }
 
 /** A column of worm angles follows time this closely (mean resultant length) or is no guide to the worm's zero. */

@@ -1,4 +1,3 @@
-import { GAP_CADENCES } from './clean'
 import { medianCadence } from './sampling'
 
 /** Samples at start + n·cadence. Cells without a sample hold 0 and are marked absent; they are never filled. */
@@ -7,7 +6,7 @@ export interface EvenGrid {
   cadenceSeconds: number
   values: Float64Array
   isPresent: Uint8Array
-  method: 'as-recorded' | 'interpolated' | 'averaged'
+  method: 'as-recorded' | 'fine' | 'averaged'
 }
 
 /** Above this many cells neighbouring samples are averaged. */
@@ -17,29 +16,37 @@ const LARGEST_GRID = 2 ** 19
 const ON_GRID_SHARE = 1e-3
 
 /**
+ * How much finer than the cadence the cells are for uneven times. A sample is at most a sixteenth of a cadence from its
+ * cell, which dims a line at the Nyquist limit by 0.6 % and slower ones by the square of their frequency less;
+ * interpolation would dim lines and noise alike by up to a half there.
+ */
+const FINE_CELLS = 8
+
+/**
  * A track on an even grid, for the picture of its spectrum only: no figure is ever taken from it. Samples that lie on
- * the grid are placed; slightly uneven ones are interpolated linearly (which dims lines near the Nyquist limit); very
- * long records are averaged cell by cell.
+ * the grid of the cadence are placed there, uneven ones into cells an eighth as wide; very long records are averaged
+ * cell by cell.
  *
  * @param timeSeconds strictly increasing, at least 2
  */
 export function toEvenGrid(timeSeconds: Float64Array, values: Float64Array, largestCount = LARGEST_GRID): EvenGrid {
   if (timeSeconds.length < 2) throw new RangeError(`timeSeconds must hold at least 2 times: got ${timeSeconds.length}`)
-  const startSeconds = timeSeconds[0]
-  const duration = timeSeconds[timeSeconds.length - 1] - startSeconds
-  const median = medianCadence(timeSeconds)
-  const steps = Math.max(1, Math.min(Math.round(duration / median), largestCount - 1))
-  // A grid that ends on the last sample does not run away from stamps that were rounded.
-  const cadenceSeconds = duration / steps
-  const grid: EvenGrid = {
-    startSeconds,
-    cadenceSeconds,
-    values: new Float64Array(steps + 1),
-    isPresent: new Uint8Array(steps + 1),
-    method: 'as-recorded',
+  const duration = timeSeconds[timeSeconds.length - 1] - timeSeconds[0]
+  const steps = Math.max(1, Math.round(duration / medianCadence(timeSeconds)))
+  const frame = (stepCount: number) => ({
+    startSeconds: timeSeconds[0],
+    // A grid that ends on the last sample does not run away from stamps that were rounded.
+    cadenceSeconds: duration / stepCount,
+    values: new Float64Array(stepCount + 1),
+    isPresent: new Uint8Array(stepCount + 1),
+  })
+  if (steps >= largestCount) {
+    return averageInto({ ...frame(largestCount - 1), method: 'averaged' }, timeSeconds, values)
   }
-  if (cadenceSeconds > 1.5 * median) return averageInto(grid, timeSeconds, values)
-  return isOnGrid(grid, timeSeconds) ? placeInto(grid, timeSeconds, values) : interpolateInto(grid, timeSeconds, values)
+  const plain: EvenGrid = { ...frame(steps), method: 'as-recorded' }
+  if (isOnGrid(plain, timeSeconds)) return averageInto(plain, timeSeconds, values)
+  const finer = Math.max(1, Math.min(FINE_CELLS, Math.floor((largestCount - 1) / steps)))
+  return averageInto({ ...frame(finer * steps), method: 'fine' }, timeSeconds, values)
 }
 
 const cellOf = (grid: EvenGrid, time: number) => Math.round((time - grid.startSeconds) / grid.cadenceSeconds)
@@ -55,15 +62,7 @@ function isOnGrid(grid: EvenGrid, timeSeconds: Float64Array): boolean {
   })
 }
 
-function placeInto(grid: EvenGrid, timeSeconds: Float64Array, values: Float64Array): EvenGrid {
-  timeSeconds.forEach((time, i) => {
-    const cell = cellOf(grid, time)
-    grid.values[cell] = values[i]
-    grid.isPresent[cell] = 1
-  })
-  return grid
-}
-
+/** Mean of the samples in each cell; one sample stands as it is. */
 function averageInto(grid: EvenGrid, timeSeconds: Float64Array, values: Float64Array): EvenGrid {
   const counts = new Uint32Array(grid.values.length)
   timeSeconds.forEach((time, i) => {
@@ -76,21 +75,5 @@ function averageInto(grid: EvenGrid, timeSeconds: Float64Array, values: Float64A
     grid.values[cell] /= count
     grid.isPresent[cell] = 1
   })
-  return { ...grid, method: 'averaged' }
-}
-
-function interpolateInto(grid: EvenGrid, timeSeconds: Float64Array, values: Float64Array): EvenGrid {
-  const longest = GAP_CADENCES * grid.cadenceSeconds
-  const lastSample = timeSeconds.length - 1
-  let i = 0
-  for (let cell = 0; cell < grid.values.length; cell++) {
-    const time = Math.min(grid.startSeconds + cell * grid.cadenceSeconds, timeSeconds[lastSample])
-    while (i < lastSample - 1 && timeSeconds[i + 1] < time) i++
-    const spacing = timeSeconds[i + 1] - timeSeconds[i]
-    const share = (time - timeSeconds[i]) / spacing
-    if (spacing > longest && share > 0 && share < 1) continue
-    grid.values[cell] = values[i] * (1 - share) + values[i + 1] * share
-    grid.isPresent[cell] = 1
-  }
-  return { ...grid, method: 'interpolated' }
+  return grid
 }

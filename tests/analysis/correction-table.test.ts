@@ -3,13 +3,16 @@ import { SIDEREAL_RATE_ARCSEC_PER_SECOND } from '@/lib/analysis/constants'
 import {
   makeCorrectionTable,
   originFromWormAngle,
+  playedTable,
   tableNodes,
   tableRates,
-  tableReductionOnLeftOutTurns,
   type TableInput,
 } from '@/lib/analysis/correction-table'
+import { leaveOneTurnOut } from '@/lib/analysis/fold'
 import { harmonicValue } from '@/lib/analysis/harmonic-curve'
+import { playAt } from '@/lib/analysis/table-playback'
 import type { TableResult, TableSettings } from '@/lib/analysis/types'
+import checks from '../reference/checks.json'
 import rehearsal from '../reference/rehearsal.json'
 import { referenceRun } from '../support/reference-run'
 
@@ -174,8 +177,8 @@ describe('originFromWormAngle', () => {
   })
 })
 
-// The table from the other turns removes as much as their harmonics do, less what bins lose (0.5 % of order 1 at 25).
-test('reduction on left-out turns of the reference run: 92.9 % by harmonics, little less by 25 bins', () => {
+// A table from the other turns removes as much as their harmonics do, less what bins lose (0.5 % of order 1 at 25).
+test('on left-out turns of the reference run: 92.9 % by harmonics, little less by 25 bins', () => {
   const run = referenceRun()
   const fold = {
     timeSeconds: run.timeSeconds,
@@ -183,10 +186,14 @@ test('reduction on left-out turns of the reference run: 92.9 % by harmonics, lit
     periodSeconds: run.periodSeconds,
     originSeconds: run.referenceSeconds,
   }
-  const fine = tableReductionOnLeftOutTurns(fold, [1, 2, 3], { ...settings, binCount: 4096 }) ?? 0
-  expect(fine).toBeCloseTo(0.9290893396, 6)
-  const coarse = tableReductionOnLeftOutTurns(fold, [1, 2, 3], settings) ?? 0
-  expect(coarse).toBeLessThan(fine)
-  expect(coarse).toBeGreaterThan(fine - 0.005)
-  expect(tableReductionOnLeftOutTurns({ ...fold, periodSeconds: 1000 }, [1], settings)).toBeNull()
+  const reduction = (binCount: number) => {
+    const outcome = leaveOneTurnOut(fold, [1, 2, 3], (harmonics) => {
+      const table = playedTable(tableNodes(harmonics, { binCount, gain: 1 }), settings)
+      return (angle) => -playAt(table, angle / (2 * Math.PI))
+    })
+    return outcome.ok ? outcome.heldOutReduction : NaN
+  }
+  expect(reduction(4096)).toBeCloseTo(checks.values['9.held_out_reduction'], 6)
+  expect(reduction(25)).toBeLessThan(reduction(4096))
+  expect(reduction(25)).toBeGreaterThan(reduction(4096) - 0.005)
 })
