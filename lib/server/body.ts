@@ -25,6 +25,11 @@ async function withinSeconds<T>(pending: Promise<T>, seconds: number): Promise<T
   }
 }
 
+/** The sender went away; nobody may be left to read this. */
+function brokenOff(): never {
+  throw new AppError('upload-incomplete', 'The connection broke off. Nothing was kept; send the file again.')
+}
+
 /** The parts of a body as they arrive. Compares what came with what Content-Length announced: a cut body is refused. */
 export async function* bodyParts(request: Request, limits: BodyLimits): AsyncGenerator<Uint8Array> {
   const { mostBytes, tooLargeMessage, idleSeconds = 30 } = limits
@@ -36,7 +41,7 @@ export async function* bodyParts(request: Request, limits: BodyLimits): AsyncGen
   try {
     if (Number(announced ?? 0) > mostBytes) throw tooLarge
     while (reader) {
-      const { done, value } = await withinSeconds(reader.read(), idleSeconds)
+      const { done, value } = await withinSeconds(reader.read().catch(brokenOff), idleSeconds)
       if (done) break
       received += value.byteLength
       if (received > mostBytes) throw tooLarge
