@@ -98,7 +98,7 @@ function CorrectionPage({ correction, projectName }: { correction: Correction; p
       <SheetSection
         number={2}
         title="What it means"
-        question="The same words stand in the downloaded file, so that the numbers are never without them."
+        question="How the numbers are to be read. The downloaded file says the same beside them."
         finding={<FindingText finding={closureFinding(table.closureError, settings.quantity)} />}
       >
         <ul className="mb-5 flex max-w-[80ch] list-disc flex-col gap-1 pl-5">

@@ -61,7 +61,6 @@ const columns: readonly DataColumn<AnalysisRow>[] = [
   {
     id: 'on',
     header: 'On',
-    isNumeric: true,
     isSecondary: true,
     value: ({ createdAt }) => createdAt,
     cell: ({ createdAt }) => formatDay(createdAt),

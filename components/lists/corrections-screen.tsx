@@ -52,7 +52,6 @@ const columns: readonly DataColumn<CorrectionRow>[] = [
   {
     id: 'on',
     header: 'On',
-    isNumeric: true,
     isSecondary: true,
     value: ({ createdAt }) => createdAt,
     cell: ({ createdAt }) => formatDay(createdAt),

@@ -45,7 +45,6 @@ const columns: readonly DataColumn<Project>[] = [
   {
     id: 'changed',
     header: 'Changed',
-    isNumeric: true,
     isSecondary: true,
     value: ({ updatedAt }) => updatedAt,
     cell: ({ updatedAt }) => formatDay(updatedAt),

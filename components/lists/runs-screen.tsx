@@ -7,7 +7,7 @@ import { DataState } from '@/components/ui/data-state'
 import { DataTable } from '@/components/ui/data-table'
 import type { DataColumn } from '@/components/ui/data-table-model'
 import { EmptyState } from '@/components/ui/empty-state'
-import { formatDay, formatMinute } from '@/lib/client/dates'
+import { formatDayAndTime } from '@/lib/client/dates'
 import { useProject, useRuns, type RunRow } from '@/lib/client/project-data'
 import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
@@ -29,10 +29,9 @@ const columns: readonly DataColumn<RunRow>[] = [
   },
   {
     id: 'started',
-    header: 'Recorded',
-    isNumeric: true,
+    header: 'Recorded, UTC',
     value: ({ facts, createdAt }) => facts.startedAt ?? createdAt,
-    cell: ({ facts }) => (facts.startedAt ? formatMinute(facts.startedAt) : 'time unknown'),
+    cell: ({ facts }) => (facts.startedAt ? formatDayAndTime(facts.startedAt) : 'time unknown'),
   },
   {
     id: 'rows',
@@ -69,14 +68,6 @@ const columns: readonly DataColumn<RunRow>[] = [
     cell: ({ byteLength }) => formatBytes(byteLength),
   },
   { id: 'by', header: 'Brought in by', isSecondary: true, value: ({ createdBy }) => createdBy },
-  {
-    id: 'on',
-    header: 'On',
-    isNumeric: true,
-    isSecondary: true,
-    value: ({ createdAt }) => createdAt,
-    cell: ({ createdAt }) => formatDay(createdAt),
-  },
 ]
 
 export function RunsScreen({ projectId }: { projectId: string }) {

@@ -21,7 +21,6 @@ const columns: readonly DataColumn<Member>[] = [
   {
     id: 'since',
     header: 'Since',
-    isNumeric: true,
     value: ({ joinedAt }) => joinedAt,
     cell: ({ joinedAt }) => formatDay(joinedAt),
   },

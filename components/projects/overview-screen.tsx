@@ -22,6 +22,7 @@ import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
 import { historyFinding, overviewFinding } from '@/lib/findings/overview-finding'
 import { projectHistory, type HistoryPoint } from '@/lib/findings/project-history'
+import { counted } from '@/lib/findings/words'
 import type { Project } from '@/lib/schemas/api'
 import { overviewFiguresSchema } from '@/lib/schemas/kept-figures'
 import { formatNumber } from '@/lib/units'
@@ -129,7 +130,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
                       ? `recorded ${formatDay(run.facts.startedAt)}`
                       : `brought in ${formatDay(run.createdAt)}`}
                     {', '}
-                    {run.analysisCount === 1 ? 'one analysis' : `${run.analysisCount} analyses`}
+                    {counted(run.analysisCount, 'analysis', 'analyses')}
                   </span>
                 </li>
               ))}

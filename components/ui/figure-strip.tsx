@@ -8,8 +8,8 @@ export interface KeyFigure {
   value: ReactNode
   /** Its standard error as text, without the ± sign. */
   uncertainty?: ReactNode
-  /** With or without the space before it. */
-  unit?: string
+  /** Text with or without the space before it; anything else stands as it is. */
+  unit?: ReactNode
   /** A word or two behind it, such as “real change”. */
   remark?: ReactNode
 }
@@ -48,7 +48,7 @@ export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'la
             {uncertainty}
           </>
         )}
-        {unit ? withSpace(unit.trimStart()) : null}
+        {typeof unit === 'string' ? withSpace(unit.trimStart()) : unit}
         {remark === undefined ? null : <span className="ml-3">{remark}</span>}
       </span>
     </span>
