@@ -1,6 +1,6 @@
 import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
 import type { newNoteSchema } from '@/lib/schemas/api'
-import type { DemoPersonKey, DemoRun } from '@/lib/simulate/demo'
+import type { DemoRun } from '@/lib/simulate/demo'
 import { HILLSIDE_BELT_ORDER } from '@/lib/simulate/hillside'
 import { defaultRecipe } from '@/lib/schemas/recipe'
 import { DEMO_DRIVE_TRAIN } from '@/lib/simulate/demo'
@@ -10,7 +10,7 @@ type Anchor = z.infer<typeof newNoteSchema>['anchor']
 
 interface DemoNote {
   runKey: string
-  author: DemoPersonKey
+  author: DemoRun['recordedBy']
   text: string
   /** Null: the figure that the note is pinned to is not in this result, so the note is left out. */
   anchor: (result: AnalysisResult) => Anchor | null

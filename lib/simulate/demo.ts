@@ -54,7 +54,8 @@ export interface DemoRun {
   key: string
   name: string
   fileName: string
-  recordedBy: DemoPersonKey
+  /** Who may edit: the owner or the editor. */
+  recordedBy: 'mira' | 'tomas'
   text: string
   importSettings: WrittenImport
   conversion: Conversion

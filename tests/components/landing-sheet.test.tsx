@@ -8,7 +8,7 @@ let picture: LandingPicture
 
 beforeAll(async () => {
   picture = await samplePicture()
-}, 30_000)
+}, 60_000)
 
 test('the findings stand in the figure as text, the drawings are kept from screen readers', () => {
   render(<LandingSheet picture={picture} />)

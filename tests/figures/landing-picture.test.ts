@@ -49,7 +49,8 @@ describe('landingDial', () => {
   })
 })
 
-describe('the sample run on the landing page', () => {
+// The whole analysis runs once: a second or two, more on a busy machine.
+describe('the sample run on the landing page', { timeout: 60_000 }, () => {
   test('is drawn whole: six turns, a cloud, three stray points, worm and belt and motor', async () => {
     const { track, stems, dial, findings } = await samplePicture()
     expect(track.turns.map(({ label }) => label)).toEqual(['turn 1', 'turn 2', 'turn 3', 'turn 4', 'turn 5', 'turn 6'])
