@@ -1,14 +1,26 @@
 import { spawn, spawnSync } from 'node:child_process'
 
+const children = new Set()
+
+/** Ends every program that `run` still waits for. */
+export function endChildren() {
+  for (const child of children) child.kill('SIGTERM')
+}
+
 /** Runs a program to its end with its output on ours; answers the exit code (1 when it could not start). */
 export function run(command, args, options = {}) {
   return new Promise((resolve) => {
     const child = spawn(command, args, { stdio: 'inherit', ...options })
+    children.add(child)
     child.on('error', (error) => {
+      children.delete(child)
       console.error(`${command}: ${error.message}`)
       resolve(1)
     })
-    child.on('exit', (code, signal) => resolve(code ?? (signal ? 1 : 0)))
+    child.on('exit', (code, signal) => {
+      children.delete(child)
+      resolve(code ?? (signal ? 1 : 0))
+    })
   })
 }
 

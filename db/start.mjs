@@ -1,0 +1,99 @@
+import { existsSync, readFileSync, rmSync } from 'node:fs'
+import { dirname, join } from 'node:path'
+import { fileURLToPath } from 'node:url'
+import { checkNodeVersion, ensureDependencies } from './local/dependencies.mjs'
+import { openOwnCluster } from './local/own-cluster.mjs'
+import { freePortFrom, isPortFree } from './local/ports.mjs'
+import { endChildren, run, SetUpError } from './local/processes.mjs'
+import { readSettings } from './local/settings.mjs'
+import { ensureBuild } from './local/sources.mjs'
+import { startWebServer } from './local/web-server.mjs'
+
+/*
+ * `npm start`, and `npm run dev` with --dev. Everything that a fresh clone lacks is fetched, made or built here, so this
+ * file and what it imports use nothing but Node.js.
+ */
+
+const root = dirname(dirname(fileURLToPath(import.meta.url)))
+const isDevelopment = process.argv.includes('--dev')
+const signInsFile = join(root, '.data', 'demo-sign-ins.json')
+
+/** What was started, in order; ended in the opposite one. */
+const started = []
+let isStopping = false
+
+async function stopAll() {
+  if (isStopping) return
+  isStopping = true
+  endChildren()
+  for (const stop of started.reverse()) await stop()
+}
+
+async function runScript(script, env) {
+  const code = await run(process.execPath, ['--import', 'tsx', script], { cwd: root, env })
+  if (code !== 0) throw new SetUpError(`${script} failed; it says why above.`)
+}
+
+async function choosePort(wanted) {
+  if (!wanted) return freePortFrom(3000)
+  if (await isPortFree(Number(wanted))) return Number(wanted)
+  throw new SetUpError(`Port ${wanted} is taken by another program. Set PORT to a free one, or leave it out.`)
+}
+
+/** Our own cluster, with the demo in it, unless DATABASE_URL names another database. */
+async function openDatabase(settings) {
+  if (settings.DATABASE_URL) return { url: settings.DATABASE_URL, isOwn: false }
+  const cluster = await openOwnCluster(root)
+  started.push(cluster.close)
+  if (cluster.isNew) rmSync(signInsFile, { force: true })
+  return { url: cluster.url, isOwn: true }
+}
+
+function printSignIns() {
+  console.log('\nSign-ins of the demo (kept in .data/demo-sign-ins.json):')
+  for (const { email, password, role } of JSON.parse(readFileSync(signInsFile, 'utf8'))) {
+    console.log(`  ${role.padEnd(7)} ${email.padEnd(34)} ${password}`)
+  }
+}
+
+async function main() {
+  checkNodeVersion()
+  const settings = readSettings(root)
+  await ensureDependencies(root)
+  const database = await openDatabase(settings)
+  if (isStopping) return
+  const env = { ...process.env, ...settings, DATABASE_URL: database.url, NEXT_TELEMETRY_DISABLED: '1' }
+  for (const name of Object.keys(env)) if (env[name] === undefined) delete env[name]
+  await runScript('db/migrate.ts', env)
+  if (database.isOwn && !existsSync(signInsFile)) {
+    await runScript('db/seed.ts', { ...env, SIGN_INS_FILE: signInsFile })
+  }
+  if (!isDevelopment) await ensureBuild(root, env)
+  if (isStopping) return
+  const port = await choosePort(settings.PORT)
+  const server = await startWebServer({ root, port, env: { ...env, PORT: String(port) }, isDevelopment })
+  started.push(server.stop)
+  await server.whenReady()
+  console.log(`\nTurnwright is at ${settings.BASE_URL ?? `http://localhost:${port}`}   (Ctrl-C stops it)`)
+  if (database.isOwn) printSignIns()
+  const code = await server.ended
+  if (!isStopping) process.exitCode = code || 1
+}
+
+for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
+  process.on(signal, () => {
+    if (isStopping) return
+    console.log('\nStopping …')
+    void stopAll().then(() => process.exit(0))
+  })
+}
+
+try {
+  await main()
+} catch (error) {
+  if (!isStopping) {
+    console.error(error instanceof SetUpError ? `\n${error.message}` : error)
+    process.exitCode = 1
+  }
+}
+await stopAll()
