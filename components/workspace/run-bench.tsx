@@ -1,0 +1,160 @@
+'use client'
+
+import { useRouter } from 'next/navigation'
+import { useEffect, useRef, useState } from 'react'
+import { Bench } from '@/components/bench/bench'
+import type { TableRequest } from '@/components/bench/make-table'
+import { Crumbs, type Crumb } from '@/components/shell/page-heading'
+import { Button } from '@/components/ui/button'
+import { Notice } from '@/components/ui/notice'
+import { ENGINE_VERSION } from '@/lib/analysis/constants'
+import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
+import { sendJson } from '@/lib/client/fetcher'
+import { readPackedColumns, saveAnalysis } from '@/lib/client/save-run'
+import { useBenchAnalysis } from '@/lib/client/use-analysis'
+import { compareResults, rerunFinding } from '@/lib/findings/rerun-finding'
+import { correctionSchema, type Analysis, type Project, type Run } from '@/lib/schemas/api'
+import { defaultRecipe } from '@/lib/schemas/recipe'
+import { NameDialog } from './name-dialog'
+import { useRunNotes } from './use-run-notes'
+
+interface RunBenchProps {
+  project: Project
+  run: Run
+  /** The saved analysis to show; without one the bench starts from the run's and the project's own settings. */
+  analysis: Analysis | null
+  /** Its figures as they were saved. */
+  savedResult: AnalysisResult | null
+}
+
+/** The bench on a stored run, as the project has it or as an analysis was saved. */
+export function RunBench({ project, run, analysis, savedResult }: RunBenchProps) {
+  const router = useRouter()
+  const isViewer = project.role === 'viewer'
+  const [base] = useState<Recipe>(() => analysis?.recipe ?? recipeOf(project, run))
+  const [recipe, setRecipe] = useState(base)
+  const bench = useBenchAnalysis(recipe)
+  const [isNaming, setNaming] = useState(false)
+  const [fault, setFault] = useState<string | null>(null)
+  const { loadPacked } = bench
+
+  const isStarted = useRef(false)
+  useEffect(() => {
+    if (isStarted.current) return
+    isStarted.current = true
+    const load = async () => {
+      try {
+        const loaded = await loadPacked(await readPackedColumns(run))
+        if (!loaded.ok) setFault(loaded.fault.message)
+      } catch (error) {
+        setFault(error instanceof Error ? error.message : 'The stored columns could not be fetched. Reload the page.')
+      }
+    }
+    void load()
+  }, [loadPacked, run])
+
+  const isAsSaved = analysis !== null && JSON.stringify(recipe) === JSON.stringify(analysis.recipe)
+  const isCurrent = !bench.isComputing && JSON.stringify(bench.outcomeRecipe) === JSON.stringify(recipe)
+  const computed = bench.outcome?.ok ? bench.outcome.result : null
+  const shown = isAsSaved ? savedResult : computed
+  const notes = useRunNotes(project.id, analysis?.id ?? null)
+
+  async function save(name: string): Promise<Analysis> {
+    if (!computed || !isCurrent) throw new Error('The figures are still being computed. Try again in a moment.')
+    return saveAnalysis(project.id, { runId: run.id, name, recipe, result: { ...computed } })
+  }
+
+  async function makeTable({ kind, isAssumedSenseConfirmed }: TableRequest) {
+    const source = analysis && isAsSaved ? analysis : await save(tableName('Analysis behind the table'))
+    const name = tableName(kind === 'addition' ? 'Addition' : 'Table')
+    const body = { analysisId: source.id, name, kind, isAssumedSenseConfirmed }
+    const made = await sendJson('POST', `/api/projects/${project.id}/corrections`, body, correctionSchema)
+    router.push(`/projects/${project.id}/corrections/${made.id}`)
+  }
+
+  function tableName(what: string): string {
+    return `${what}, ${run.name}`.slice(0, 120)
+  }
+
+  const label = analysis?.name ?? run.name
+  return (
+    <>
+      <Bench
+        outcome={bench.outcome}
+        savedResult={isAsSaved ? savedResult : null}
+        recipe={recipe}
+        baseRecipe={base}
+        onRecipeChange={setRecipe}
+        progress={bench.progress}
+        isComputing={bench.isComputing}
+        onCancel={bench.cancel}
+        runLabel={label}
+        crumbs={<Crumbs crumbs={crumbsOf(project, run, analysis)} />}
+        actions={
+          isViewer ? null : (
+            <>
+              {analysis && !isAsSaved ? (
+                <Button onClick={() => setRecipe(analysis.recipe)}>Back to the saved one</Button>
+              ) : null}
+              <Button variant="primary" disabled={!computed || isAsSaved} onClick={() => setNaming(true)}>
+                {analysis ? 'Save as a new analysis' : 'Save analysis'}
+              </Button>
+            </>
+          )
+        }
+        notes={notes.notes}
+        onAddNote={notes.add}
+        onChangeNote={notes.change}
+        onDeleteNote={notes.remove}
+        onMakeTable={shown?.table ? makeTable : undefined}
+        hasWormAngle={bench.loaded?.ok === true && bench.loaded.hasWormAngle}
+        mountCorrection={run.facts.mountCorrection}
+        isReadOnly={isViewer}
+      />
+      <div className="no-print mx-auto flex w-full max-w-360 flex-col gap-3 px-8 pb-10 max-sm:px-3">
+        {(fault ?? bench.fault) ? (
+          <Notice tone="error" title="The recording could not be worked on" isLive>
+            {fault ?? `Reload the page. (${bench.fault})`}
+          </Notice>
+        ) : null}
+        {analysis && savedResult && isAsSaved && isCurrent && computed ? (
+          <Notice>
+            {analysis.engineVersion === ENGINE_VERSION
+              ? rerunFinding(compareResults(savedResult, computed))
+              : `Saved by version ${analysis.engineVersion} of the computation; the pictures are drawn by version ${ENGINE_VERSION}. ${rerunFinding(compareResults(savedResult, computed))}`}
+          </Notice>
+        ) : null}
+      </div>
+      <NameDialog
+        isOpen={isNaming}
+        onClose={() => setNaming(false)}
+        title="Save this analysis"
+        label="Name of the analysis"
+        initial={analysis ? `${analysis.name}, changed` : 'First look'}
+        onName={async (name) => {
+          const saved = await save(name)
+          router.push(`/projects/${project.id}/analyses/${saved.id}`)
+        }}
+      />
+    </>
+  )
+}
+
+function crumbsOf(project: Project, run: Run, analysis: Analysis | null): Crumb[] {
+  const root = `/projects/${project.id}`
+  return [
+    { label: project.name, href: root },
+    ...(analysis
+      ? [
+          { label: 'Analyses', href: `${root}/analyses` },
+          { label: run.name, href: `${root}/runs/${run.id}` },
+          { label: analysis.name },
+        ]
+      : [{ label: 'Runs', href: `${root}/runs` }, { label: run.name }]),
+  ]
+}
+
+function recipeOf(project: Project, run: Run): Recipe {
+  const fresh = defaultRecipe()
+  return { ...fresh, conversion: run.conversion ?? fresh.conversion, driveTrain: project.driveTrain }
+}

@@ -1,0 +1,245 @@
+'use client'
+
+import { useRouter } from 'next/navigation'
+import { useState, type ReactNode } from 'react'
+import { useSave } from '@/components/projects/use-save'
+import { Button, ButtonAnchor } from '@/components/ui/button'
+import { TitledCard } from '@/components/ui/card'
+import { ConflictNotice } from '@/components/ui/conflict-notice'
+import { Actions, Dialog } from '@/components/ui/dialog'
+import { Field } from '@/components/ui/field'
+import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
+import { Notice } from '@/components/ui/notice'
+import { NumberField } from '@/components/ui/number-input'
+import { Select, type SelectOption } from '@/components/ui/select'
+import { TextInput } from '@/components/ui/text-input'
+import { formatMinute } from '@/lib/client/dates'
+import { sendJson } from '@/lib/client/fetcher'
+import { runSchema, type Run } from '@/lib/schemas/api'
+import type { RunFacts } from '@/lib/schemas/run-facts'
+import { formatBytes, formatCount } from '@/lib/units'
+
+type Choice = 'sideOfPier' | 'trackingRate' | 'mountCorrection' | 'guiding'
+
+const CHOICES: Record<Choice, { label: string; options: readonly SelectOption[] }> = {
+  sideOfPier: {
+    label: 'Side of pier',
+    options: [
+      { value: 'unknown', label: 'not known' },
+      { value: 'east', label: 'east' },
+      { value: 'west', label: 'west' },
+    ],
+  },
+  trackingRate: {
+    label: 'Tracking rate',
+    options: [
+      { value: 'unknown', label: 'not known' },
+      { value: 'sidereal', label: 'sidereal' },
+      { value: 'solar', label: 'solar' },
+      { value: 'lunar', label: 'lunar' },
+    ],
+  },
+  mountCorrection: {
+    label: 'Correction in the mount',
+    options: [
+      { value: 'unknown', label: 'not known' },
+      { value: 'off', label: 'off' },
+      { value: 'on', label: 'on' },
+    ],
+  },
+  guiding: {
+    label: 'Guiding',
+    options: [
+      { value: 'unknown', label: 'not known' },
+      { value: 'off', label: 'off' },
+      { value: 'logged', label: 'on, corrections logged' },
+    ],
+  },
+}
+
+/** What is known of a stored run beside its numbers, and its original file. */
+export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) {
+  const [isEditing, setEditing] = useState(false)
+  const { facts } = run
+  return (
+    <div className="mx-auto w-full max-w-360 px-8 pb-16 max-sm:px-3">
+      <TitledCard
+        title="About this run"
+        actions={
+          <div className="no-print flex flex-wrap gap-2">
+            {canEdit ? <Button onClick={() => setEditing(true)}>Change what is known</Button> : null}
+            <ButtonAnchor href={`/api/projects/${run.projectId}/runs/${run.id}/file`}>
+              Download the original
+            </ButtonAnchor>
+          </div>
+        }
+      >
+        <dl className="grid grid-cols-3 gap-x-8 gap-y-2 max-lg:grid-cols-2 max-sm:grid-cols-1">
+          <Fact term="Recorded">{facts.startedAt ? formatMinute(facts.startedAt) : 'not known'}</Fact>
+          <Fact term="Hour angle">{facts.hourAngleDegrees === null ? 'not known' : `${facts.hourAngleDegrees}°`}</Fact>
+          {(Object.keys(CHOICES) as Choice[]).map((key) => (
+            <Fact key={key} term={CHOICES[key].label}>
+              {CHOICES[key].options.find(({ value }) => value === facts[key])?.label}
+            </Fact>
+          ))}
+          {facts.mountCorrection === 'on' ? (
+            <Fact term="Table in the mount">{facts.mountCorrectionTable ?? 'not named'}</Fact>
+          ) : null}
+          <Fact term="Temperature">
+            {facts.temperatureCelsius === null ? 'not known' : `${facts.temperatureCelsius} °C`}
+          </Fact>
+          <Fact term="Load and balance">{facts.loadAndBalance ?? 'not noted'}</Fact>
+          <Fact term="Sense">{facts.senseProof ?? 'assumed, not proven'}</Fact>
+          <Fact term="File">
+            <span className="break-all">{run.fileName}</span>, {formatBytes(run.byteLength)}
+            {run.rowCount === null ? '' : `, ${formatCount(run.rowCount)} rows`}
+          </Fact>
+          <Fact term="SHA-256 of the file">
+            <span className="figures text-sm break-all">{run.fileSha256}</span>
+          </Fact>
+        </dl>
+      </TitledCard>
+      <Dialog isOpen={isEditing} onClose={() => setEditing(false)} title="What is known of this run">
+        <FactsForm run={run} onClose={() => setEditing(false)} />
+      </Dialog>
+    </div>
+  )
+}
+
+function Fact({ term, children }: { term: string; children: ReactNode }) {
+  return (
+    <div className="border-b border-rule pb-1.5">
+      <dt className="text-sm text-soft">{term}</dt>
+      <dd>{children}</dd>
+    </div>
+  )
+}
+
+function FactsForm({ run, onClose }: { run: Run; onClose: () => void }) {
+  const router = useRouter()
+  const [name, setName] = useState(run.name)
+  const [facts, setFacts] = useState<RunFacts>(run.facts)
+  const { save, isBusy, fault, conflict, dropConflict } = useSave(runSchema)
+  const change = (part: Partial<RunFacts>) => setFacts((now) => ({ ...now, ...part }))
+
+  async function send(version: number) {
+    const body = { version, name, conversion: run.conversion, facts }
+    const saved = await save(() => sendJson('PATCH', `/api/projects/${run.projectId}/runs/${run.id}`, body, runSchema))
+    if (!saved) return
+    onClose()
+    router.refresh()
+  }
+
+  return (
+    <form
+      noValidate
+      className="flex flex-col gap-4"
+      onSubmit={(event) => {
+        event.preventDefault()
+        if (!focusFirstInvalid(event.currentTarget)) void send(run.version)
+      }}
+    >
+      <Field label="Name of the run" error={name.trim() === '' ? 'Give it a name' : null}>
+        {(control) => (
+          <TextInput
+            {...control}
+            required
+            maxLength={120}
+            value={name}
+            onChange={(event) => setName(event.target.value)}
+          />
+        )}
+      </Field>
+      <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
+        {(Object.keys(CHOICES) as Choice[]).map((key) => (
+          <Field key={key} label={CHOICES[key].label}>
+            {(control) => (
+              <Select
+                {...control}
+                options={CHOICES[key].options}
+                value={facts[key]}
+                onChange={(event) => change({ [key]: event.target.value } as Partial<RunFacts>)}
+              />
+            )}
+          </Field>
+        ))}
+        <NumberField
+          label="Hour angle"
+          hint="West positive."
+          unit="°"
+          min={-180}
+          max={180}
+          value={facts.hourAngleDegrees}
+          onValue={(hourAngleDegrees) => change({ hourAngleDegrees })}
+        />
+        <NumberField
+          label="Temperature"
+          unit="°C"
+          min={-80}
+          max={80}
+          value={facts.temperatureCelsius}
+          onValue={(temperatureCelsius) => change({ temperatureCelsius })}
+        />
+      </div>
+      <OptionalText
+        label="Table in the mount"
+        maxLength={200}
+        value={facts.mountCorrectionTable}
+        onValue={(mountCorrectionTable) => change({ mountCorrectionTable })}
+      />
+      <OptionalText
+        label="Load and balance"
+        maxLength={500}
+        value={facts.loadAndBalance}
+        onValue={(loadAndBalance) => change({ loadAndBalance })}
+      />
+      {conflict ? (
+        <ConflictNotice
+          thing="this run"
+          changedBy={conflict.changedBy}
+          changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
+          onKeepMine={() => void send(conflict.current.version)}
+          onTakeTheirs={() => {
+            setName(conflict.current.name)
+            setFacts(conflict.current.facts)
+            dropConflict()
+            router.refresh()
+          }}
+        />
+      ) : null}
+      {fault ? (
+        <Notice tone="error" title="Not saved" isLive>
+          {fault}
+        </Notice>
+      ) : null}
+      <Actions className="mt-0">
+        <Button onClick={onClose}>Not now</Button>
+        <Button type="submit" variant="primary" disabled={isBusy}>
+          Save
+        </Button>
+      </Actions>
+    </form>
+  )
+}
+
+interface OptionalTextProps {
+  label: string
+  maxLength: number
+  value: string | null
+  onValue: (value: string | null) => void
+}
+
+function OptionalText({ label, maxLength, value, onValue }: OptionalTextProps) {
+  return (
+    <Field label={label}>
+      {(control) => (
+        <TextInput
+          {...control}
+          maxLength={maxLength}
+          value={value ?? ''}
+          onChange={(event) => onValue(event.target.value || null)}
+        />
+      )}
+    </Field>
+  )
+}

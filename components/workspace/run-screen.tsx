@@ -1,0 +1,83 @@
+'use client'
+
+import { useRouter } from 'next/navigation'
+import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
+import type { ImportChoices } from '@/components/import/import-draft'
+import type { IntakeFile } from '@/components/import/file-intake'
+import { Notice } from '@/components/ui/notice'
+import { importRun } from '@/lib/client/save-run'
+import { useBenchAnalysis } from '@/lib/client/use-analysis'
+import type { Project, Run } from '@/lib/schemas/api'
+import { ReadingScreen } from './reading-screen'
+import { RunBench } from './run-bench'
+import { RunFactsPanel } from './run-facts-panel'
+import { useFileReading } from './use-file-reading'
+
+/** A stored run: its bench once its columns are known, before that the form that names them. */
+export function RunScreen({ project, run }: { project: Project; run: Run }) {
+  if (run.status === 'uploaded') return <UnreadRun project={project} run={run} />
+  return (
+    <>
+      <RunBench project={project} run={run} analysis={null} savedResult={null} />
+      <RunFactsPanel run={run} canEdit={project.role !== 'viewer'} />
+    </>
+  )
+}
+
+/** The file is stored, but how to read it is not settled: an import was broken off or found a fault. */
+function UnreadRun({ project, run }: { project: Project; run: Run }) {
+  const router = useRouter()
+  const analysis = useBenchAnalysis(null)
+  const [fault, setFault] = useState<string | null>(null)
+
+  const onRead = useCallback(
+    async (_file: IntakeFile, { settings, conversion, facts }: ImportChoices) => {
+      setFault(null)
+      try {
+        await importRun(run, { settings, conversion, facts })
+        router.refresh()
+      } catch (error) {
+        setFault(error instanceof Error ? error.message : 'The columns could not be stored. Try again.')
+      }
+    },
+    [router, run],
+  )
+  const earlier = useMemo(
+    () => ({ lastImport: project.lastImport, wheelTeeth: project.driveTrain.wheelTeeth }),
+    [project],
+  )
+  const file = useFileReading({ analysis, earlier, onRead })
+  const { take } = file
+
+  const isStarted = useRef(false)
+  useEffect(() => {
+    if (isStarted.current) return
+    isStarted.current = true
+    const fetchFile = async () => {
+      const response = await fetch(`/api/projects/${run.projectId}/runs/${run.id}/file`)
+      if (!response.ok) return setFault('The stored file could not be fetched. Reload the page to try again.')
+      await take({ fileName: run.fileName, bytes: new Uint8Array(await response.arrayBuffer()) })
+    }
+    void fetchFile()
+  }, [run, take])
+
+  return (
+    <ReadingScreen
+      title={`“${run.name}” is stored but not read yet`}
+      lead="Its file is being fetched, so that you can say which column is what. You may also bring the recording again."
+      crumbs={[
+        { label: project.name, href: `/projects/${project.id}` },
+        { label: 'Runs', href: `/projects/${project.id}/runs` },
+        { label: run.name },
+      ]}
+      file={file}
+      submitLabel="Read this run"
+    >
+      {fault ? (
+        <Notice tone="error" isLive>
+          {fault}
+        </Notice>
+      ) : null}
+    </ReadingScreen>
+  )
+}
