@@ -1,8 +1,7 @@
 import { failure } from './failure'
-import { harmonicValue } from './harmonic-curve'
-import { solveLeastSquares } from './least-squares'
+import { compressProblem, solveLeastSquares } from './least-squares'
 import { medianCadence } from './sampling'
-import { fraction, mean } from './statistics'
+import { fraction, mean, sum } from './statistics'
 import type { Failure, HarmonicCoefficients, TurnPrediction, TurnResult } from './types'
 
 /** A track minus drift, steps and lines of no integer order, and how to fold it; never the raw track. */
@@ -75,23 +74,24 @@ export function explainByPhase(phases: Float64Array, values: Float64Array, binCo
   }
 }
 
-/** A constant and harmonics of given orders fitted to samples at worm angles in radians. */
-function fitHarmonics(angles: Float64Array, values: Float64Array, orders: readonly number[]) {
-  const columns = [new Float64Array(angles.length).fill(1)]
-  for (const order of orders) {
-    columns.push(
+/** A constant, then cosine and sine of each order at worm angles in radians. */
+function harmonicColumns(angles: Float64Array, orders: readonly number[]): Float64Array[] {
+  return [
+    new Float64Array(angles.length).fill(1),
+    ...orders.flatMap((order) => [
       angles.map((angle) => Math.cos(order * angle)),
       angles.map((angle) => Math.sin(order * angle)),
-    )
-  }
-  const fit = solveLeastSquares(columns, values)
-  if (!fit.ok) return fit
-  const harmonics = orders.map((order, i): HarmonicCoefficients => ({
+    ]),
+  ]
+}
+
+/** Coefficients of those columns as harmonics. */
+function harmonicsOf(coefficients: Float64Array, orders: readonly number[]): HarmonicCoefficients[] {
+  return orders.map((order, i) => ({
     order,
-    cosArcsec: fit.coefficients[1 + 2 * i],
-    sinArcsec: fit.coefficients[2 + 2 * i],
+    cosArcsec: coefficients[1 + 2 * i],
+    sinArcsec: coefficients[2 + 2 * i],
   }))
-  return { ok: true as const, constant: fit.coefficients[0], harmonics }
 }
 
 /** What is foretold at a worm angle (radians from the origin) by harmonics fitted to other turns. */
@@ -137,14 +137,57 @@ function coveredTurns(input: FoldInput): Turn[] {
   return turns
 }
 
-function joinColumns(columns: readonly Float64Array[]): Float64Array {
-  const joined = new Float64Array(columns.reduce((total, column) => total + column.length, 0))
-  let at = 0
-  for (const column of columns) {
-    joined.set(column, at)
-    at += column.length
+/** Columns of a linear problem, the last one standing for the values; any rows that give the same answers will do. */
+type Problem = readonly Float64Array[]
+
+/** One above the other, in as few rows as there are columns where that can be had. */
+function stack(upper: Problem | null, lower: Problem): Problem {
+  if (upper === null) return lower
+  const both = upper.map((column, j) => {
+    const joined = new Float64Array(column.length + lower[j].length)
+    joined.set(column)
+    joined.set(lower[j], column.length)
+    return joined
+  })
+  const compressed = compressProblem(both.slice(0, -1), both[both.length - 1])
+  return Array.isArray(compressed) ? compressed : both
+}
+
+interface PreparedTurns {
+  turns: Turn[]
+  /** Constant, cosine and sine of each order, values: per turn. */
+  problems: Problem[]
+  /** All turns but the one of this index. */
+  others: Problem[]
+}
+
+/** Every turn as a small problem, and for each the other turns together, from turns before and turns after. */
+function prepareTurns(turns: Turn[], orders: readonly number[]): PreparedTurns {
+  const problems = turns.map(({ angles, values }): Problem => {
+    const columns = harmonicColumns(angles, orders)
+    const compressed = compressProblem(columns, values)
+    return Array.isArray(compressed) ? compressed : [...columns, values]
+  })
+  const before: (Problem | null)[] = [null]
+  for (const problem of problems.slice(0, -1)) before.push(stack(before[before.length - 1], problem))
+  let after: Problem | null = null
+  const others: Problem[] = []
+  for (let i = problems.length - 1; i >= 0; i--) {
+    const earlier = before[i]
+    if (after === null) others[i] = earlier ?? problems[i]
+    else others[i] = stack(earlier, after)
+    after = stack(after, problems[i])
   }
-  return joined
+  return { turns, problems, others }
+}
+
+/** Columns of some of the orders that a problem was made for. */
+function chooseOrders(problem: Problem, all: readonly number[], chosen: readonly number[]): Float64Array[] {
+  const columns = [problem[0]]
+  all.forEach((order, k) => {
+    if (chosen.includes(order)) columns.push(problem[1 + 2 * k], problem[2 + 2 * k])
+  })
+  return columns
 }
 
 /**
@@ -158,29 +201,31 @@ function joinColumns(columns: readonly Float64Array[]): Float64Array {
 export function leaveOneTurnOut(
   input: FoldInput,
   orders: readonly number[],
-  predictor: Predictor = (harmonics) => (angle) => harmonicValue(harmonics, angle),
+  predictor: Predictor | null = null,
 ): LeftOutTurns | Failure {
   const turns = coveredTurns(input)
   if (turns.length < 3) return failure('short-run', { needed: 3, got: turns.length })
-  const centre = mean(joinColumns(turns.map((turn) => turn.values)))
+  return predictLeftOut(prepareTurns(turns, orders), { all: orders, chosen: orders, predictor })
+}
+
+function predictLeftOut(
+  { turns, problems, others }: PreparedTurns,
+  { all, chosen, predictor }: { all: readonly number[]; chosen: readonly number[]; predictor: Predictor | null },
+): LeftOutTurns | Failure {
+  const count = turns.reduce((total, turn) => total + turn.values.length, 0)
+  const centre = turns.reduce((total, turn) => total + sum(turn.values), 0) / count
   let before = 0
   let left = 0
   const predictions: TurnPrediction[] = []
-  for (const turn of turns) {
-    const others = turns.filter((other) => other !== turn)
-    const fit = fitHarmonics(
-      joinColumns(others.map((other) => other.angles)),
-      joinColumns(others.map((other) => other.values)),
-      orders,
-    )
+  for (const [i, turn] of turns.entries()) {
+    const other = others[i]
+    const fit = solveLeastSquares(chooseOrders(other, all, chosen), other[other.length - 1])
     if (!fit.ok) return fit
-    const predict = predictor(fit.harmonics)
-    let turnBefore = 0
-    let turnLeft = 0
-    turn.values.forEach((value, i) => {
-      turnBefore += (value - centre) ** 2
-      turnLeft += (value - fit.constant - predict(turn.angles[i])) ** 2
-    })
+    const turnBefore = turn.values.reduce((total, value) => total + (value - centre) ** 2, 0)
+    const turnLeft =
+      predictor === null
+        ? squaresLeft(problems[i], chooseOrders(problems[i], all, chosen), fit.coefficients)
+        : squaresLeftByPredictor(turn, fit.coefficients[0], predictor(harmonicsOf(fit.coefficients, chosen)))
     predictions.push({
       turnNumber: turn.turnNumber,
       rmsBeforeArcsec: Math.sqrt(turnBefore / turn.values.length),
@@ -194,17 +239,35 @@ export function leaveOneTurnOut(
   return { ok: true, predictions, predictiveShare: 1 - shareLeft, heldOutReduction: 1 - Math.sqrt(shareLeft) }
 }
 
+/** Σ(z − ẑ)² on a compressed problem: rotating the rows changes no norm. */
+function squaresLeft(problem: Problem, columns: readonly Float64Array[], coefficients: Float64Array): number {
+  const left = problem[problem.length - 1].slice()
+  columns.forEach((column, j) => {
+    for (let i = 0; i < left.length; i++) left[i] -= coefficients[j] * column[i]
+  })
+  return left.reduce((total, value) => total + value * value, 0)
+}
+
+function squaresLeftByPredictor(
+  { angles, values }: Turn,
+  constant: number,
+  predict: (angle: number) => number,
+): number {
+  return values.reduce((total, value, i) => total + (value - constant - predict(angles[i])) ** 2, 0)
+}
+
 /**
  * Orders without which the left-out turns are foretold worse; all of them when fewer than three turns can be left out.
  */
 export function ordersUsefulOnLeftOutTurns(input: FoldInput, orders: readonly number[]): number[] {
-  const whole = leaveOneTurnOut(input, orders)
+  const turns = coveredTurns(input)
+  if (turns.length < 3) return [...orders]
+  const prepared = prepareTurns(turns, orders)
+  const whole = predictLeftOut(prepared, { all: orders, chosen: orders, predictor: null })
   if (!whole.ok) return [...orders]
   return orders.filter((order) => {
-    const without = leaveOneTurnOut(
-      input,
-      orders.filter((other) => other !== order),
-    )
+    const chosen = orders.filter((other) => other !== order)
+    const without = predictLeftOut(prepared, { all: orders, chosen, predictor: null })
     return without.ok && without.predictiveShare < whole.predictiveShare
   })
 }
@@ -219,9 +282,9 @@ export function turnScatter(input: FoldInput, orders: readonly number[], order =
   if (turns.length < 2 || at < 0) return null
   const vectors: HarmonicCoefficients[] = []
   for (const turn of turns) {
-    const fit = fitHarmonics(turn.angles, turn.values, orders)
+    const fit = solveLeastSquares(harmonicColumns(turn.angles, orders), turn.values)
     if (!fit.ok) return null
-    vectors.push(fit.harmonics[at])
+    vectors.push(harmonicsOf(fit.coefficients, orders)[at])
   }
   const meanCos = mean(vectors.map(({ cosArcsec }) => cosArcsec))
   const meanSin = mean(vectors.map(({ sinArcsec }) => sinArcsec))

@@ -68,9 +68,10 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
   const first = yield* fitWith([])
   if (!first.ok) return first
   let fit: JointFit = first
+  let spectrum = residualSpectrum(track.timeSeconds, fit.residual, nyquistHz)
+  yield
   while (lines.length < LARGEST_LINE_COUNT) {
     yield
-    const spectrum = residualSpectrum(track.timeSeconds, fit.residual, nyquistHz)
     const peak = highestPeak(spectrum, highestFrequencyHz)
     if (peak === null || !isWorthFitting(spectrum, peak, highestFrequencyHz)) return finish('nothing-left')
     const known = listOscillations(fit).map((oscillation) => oscillation.frequencyHz)
@@ -82,6 +83,7 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
     const index = lines.length
     if (next.escapedLines.length > 0) return finish('escaped')
     if (fit.rss - next.rss < SMALLEST_RSS_SHARE * fit.rss) return finish('nothing-left')
+    yield
     const verdict = judgeLine(request, fit, next, index)
     if (verdict === null) return finish('nothing-left')
     const found = next.frequencies.linesHz[index]
@@ -89,12 +91,14 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
     others.splice(others.length - 1, 1)
     const nearest = Math.min(Infinity, ...others.map((f) => Math.abs(f - found)))
     if (nearest < 0.5 / span) return finish('nothing-left')
-    lines.push({ frequencyHz: found, ...verdict, isUnresolved: nearest < 1 / span })
+    const { falseAlarmProbability, signalToNoise } = verdict
+    lines.push({ frequencyHz: found, falseAlarmProbability, signalToNoise, isUnresolved: nearest < 1 / span })
     next.frequencies.linesHz.forEach((frequencyHz, k) => {
       lines[k] = { ...lines[k], frequencyHz }
     })
     if (next.isWormFree) wormHz = next.frequencies.wormHz
     fit = next
+    spectrum = verdict.spectrum
   }
   return finish('line-limit')
 
@@ -122,13 +126,13 @@ function isWorthFitting(
   return level === null || peak.amplitude > 3 * level
 }
 
-/** The three conditions; null when one is not met. */
+/** The three conditions; null when one is not met. The spectrum of what is left serves the next search. */
 function judgeLine(
   { track, cadenceSeconds, highestFrequencyHz, chanceLevel }: PrewhitenRequest,
   before: JointFit,
   after: JointFit,
   index: number,
-): { falseAlarmProbability: number; signalToNoise: number } | null {
+): { falseAlarmProbability: number; signalToNoise: number; spectrum: ResidualSpectrum } | null {
   const { timeSeconds } = track
   const oscillation = listOscillations(after)[after.shape.wormOrders.length + index]
   const { column, frequencyHz } = oscillation
@@ -158,7 +162,7 @@ function judgeLine(
     const white = amplitudeError(a, b, whiteCovariance(after, qr), column)
     if (amplitude < SMALLEST_STANDARD_ERRORS * white * Math.sqrt(powerLaw.at(frequencyHz) / variance)) return null
   }
-  return { falseAlarmProbability, signalToNoise }
+  return { falseAlarmProbability, signalToNoise, spectrum }
 }
 
 /** Mean amplitude of the residual within max(5/T, 0.01 Hz) of f, cut to the searched range, at least 1/T. */
