@@ -160,8 +160,9 @@ function preamble(night: DemoNight): string[] {
   return [
     `# ${DEMO_PROJECT_NAME}, an invented recording: ${night.name}`,
     `# started: ${night.startedAt}`,
-    `# image scale: 1.55 arcsec/px`,
+    '# image scale: 1.55 arcsec/px',
     `# declination: ${night.declinationDegrees} deg`,
-    `# exposure: ${night.exposureSeconds} s, times are mid-exposure`,
+    `# exposure: ${night.exposureSeconds} s`,
+    '# times: middle of the exposure',
   ]
 }

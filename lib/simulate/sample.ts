@@ -50,7 +50,8 @@ const SAMPLE_LAYOUT = fileLayout({
     `# started: ${SAMPLE_STARTED_AT}`,
     '# image scale: 1.55 arcsec/px',
     '# declination: +8.9 deg',
-    '# exposure: 2 s, times are mid-exposure, seconds from the first frame',
+    '# exposure: 2 s',
+    '# times: middle of the exposure, from the first frame',
   ],
   hasUnits: true,
 })
@@ -63,7 +64,7 @@ export function sampleFileText(): string {
 /** How to read it: the same shape as ImportSettings of lib/formats. */
 export const SAMPLE_IMPORT: WrittenImport = {
   version: 1,
-  layout: { encoding: 'utf-8', delimiter: ',', decimalMark: '.', headerRow: 6, unitsRow: 7, firstDataRow: 8 },
+  layout: { encoding: 'utf-8', delimiter: ',', decimalMark: '.', headerRow: 7, unitsRow: 8, firstDataRow: 9 },
   columns: {
     time: 0,
     timeUnit: 'seconds',

@@ -1,10 +1,11 @@
 import { describe, expect, test } from 'vitest'
 import { drain } from '@/lib/analysis/drain'
+import { hintsFromMetadata } from '@/lib/formats/metadata-hints'
 import { parseTable } from '@/lib/formats/parse-table'
 import { previewTable } from '@/lib/formats/preview-table'
 import type { ImportSettings } from '@/lib/formats/types'
 import { demoRuns } from '@/lib/simulate/demo'
-import { SAMPLE_IMPORT, sampleFileText, sampleRun } from '@/lib/simulate/sample'
+import { SAMPLE_CONVERSION, SAMPLE_IMPORT, sampleFileText, sampleRun } from '@/lib/simulate/sample'
 
 const bytesOf = (text: string) => new TextEncoder().encode(text)
 
@@ -40,6 +41,11 @@ test('the preview guesses the sample run as it is', () => {
   if (!outcome.ok) throw new Error(outcome.fault.message)
   expect(outcome.preview.layout).toEqual(SAMPLE_IMPORT.layout)
   expect(outcome.preview.suggested).toEqual(SAMPLE_IMPORT.columns)
+  expect(hintsFromMetadata(outcome.preview.metadata)).toMatchObject({
+    exposureSeconds: SAMPLE_CONVERSION.exposureSeconds,
+    declinationDegrees: SAMPLE_CONVERSION.declinationDegrees,
+    imageScaleArcsecPerPx: SAMPLE_CONVERSION.imageScaleArcsecPerPx,
+  })
 })
 
 test.each(demoRuns().map((run) => [run.fileName, run] as const))('the preview guesses %s as it is', (_, run) => {
