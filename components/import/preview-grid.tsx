@@ -53,7 +53,7 @@ export function PreviewGrid({ preview, columns, onColumns, fault }: PreviewGridP
               row
             </th>
             {preview.columns.map((column) => (
-              <th key={column.index} scope="col" className="min-w-44 px-3 py-2 font-normal">
+              <th key={column.index} scope="col" className="min-w-52 px-3 py-2 font-normal">
                 <ColumnHead
                   column={column}
                   columns={columns}

@@ -140,7 +140,7 @@ export function ScaleFields({ draft, onDraft, faults, knownOptics }: ScaleFields
       {isAxisAlready ? null : (
         <>
           <Field
-            label="Measured"
+            label="The displacement is measured"
             hint="A camera sees the sky; an encoder or a solver that gives right ascension sees the axis."
           >
             {(control) => (

@@ -16,14 +16,14 @@ export function SenseFields({ draft, onDraft, faults }: SenseFieldsProps) {
   return (
     <FieldGroup legend="Sense">
       <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
-        <Field label="A growing value means the axis is">
+        <Field label="Growing values mean">
           {(control) => (
             <Select
               {...control}
               value={conversion.positiveMeans}
               options={[
-                { value: 'ahead', label: 'ahead (too far west)' },
-                { value: 'behind', label: 'behind (too far east)' },
+                { value: 'ahead', label: 'axis ahead (too far west)' },
+                { value: 'behind', label: 'axis behind (too far east)' },
               ]}
               onChange={(event) =>
                 onDraft({

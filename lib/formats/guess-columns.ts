@@ -7,6 +7,7 @@ import { unitOfText } from './unit-words'
 export interface ColumnFacts extends ColumnHead {
   index: number
   isNumeric: boolean
+  /** Time stamps that mostly differ from row to row; a date beside a time of day does not. */
   isTimeStamps: boolean
   smallest: number | null
   largest: number | null
@@ -95,6 +96,7 @@ export function columnFacts(
   const numbers = filled
     .filter(({ kind }) => kind === 'number')
     .map(({ text }) => numberOfText(text, cells.decimalMark))
+  const stamps = filled.filter(({ kind }) => kind === 'time-stamp').map(({ text }) => text)
   const steps = numbers.slice(1).map((value, i) => value - numbers[i])
   const sortedSteps = [...steps].sort((a, b) => a - b)
   const rises = steps.filter((step) => step > 0).length
@@ -106,7 +108,7 @@ export function columnFacts(
     ...head,
     index: cells.index,
     isNumeric,
-    isTimeStamps: filled.filter(({ kind }) => kind === 'time-stamp').length > 0.8 * filled.length,
+    isTimeStamps: stamps.length > 0.8 * filled.length && new Set(stamps).size > 0.2 * stamps.length,
     smallest: isNumeric ? numbers.reduce((a, b) => Math.min(a, b)) : null,
     largest: isNumeric ? numbers.reduce((a, b) => Math.max(a, b)) : null,
     first: isNumeric ? numbers[0] : null,
@@ -222,6 +224,8 @@ function displacementScore(column: ColumnFacts): number {
 
 function declinationScore(column: ColumnFacts): number {
   if (!column.isNumeric || isForeign(column)) return 0
+  // In degrees it is where the telescope points, not how far the star has moved.
+  if (column.unitText !== null && unitOfText(column.unitText) === 'degrees') return 0
   return hasWord(column, DECLINATION_WORDS) && !hasWord(column, RIGHT_ASCENSION_WORDS) ? 4 : 0
 }
 

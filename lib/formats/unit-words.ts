@@ -106,12 +106,10 @@ export function splitNameAndUnit(text: string): { name: string; unitText: string
 }
 
 function bare(text: string): string {
-  const inner = /^\s*[([{<]\s*(.*?)\s*[)\]}>]\s*$/s.exec(text)?.[1] ?? text
-  return (
-    inner
-      .trim()
-      .toLowerCase()
-      .replace(/\.$/, '')
-      .replace(/[\s_-]+/g, ' ') || inner.trim()
-  )
+  const inner = (/^\s*[([{<]\s*(.*?)\s*[)\]}>]\s*$/s.exec(text)?.[1] ?? text).trim().toLowerCase()
+  const plain = inner
+    .replace(/\.$/, '')
+    .replace(/[\s_-]+/g, ' ')
+    .trim()
+  return plain === '' ? inner : plain
 }

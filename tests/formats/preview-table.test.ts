@@ -100,6 +100,21 @@ describe('the layout is guessed', () => {
     })
   })
 
+  test.each([
+    ['units below the names', 'time;RA;Dec;snr\ns;px;px;-\n', 1, 2],
+    ['units above the names', '[s];[px];[px];[-]\ntime;RA;Dec;snr\n', 2, 1],
+    ['units between blanks lines', 'time;RA;Dec;snr\n\n(s);(px);(px);\n\n', 1, 3],
+  ])('%s', (_, head, headerRow, unitsRow) => {
+    const preview = previewOf(utf8(head + table(30, (i) => `${i};${swing(i)};0.12;30`)))
+    expect(preview.layout).toMatchObject({ headerRow, unitsRow })
+    expect(preview.columns.slice(0, 3).map(({ name, unitText }) => [name, unitText])).toEqual([
+      ['time', 's'],
+      ['RA', 'px'],
+      ['Dec', 'px'],
+    ])
+    expect(preview.suggested).toMatchObject({ time: 0, displacement: 1, displacementUnit: 'px', declination: 2 })
+  })
+
   test('a header behind a comment mark, blanks between columns', () => {
     const text = '# t_s  ra_px  worm_deg\n' + table(30, (i) => `${i * 2.5} ${swing(i)} ${(i * 1.6) % 360}`)
     const preview = previewOf(utf8(text))
@@ -214,6 +229,18 @@ describe('the columns are guessed by name, unit and behaviour', () => {
       'time,ra,worm\n',
       (i: number) => `${i},${swing(i)},${(i / 30).toFixed(4)}`,
       { wormAngle: 2, wormAngleUnit: 'turns' },
+    ],
+    [
+      'date and time of day in two columns',
+      'date,time,ra\n',
+      (i: number) => `2031-11-14,21:03:${10 + i},${swing(i)}`,
+      { time: 1, timeUnit: 'iso-8601', displacement: 2 },
+    ],
+    [
+      'pointing in degrees is no displacement',
+      'time,RA (deg),Dec (deg),offset (arcsec)\n',
+      (i: number) => `${i},${83.1 + swing(i) / 3600},8.9,${swing(i)}`,
+      { displacement: 3, declination: null },
     ],
     [
       'temperature is no displacement',
