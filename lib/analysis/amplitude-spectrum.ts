@@ -46,7 +46,8 @@ export function amplitudeSpectrum(grid: EvenGrid, options: SpectrumOptions): Amp
   const scale = weightSum > 1e-9 * count ? 1 / weightSum : 0
   for (let j = 0; j <= half; j++) {
     const factor = j === 0 || j === half ? scale : 2 * scale
-    amplitude[j] = factor * Math.hypot(bins[2 * j], bins[2 * j + 1])
+    // Not hypot, which is several times slower: arc seconds come nowhere near overflow.
+    amplitude[j] = factor * Math.sqrt(bins[2 * j] ** 2 + bins[2 * j + 1] ** 2)
   }
   return { stepHz: 1 / (length * grid.cadenceSeconds), amplitude }
 }

@@ -50,20 +50,39 @@ export function nonuniformFft(options: {
   return unpack(bins, { size, firstIndex, count })
 }
 
+/** The kernel is even, so that its transform needs half of the 24 nodes of the quadrature. */
+const HALF_NODES = 12
+
+/** The kernel's transform ∫φ(z) cos(πjwz/n)dz at rising indices j; it serves every transform of one periodogram. */
+function kernelTransform(range: { size: number; firstIndex: number; count: number }): Float64Array {
+  const { size, firstIndex, count } = range
+  const { nodes, weights } = gaussLegendre(2 * HALF_NODES)
+  const transform = new Float64Array(count)
+  for (let k = 0; k < HALF_NODES; k++) {
+    const value = 2 * weights[k] * Math.exp(KERNEL_SHARPNESS * (Math.sqrt(1 - nodes[k] * nodes[k]) - 1))
+    const step = (Math.PI * KERNEL_WIDTH * nodes[k]) / size
+    for (let j = 0; j < count; j++) transform[j] += value * Math.cos(step * (firstIndex + j))
+  }
+  return transform
+}
+
+let lastTransform: { key: string; values: Float64Array } | null = null
+
+function rememberedKernelTransform(range: { size: number; firstIndex: number; count: number }): Float64Array {
+  const key = `${range.size} ${range.firstIndex} ${range.count}`
+  if (lastTransform?.key !== key) lastTransform = { key, values: kernelTransform(range) }
+  return lastTransform.values
+}
+
 /** Splits Z = G + iH by G(f) = (Z(f) + Z(−f)*)/2, H(f) = (Z(f) − Z(−f)*)/2i and divides by the kernel's transform. */
 function unpack(bins: Float64Array, range: { size: number; firstIndex: number; count: number }): NonuniformTransform {
   const { size, firstIndex, count } = range
   const first = new Float64Array(2 * count)
   const second = new Float64Array(2 * count)
-  const { nodes, weights } = gaussLegendre(24)
-  const kernel = nodes.map((z, k) => weights[k] * Math.exp(KERNEL_SHARPNESS * (Math.sqrt(1 - z * z) - 1)))
+  const kernel = rememberedKernelTransform(range)
   for (let j = 0; j < count; j++) {
     const index = firstIndex + j
-    let transform = 0
-    for (let k = 0; k < nodes.length; k++) {
-      transform += kernel[k] * Math.cos((Math.PI * index * KERNEL_WIDTH * nodes[k]) / size)
-    }
-    const scale = 1 / (KERNEL_WIDTH * transform) // (w/2)·∫, and the ½ of the split
+    const scale = 1 / (KERNEL_WIDTH * kernel[j]) // (w/2)·∫, and the ½ of the split
     const up = 2 * index
     const down = 2 * ((size - index) & (size - 1))
     first[2 * j] = scale * (bins[up] + bins[down])

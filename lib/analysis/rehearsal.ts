@@ -1,5 +1,5 @@
 import { curvePeakToPeak, harmonicValue } from './harmonic-curve'
-import { playAt, playedCoefficients, type PlayedTable } from './table-playback'
+import { playAt, playedCoefficients, playedMeanSquare, type PlayedTable } from './table-playback'
 import type { HarmonicCoefficients, TableRehearsal, Track } from './types'
 
 /** Share of the fundamental that may come back through slip. */
@@ -99,23 +99,27 @@ function slipAtShare(table: PlayedTable, included: readonly HarmonicCoefficients
   return (Math.max(0, angle) * 180) / Math.PI / leading.order
 }
 
-/** A prime, so that samples fall evenly on all parts of the bins whatever their number. */
-const SLIP_CURVE_SAMPLES = 2003
-
-/** RMS of the worm's curve that is left when the table plays with a slip, over the RMS without a table. */
+/**
+ * RMS of the worm's curve that is left when the table plays with a slip, over the RMS without a table. Exact:
+ * ⟨(e + c)²⟩ = ⟨e²⟩ + ⟨c²⟩ + 2⟨e c⟩, where only the curve's own orders enter the last term.
+ */
 export function slipCurve(
   table: PlayedTable,
   all: readonly HarmonicCoefficients[],
   slipDegrees: Float64Array,
 ): { slipDegrees: Float64Array; shareLeft: Float64Array } {
-  const before = Math.sqrt(all.reduce((total, { cosArcsec: a, sinArcsec: b }) => total + (a * a + b * b) / 2, 0))
-  const count = SLIP_CURVE_SAMPLES
-  const curve = Float64Array.from({ length: count }, (_, i) => harmonicValue(all, (2 * Math.PI * i) / count))
+  const before = all.reduce((total, { cosArcsec: a, sinArcsec: b }) => total + (a * a + b * b) / 2, 0)
+  const played = all.map(({ order }) => playedCoefficients(table, order))
+  const constant = before + playedMeanSquare(table)
   const shareLeft = slipDegrees.map((degrees) => {
     if (before === 0) return 0
-    let squares = 0
-    for (let i = 0; i < count; i++) squares += (curve[i] + playAt(table, i / count - degrees / 360)) ** 2
-    return Math.sqrt(squares / count) / before
+    let cross = 0
+    all.forEach(({ order, cosArcsec, sinArcsec }, i) => {
+      const slip = (order * degrees * Math.PI) / 180
+      const { cosArcsec: a, sinArcsec: b } = played[i]
+      cross += (cosArcsec * a + sinArcsec * b) * Math.cos(slip) + (sinArcsec * a - cosArcsec * b) * Math.sin(slip)
+    })
+    return Math.sqrt(Math.max(0, constant + cross) / before)
   })
   return { slipDegrees, shareLeft }
 }

@@ -50,3 +50,13 @@ export function playedCoefficients(
     sinArcsec: a * Math.sin(delay) + b * Math.cos(delay),
   }
 }
+
+/** Mean square of the played correction over a turn: Σ(c_j² + c_j c_{j+1} + c_{j+1}²)/3N for straight lines. */
+export function playedMeanSquare({ nodes, playback }: PlayedTable): number {
+  let total = 0
+  nodes.forEach((node, j) => {
+    const next = nodes[j + 1 < nodes.length ? j + 1 : 0]
+    total += playback === 'interpolated' ? (node * node + node * next + next * next) / 3 : node * node
+  })
+  return total / nodes.length
+}

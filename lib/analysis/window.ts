@@ -28,10 +28,12 @@ export type CosineWindowName = keyof typeof COSINE_WINDOWS
  */
 export function cosineWindow(name: CosineWindowName, sampleCount: number): Float64Array {
   checkSampleCount(sampleCount)
-  const coefficients = COSINE_WINDOWS[name]
-  return Float64Array.from({ length: sampleCount }, (_, n) =>
-    coefficients.reduce((w, a, k) => w + (k % 2 === 0 ? a : -a) * Math.cos((2 * Math.PI * k * n) / sampleCount), 0),
-  )
+  const weights = new Float64Array(sampleCount)
+  COSINE_WINDOWS[name].forEach((a, k) => {
+    const signed = k % 2 === 0 ? a : -a
+    for (let n = 0; n < sampleCount; n++) weights[n] += signed * Math.cos((2 * Math.PI * k * n) / sampleCount)
+  })
+  return weights
 }
 
 /**
