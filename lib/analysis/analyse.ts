@@ -169,9 +169,9 @@ function* fitModel(modelled: Modelled, recipe: Recipe): Generator<Progress, Fitt
   const { context, model } = modelled
   const reference = context.gearPeriodSeconds ?? (model.wormHz === null ? null : 1 / model.wormHz)
   const predicted = reference === null ? [] : predictedOrders(recipe.driveTrain, reference)
-  const lines = yield* findLines(context, recipe, model, predicted)
+  const lines = yield* findLines(context, recipe, model)
   if (!lines.ok) return lines
-  const fitted = yield* fitFinally(context, model, lines.orders, lines.found)
+  const fitted = yield* fitFinally(context, model, lines.found, predicted)
   if (!fitted.ok) return fitted
   const warnings = [...lines.warnings, ...fitted.warnings]
   return { ok: true, fitted, predicted, parts: splitModel(fitted.fit, context.track), warnings }

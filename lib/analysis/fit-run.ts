@@ -3,7 +3,7 @@ import type { FitErrors } from './fit-covariance'
 import { orderOf } from './describe-fit'
 import { matchOrder } from './gear-train'
 import { fitJointlyInSteps } from './joint-fit'
-import type { JointFit } from './joint-fit'
+import type { JointFit, JointFitRequest } from './joint-fit'
 import { chooseModelInSteps, firstOrders } from './model-choice'
 import type { ChosenModel } from './model-choice'
 import { prewhiten } from './prewhiten'
@@ -202,14 +202,13 @@ export function* chooseWormModel(
   }
 }
 
-/** Lines beside the worm's harmonics; those locked to the worm join its orders. */
+/** Lines beside the worm's harmonics. */
 export function* findLines(
   context: FitRunContext,
   recipe: Recipe,
   model: WormModel,
-  predicted: readonly PredictedOrder[],
-): Generator<Progress, { ok: true; found: FoundLine[]; orders: number[]; warnings: AnalysisWarning[] } | Failure> {
-  if (!recipe.isLineSearchOn) return { ok: true, found: [], orders: model.orders, warnings: [] }
+): Generator<Progress, { ok: true; found: FoundLine[]; warnings: AnalysisWarning[] } | Failure> {
+  if (!recipe.isLineSearchOn) return { ok: true, found: [], warnings: [] }
   const result = yield* during(
     report('lines', 0.45),
     prewhiten({
@@ -221,75 +220,53 @@ export function* findLines(
   )
   if (!result.ok) return result
   const warnings = result.stoppedBy === 'line-limit' ? [warning('line-limit', { count: result.lines.length })] : []
-  if (model.wormHz === null || result.lines.length === 0) {
-    return { ok: true, found: result.lines, orders: model.orders, warnings }
-  }
-  const fit = yield* during(
-    report('lines', 0.55),
-    fitJointlyInSteps(requestFor(context, model, model.orders, result.lines)),
-  )
-  const errors = fit.ok ? estimateErrors(fit, context.track.timeSeconds, context.cadenceSeconds) : fit
-  if (!fit.ok || !errors.ok) return { ok: true, found: result.lines, orders: model.orders, warnings }
-  const span = 2 * fit.time.halfSpanSeconds
-  const orders = new Set(model.orders)
-  const found = result.lines.filter((_, index) => {
-    const line = listOscillations(fit)[model.orders.length + index]
-    const order = orderOf(fit, errors, line)
-    if (order === null) return true
-    const nearest = Math.round(order.value)
-    const isLocked = Math.abs(order.value - nearest) <= 3 * (order.stderr ?? 0)
-    if (!isLocked || nearest < 1 || nearest > LARGEST_ORDER || orders.has(nearest)) return true
-    const part = matchOrder(order, predicted, 1 / (span * fit.frequencies.wormHz))
-    const isPredictedElsewhere = part !== null && !Number.isInteger(part.order)
-    if (isPredictedElsewhere) return true
-    orders.add(nearest)
-    return false
-  })
-  return { ok: true, found, orders: [...orders].sort((a, b) => a - b), warnings }
+  return { ok: true, found: result.lines, warnings }
 }
 
-/** The reported fit: everything together, to the last digit, with its errors; and the free period beside a held one. */
+/**
+ * The reported fit: everything together, to the last digit, with its errors; and the free period beside a held one.
+ * Lines that turn out to be locked to the worm (an integer order within 3 standard errors) join its harmonics.
+ */
 export function* fitFinally(
   context: FitRunContext,
   model: WormModel,
-  orders: readonly number[],
   lines: readonly FoundLine[],
+  predicted: readonly PredictedOrder[],
 ): Generator<Progress, FittedRun | Failure> {
-  const { track, cadenceSeconds, gearPeriodSeconds } = context
+  const { gearPeriodSeconds } = context
   const warnings: AnalysisWarning[] = []
+  let orders = model.orders
   let found = [...lines]
-  let fit = yield* during(
-    report('fitting', 0.6),
-    fitJointlyInSteps({ ...requestFor(context, model, orders, found), isPolished: true }),
-  )
-  if (fit.ok && fit.escapedLines.length > 0) {
-    const escaped = new Set(fit.escapedLines)
+  let reached = yield* fitWithErrors(context, requestFor(context, model, orders, found), 0.6)
+  if (reached.ok && reached.fit.escapedLines.length > 0) {
+    const escaped = new Set(reached.fit.escapedLines)
     found = found.filter((_, index) => !escaped.has(index))
-    fit = yield* during(
-      report('fitting', 0.65),
-      fitJointlyInSteps({ ...requestFor(context, model, orders, found), isPolished: true }),
-    )
+    reached = yield* fitWithErrors(context, requestFor(context, model, orders, found), 0.65)
   }
-  if (!fit.ok) return fit
-  yield report('fitting', 0.75)
-  const errors = estimateErrors(fit, track.timeSeconds, cadenceSeconds)
-  if (!errors.ok) return errors
+  if (!reached.ok) return reached
+  const locked = lockedLines(reached.fit, reached.errors, predicted)
+  if (locked.size > 0) {
+    orders = [...orders, ...locked.values()].sort((a, b) => a - b)
+    found = found.filter((_, index) => !locked.has(index))
+    reached = yield* fitWithErrors(context, requestFor(context, model, orders, found), 0.7)
+    if (!reached.ok) return reached
+  }
+  const { fit, errors } = reached
   if (!fit.isConverged) warnings.push(warning('not-converged'))
   const span = 2 * fit.time.halfSpanSeconds
 
   let fittedPeriodSeconds: Estimate | null = null
   const hasThreeTurns = model.wormHz !== null && span * model.wormHz >= 3
-  if (hasThreeTurns && !fit.isWormFree) {
-    yield report('fitting', 0.78)
-    const request = requestFor(context, model, orders, found)
-    const free = yield* during(
-      report('fitting', 0.8),
-      fitJointlyInSteps({ ...request, worm: request.worm && { ...request.worm, isFree: true }, isPolished: true }),
-    )
-    const freeErrors = free.ok ? estimateErrors(free, track.timeSeconds, cadenceSeconds) : free
-    if (free.ok && freeErrors.ok && free.isConverged) fittedPeriodSeconds = periodOf(free, freeErrors)
-  } else if (fit.isWormFree) {
+  if (fit.isWormFree) {
     fittedPeriodSeconds = periodOf(fit, errors)
+  } else if (hasThreeTurns) {
+    const request = requestFor(context, model, orders, found)
+    const free = yield* fitWithErrors(
+      context,
+      { ...request, worm: request.worm && { ...request.worm, isFree: true } },
+      0.8,
+    )
+    if (free.ok && free.fit.isConverged) fittedPeriodSeconds = periodOf(free.fit, free.errors)
   }
   if (gearPeriodSeconds !== null && fittedPeriodSeconds?.stderr) {
     const standardErrors = Math.abs(fittedPeriodSeconds.value - gearPeriodSeconds) / fittedPeriodSeconds.stderr
@@ -303,10 +280,43 @@ export function* fitFinally(
     fit,
     errors,
     found,
-    model: { ...model, orders: [...orders] },
+    model: { ...model, orders },
     fittedPeriodSeconds: fit.isWormFree ? null : fittedPeriodSeconds,
     warnings,
   }
+}
+
+function* fitWithErrors(
+  { track, cadenceSeconds }: FitRunContext,
+  request: JointFitRequest,
+  fraction: number,
+): Generator<Progress, { ok: true; fit: JointFit; errors: FitErrors } | Failure> {
+  const fit = yield* during(report('fitting', fraction), fitJointlyInSteps({ ...request, isPolished: true }))
+  if (!fit.ok) return fit
+  yield report('fitting', fraction + 0.04)
+  const errors = estimateErrors(fit, track.timeSeconds, cadenceSeconds)
+  return errors.ok ? { ok: true, fit, errors } : errors
+}
+
+/** Index of each line that stands at an integer order no part of another order explains, and that order. */
+function lockedLines(fit: JointFit, errors: FitErrors, predicted: readonly PredictedOrder[]): Map<number, number> {
+  const locked = new Map<number, number>()
+  const { wormOrders, lineCount } = fit.shape
+  if (wormOrders.length === 0) return locked
+  const turns = 2 * fit.time.halfSpanSeconds * fit.frequencies.wormHz
+  const taken = new Set(wormOrders)
+  for (let index = 0; index < lineCount; index++) {
+    const order = orderOf(fit, errors, listOscillations(fit)[wormOrders.length + index])
+    if (order === null) continue
+    const nearest = Math.round(order.value)
+    const isNear = Math.abs(order.value - nearest) <= 3 * (order.stderr ?? 0)
+    if (!isNear || nearest < 1 || nearest > LARGEST_ORDER || taken.has(nearest)) continue
+    const part = matchOrder(order, predicted, 1 / turns)
+    if (part !== null && !Number.isInteger(part.order)) continue
+    taken.add(nearest)
+    locked.set(index, nearest)
+  }
+  return locked
 }
 
 function periodOf(fit: JointFit, errors: FitErrors): Estimate {
