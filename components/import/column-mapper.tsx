@@ -10,6 +10,7 @@ import { formatBytes, formatCount } from '@/lib/units'
 import { choicesOf, setColumns, type ImportChoices, type ImportDraft } from './import-draft'
 import { importFieldFaults } from './import-faults'
 import { LayoutFields } from './layout-fields'
+import { NightFields } from './night-fields'
 import { PreviewGrid } from './preview-grid'
 import { RecordingFields } from './recording-fields'
 import { ScaleFields, type KnownOptics } from './scale-fields'
@@ -99,6 +100,7 @@ export function ColumnMapper(props: ColumnMapperProps) {
         <div className="flex flex-col gap-6">
           <SenseFields draft={draft} onDraft={onDraft} faults={faults} />
           <RecordingFields draft={draft} onDraft={onDraft} />
+          <NightFields facts={draft.facts} onFacts={(facts) => onDraft({ ...draft, facts })} />
         </div>
       </div>
       {children}

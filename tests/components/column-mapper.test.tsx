@@ -98,6 +98,8 @@ describe('ColumnMapper', () => {
     expect(onSubmit).not.toHaveBeenCalled()
     type(control('How it was proven'), 'one pulse west')
     await user.selectOptions(control('Correction in the mount'), 'off')
+    await user.selectOptions(control('Guiding'), 'off')
+    type(control('Temperature'), '−4')
     await user.click(submit())
 
     const choices = onSubmit.mock.calls[0][0]
@@ -113,7 +115,12 @@ describe('ColumnMapper', () => {
       exposureSeconds: 2.5,
       senseBasis: 'proven',
     })
-    expect(choices.facts).toMatchObject({ mountCorrection: 'off', senseProof: 'one pulse west' })
+    expect(choices.facts).toMatchObject({
+      mountCorrection: 'off',
+      senseProof: 'one pulse west',
+      guiding: 'off',
+      temperatureCelsius: -4,
+    })
     expect(choices.wheelTeeth).toBe(152)
   })
 
