@@ -58,7 +58,11 @@ export function SmallTable({ caption, head, rows, wordColumns = 1 }: SmallTableP
               {cells.map((cell, index) => (
                 <td
                   key={index}
-                  className={index < wordColumns ? 'py-1 text-left' : 'figures py-1 pl-2 text-right whitespace-nowrap'}
+                  className={
+                    index < wordColumns
+                      ? 'py-1 text-left leading-4'
+                      : 'figures py-1 pl-2 text-right text-xs whitespace-nowrap'
+                  }
                 >
                   {cell}
                 </td>

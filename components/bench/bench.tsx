@@ -4,11 +4,11 @@ import { useCallback, useMemo, useState, type ReactNode } from 'react'
 import { FindingText } from '@/components/findings/finding-text'
 import { Button } from '@/components/ui/button'
 import { Card } from '@/components/ui/card'
-import { FigureStrip } from '@/components/ui/figure-strip'
+import { FigureStrip, type KeyFigure } from '@/components/ui/figure-strip'
 import { Notice } from '@/components/ui/notice'
 import { ProgressBar } from '@/components/ui/progress-bar'
 import type { AnalysisOutcome, AnalysisResult, Progress, Recipe } from '@/lib/analysis/types'
-import { keyFigures } from '@/lib/findings/key-figures'
+import { keyFigures, type KeyFigureText } from '@/lib/findings/key-figures'
 import { reasonSentence, reasonTitle } from '@/lib/findings/reason-sentence'
 import { titleFinding } from '@/lib/findings/title-finding'
 import type { Note } from '@/lib/schemas/api'
@@ -82,10 +82,13 @@ export function Bench(props: BenchProps) {
 
   return (
     <div className="mx-auto flex w-full max-w-360 flex-col gap-4 px-8 py-6 max-sm:px-3">
-      <header className="flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
-        <div className="min-w-0 max-w-[60rem]">
-          <p className="text-sm text-soft">{props.crumbs ?? props.runLabel}</p>
-          <h1 className="mt-0.5 text-title font-semibold">
+      <header>
+        <div className="flex min-h-9 items-center justify-between gap-4">
+          <div className="min-w-0 text-sm text-soft">{props.crumbs ?? props.runLabel}</div>
+          {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
+        </div>
+        <div className="flex items-end justify-between gap-x-6 gap-y-3 max-lg:flex-col max-lg:items-start">
+          <h1 className="min-w-0 flex-1 text-title font-semibold">
             {result ? (
               <FindingText finding={titleFinding(result, recipe)} />
             ) : failure ? (
@@ -94,13 +97,10 @@ export function Bench(props: BenchProps) {
               `Reading ${props.runLabel}`
             )}
           </h1>
-        </div>
-        <div className="no-print flex flex-wrap items-center gap-2">
-          {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
-          {props.actions}
+          <div className="no-print flex shrink-0 flex-wrap items-center gap-2">{props.actions}</div>
         </div>
       </header>
-      {result ? <FigureStrip figures={keyFigures(result)} /> : null}
+      {result ? <FigureStrip figures={keyFigures(result).map(small)} /> : null}
       {failure ? (
         <Card className="p-5">
           <Notice tone="error" title="There is nothing to show yet">
@@ -137,6 +137,11 @@ export function Bench(props: BenchProps) {
   )
 }
 
+/** Uncertainties a step smaller, so that five figures stay on one line each. */
+function small({ uncertainty, ...figure }: KeyFigureText): KeyFigure {
+  return uncertainty === undefined ? figure : { ...figure, uncertainty: <span className="text-sm">{uncertainty}</span> }
+}
+
 const PROGRESS_WORDS: Record<Progress['stage'], string> = {
   reading: 'Reading the samples',
   cleaning: 'Looking for gaps and stray points',
@@ -162,14 +167,36 @@ function Computing({ progress, onCancel }: { progress: Progress | null; onCancel
 
 function UndoButtons({ undo, redo }: { undo: (() => void) | null; redo: (() => void) | null }) {
   return (
-    <>
-      <Button variant="quiet" disabled={!undo} title="Ctrl+Z" onClick={() => undo?.()}>
-        Undo
+    <div className="no-print flex shrink-0 gap-1">
+      <Button
+        variant="quiet"
+        className="border-transparent px-2 disabled:border-transparent disabled:bg-transparent"
+        disabled={!undo}
+        aria-label="Undo"
+        title="Undo (Ctrl+Z)"
+        onClick={() => undo?.()}
+      >
+        <Arrow />
       </Button>
-      <Button variant="quiet" disabled={!redo} title="Ctrl+Shift+Z" onClick={() => redo?.()}>
-        Redo
+      <Button
+        variant="quiet"
+        className="border-transparent px-2 disabled:border-transparent disabled:bg-transparent"
+        disabled={!redo}
+        aria-label="Redo"
+        title="Redo (Ctrl+Shift+Z)"
+        onClick={() => redo?.()}
+      >
+        <Arrow isMirrored />
       </Button>
-    </>
+    </div>
+  )
+}
+
+function Arrow({ isMirrored = false }: { isMirrored?: boolean }) {
+  return (
+    <svg viewBox="0 0 20 20" className={isMirrored ? 'size-5 -scale-x-100' : 'size-5'} aria-hidden="true">
+      <path d="M4 8h8a4 4 0 0 1 0 8H8M4 8l4-4M4 8l4 4" fill="none" stroke="currentColor" strokeWidth="1.6" />
+    </svg>
   )
 }
 

@@ -68,8 +68,6 @@ export function CorrectionStage(props: CorrectionStageProps) {
               />
             </AsideGroup>
             <MakeTable recipe={recipe} {...making} />
-            <TableFacts table={table} />
-            <RehearsalTable table={table} />
             <StageWarnings warnings={result.warnings} stage="correction" />
           </>
         ) : null
@@ -92,10 +90,13 @@ export function CorrectionStage(props: CorrectionStageProps) {
                   name="slip"
                   summary={`If the worm angle slips by ${formatNumber(table.rehearsal.slipForTenPercentDegrees, 1)}°, a tenth of the worm is back; beyond ${formatNumber(table.rehearsal.slipForNoHelpDegrees, 0)}° the table no longer helps.`}
                   makeFigure={(frame) => makeSlip(frame)!}
-                  heightPx={190}
                 />
               </div>
             ) : null}
+            <div className="mt-4 grid gap-x-10 gap-y-4 sm:grid-cols-2">
+              <TableFacts table={table} />
+              <RehearsalTable table={table} />
+            </div>
           </>
         ) : (
           <PictureSpace heightPx={result ? 120 : 238}>

@@ -36,9 +36,6 @@ export function HarmonicsStage({ result, recipe, change, isLocked }: StageInput)
           <>
             <HarmonicsTable result={result} />
             <PeriodFacts result={result} />
-            <p className="text-sm text-soft">
-              {harmonicCountSentence(result.modelChoice, recipe)} {errorModelSentence(result.errorModel)}
-            </p>
             <StageWarnings warnings={result.warnings} stage="harmonics" />
           </>
         ) : null
@@ -61,20 +58,24 @@ export function HarmonicsStage({ result, recipe, change, isLocked }: StageInput)
           </PictureSpace>
         )}
       </div>
+      {result?.worm ? (
+        <p className="mt-2 max-w-[85ch] text-sm text-soft">
+          {harmonicCountSentence(result.modelChoice, recipe)} {errorModelSentence(result.errorModel)}
+        </p>
+      ) : null}
     </Stage>
   )
 }
 
 function HarmonicsSettings({ result, recipe, change }: Pick<StageInput, 'result' | 'recipe' | 'change'>) {
   const { driveTrain } = recipe
-  const found = result?.worm?.harmonics.length
   return (
     <>
       <ChoiceSetting
         label="How many"
         value={String(recipe.harmonicCount)}
         options={[
-          { value: 'auto', label: recipe.harmonicCount === 'auto' && found ? `${found}, by evidence` : 'by evidence' },
+          { value: 'auto', label: 'by evidence' },
           ...Array.from({ length: 12 }, (_, index) => ({ value: String(index + 1), label: String(index + 1) })),
         ]}
         onValue={(value) =>

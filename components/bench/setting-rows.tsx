@@ -50,21 +50,23 @@ export function NumberSetting({ label, value, onValue, onEmpty, unit, min, max, 
   const [fault, setFault] = useState<string | null>(null)
   return (
     <Row id={id} label={label} fault={fault}>
-      <NumberInput
-        id={id}
-        className="setting-control"
-        value={value}
-        unit={unit}
-        min={min}
-        max={max}
-        isInteger={isInteger}
-        isRequired={!onEmpty}
-        onFault={setFault}
-        onValue={(next) => {
-          if (next !== null) onValue(next)
-          else onEmpty?.()
-        }}
-      />
+      <span className="flex items-center justify-end">
+        <NumberInput
+          id={id}
+          className="setting-control"
+          value={value}
+          min={min}
+          max={max}
+          isInteger={isInteger}
+          isRequired={!onEmpty}
+          onFault={setFault}
+          onValue={(next) => {
+            if (next !== null) onValue(next)
+            else onEmpty?.()
+          }}
+        />
+        {unit ? <span className="figures shrink-0 pr-0.5 text-xs text-soft">{unit}</span> : null}
+      </span>
     </Row>
   )
 }
@@ -96,7 +98,7 @@ export function ChoiceSetting<Value extends string>({ label, value, options, onV
         <svg
           aria-hidden="true"
           viewBox="0 0 12 12"
-          className="pointer-events-none absolute top-1/2 right-0.5 size-2.5 -translate-y-1/2 text-soft"
+          className="pointer-events-none absolute top-1/2 right-0 size-2.5 -translate-y-1/2 text-soft"
         >
           <path d="M2 4.5 6 8.5 10 4.5" fill="none" stroke="currentColor" strokeWidth="1.6" />
         </svg>
@@ -133,7 +135,7 @@ export function FactSetting({ label, children }: { label: string; children: Reac
   return (
     <p className="flex items-center justify-between gap-2 border-b border-rule py-1.5 text-sm">
       <span>{label}</span>
-      <span className="figures px-1 text-right">{children}</span>
+      <span className="figures px-0.5 text-right whitespace-nowrap">{children}</span>
     </p>
   )
 }

@@ -68,7 +68,7 @@ export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
                     'guide at least every',
                     result.rate.longestCorrectionIntervalSeconds === null
                       ? 'never needed'
-                      : `${formatDuration(result.rate.longestCorrectionIntervalSeconds)} for ${arcsec(recipe.toleranceSkyArcsec)}`,
+                      : formatDuration(result.rate.longestCorrectionIntervalSeconds),
                   ],
                   [
                     `unguided ${formatDuration(recipe.pictureExposureSeconds)} kept`,

@@ -8,7 +8,7 @@ import type { FigureFrame } from '@/lib/figures/figure'
 import { spectrumFigure } from '@/lib/figures/spectrum-figure'
 import { findingText } from '@/lib/findings/finding'
 import { spectrumFinding } from '@/lib/findings/spectrum-finding'
-import { formatEstimate, formatNumber, formatPeriod, formatProbability } from '@/lib/units'
+import { formatDuration, formatEstimate, formatNumber, formatPeriod, formatProbability } from '@/lib/units'
 import { SmallTable, StageWarnings } from './aside'
 import { NO_VIEWS, PictureSpace } from './picture-space'
 import { ChoiceSetting, FactSetting, SwitchSetting } from './setting-rows'
@@ -76,7 +76,6 @@ export function SpectrumStage({ result, views, recipe, change, notes, noteAction
           name="spectrum"
           summary={`${findingText(finding)} ${stemWords(result)}`}
           makeFigure={(frame) => makeFigure(frame)!}
-          heightPx={330}
           onPick={pick ? (periodSeconds) => pick({ kind: 'period', periodSeconds }) : undefined}
           legend={
             <>
@@ -109,8 +108,6 @@ function SpectrumSettings({ result, recipe, change }: Pick<StageInput, 'result' 
       <SwitchSetting
         label="Other lines"
         isOn={recipe.isLineSearchOn}
-        onLabel="looked for"
-        offLabel="left alone"
         onValue={(isLineSearchOn) => change('isLineSearchOn', { ...recipe, isLineSearchOn })}
       />
       <ChoiceSetting
@@ -146,7 +143,7 @@ function LinesTable({ result, recipe }: { result: AnalysisResult; recipe: Recipe
       ) : (
         <SmallTable
           caption="Lines beside the worm"
-          head={['source', 'order', 'period s', 'ampl. ″']}
+          head={['source', 'order', 'per. s', 'ampl. ″']}
           rows={lines.map(({ source, order, periodSeconds, amplitudeArcsec }) => [
             source ?? 'unexplained',
             order ? formatNumber(order.value, 3) : '–',
@@ -159,7 +156,7 @@ function LinesTable({ result, recipe }: { result: AnalysisResult; recipe: Recipe
         {lines.some(({ order }) => order !== null && Math.abs(order.value - Math.round(order.value)) > 0.01)
           ? 'A line of no whole order does not repeat with the worm, so no table can take it out. '
           : ''}
-        Swings faster than {formatPeriod(run.shortestPeriodSeconds)} are out of this cadence’s reach
+        Swings faster than {formatDuration(run.shortestPeriodSeconds)} are out of this cadence’s reach
         {tooFast.length > 0 ? `, among them ${tooFast.map(({ name }) => name).join(', ')}` : ''}.
       </p>
     </div>

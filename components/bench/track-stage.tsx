@@ -91,7 +91,6 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
           name="track"
           summary={`${findingText(finding)} ${driftWords(result)} Drag over the picture to choose a stretch.`}
           makeFigure={(frame) => makeFigure(frame)!}
-          heightPx={272}
           legend={
             <>
               <LegendEntry look="recorded">recorded</LegendEntry>

@@ -70,7 +70,6 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
             name="turn"
             summary={summary}
             makeFigure={(frame) => makeFigure(frame)!}
-            heightPx={330}
             onPick={pickAngle}
             legend={
               <>

@@ -6,7 +6,7 @@ import { dialPath, dialPoint, dialRadius, dialScale } from '@/lib/figures/dial'
 import { formatNumber, wrapDegrees } from '@/lib/units'
 import { SvgPicture } from './svg-picture'
 
-const SIZE = 400
+const SIZE = 420
 const CENTRE = SIZE / 2
 const RIM = 160
 
@@ -79,14 +79,7 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
             strokeLinejoin="round"
           />
           {scale.ringsArcsec.map((ring) => (
-            <text
-              key={ring}
-              x={radius(ring) + (ring > 0 ? -4 : 4)}
-              y={-3}
-              textAnchor={ring > 0 ? 'end' : 'start'}
-              className="figures fill-soft"
-              fontSize="12"
-            >
+            <text key={ring} x={radius(ring) + 3} y={-3} className="figures fill-soft" fontSize="12">
               {formatNumber(ring, decimals(ring), { isSigned: true })}
             </text>
           ))}

@@ -20,8 +20,6 @@ export interface PlotlyChartProps {
   /** Makes the figure for a width, the colours of the theme and the part of the axis that is shown. */
   makeFigure: (frame: FigureFrame) => Figure
   legend?: ReactNode
-  /** Height to keep free while the drawing is loaded. */
-  heightPx: number
   /** A stretch of the x axis was selected; `zoomIn` shows it alone. Without this a drag zooms at once. */
   onSelect?: (range: [number, number], zoomIn: () => void) => void
   /** A place on the x axis was clicked. */
@@ -31,16 +29,7 @@ export interface PlotlyChartProps {
 }
 
 /** The one place where Plotly draws: client only, `scatter` traces, no buttons or colours but ours. */
-export function PlotlyChart({
-  name,
-  summary,
-  makeFigure,
-  legend,
-  heightPx,
-  onSelect,
-  onPick,
-  children,
-}: PlotlyChartProps) {
+export function PlotlyChart({ name, summary, makeFigure, legend, onSelect, onPick, children }: PlotlyChartProps) {
   const holder = useRef<HTMLDivElement>(null)
   const widthPx = useWidth(holder)
   const colors = useChartColors()
@@ -81,7 +70,7 @@ export function PlotlyChart({
         aria-label={summary}
         aria-busy={parts === null}
         className="plotly-chart relative touch-pan-y select-none"
-        style={{ minHeight: heightPx }}
+        style={{ height: figure.layout.height }}
         onDoubleClick={() => setZoom(null)}
         {...drag.handlers}
       >

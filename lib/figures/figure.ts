@@ -74,8 +74,10 @@ export function baseAxis({ colors }: FigureFrame): Partial<LayoutAxis> {
     zeroline: false,
     showgrid: false,
     showline: false,
+    ticks: 'outside',
+    ticklen: 5,
     linecolor: colors.soft,
-    tickcolor: colors.soft,
+    tickcolor: 'rgba(0,0,0,0)',
     gridcolor: colors.faint,
     tickfont: { family: MONO, size: 12, color: colors.soft },
     spikecolor: colors.steel,
@@ -111,14 +113,15 @@ export function axisNote(
 
 /** A note's number in a plum box at the upper edge, and its line down through the picture. */
 export function noteMark(
-  mark: { number: number; x: number },
+  mark: { number: number; x: number; isLog?: boolean },
   frame: FigureFrame,
 ): { annotation: Partial<Annotation>; shape: Partial<Shape> } {
   const { colors } = frame
   return {
     annotation: {
       text: String(mark.number),
-      x: mark.x,
+      // Unlike shapes, annotations want the logarithm on a log axis.
+      x: mark.isLog ? Math.log10(mark.x) : mark.x,
       xref: 'x',
       y: 1,
       yref: 'paper',

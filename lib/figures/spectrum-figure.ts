@@ -44,7 +44,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
   const heightPx = narrow ? 320 : 330
   const stems = stemsOf(result)
   const periods = spectrum.frequencyHz.map((frequency) => 1 / frequency)
-  const [shortest, longest] = periodRange(periods)
+  const [shortest, longest] = periodRange(periods, result.run.durationSeconds)
   const range = frame.zoom ?? ([longest, shortest] as [number, number])
   const yRange = amplitudeRange(spectrum, stems)
   const yLog: [number, number] = [Math.log10(yRange[0]), Math.log10(yRange[1])]
@@ -59,7 +59,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
   })
   const floor = (values: Float64Array) =>
     values.map((value) => (value > 0 ? Math.max(value, yRange[0] / 2) : yRange[0] / 2))
-  const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.periodSeconds }, frame))
+  const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.periodSeconds, isLog: true }, frame))
   const ruler = wormPeriod === null ? null : rulerOf({ wormPeriod, range, width, frame })
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx, margin }),
@@ -70,8 +70,8 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
       range: xLog,
       tickvals: xTicks.values,
       ticktext: xTicks.labels,
-      ticks: 'outside',
       ticklen: 4,
+      tickcolor: colors.soft,
       showline: true,
     },
     yaxis: {
@@ -87,7 +87,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
       axisNote('arcsec amplitude', frame, { x: 0, y: 1, xanchor: 'left', yanchor: 'top', xshift: 4, yshift: -2 }),
       axisNote('period', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
       ...(ruler?.annotations ?? []),
-      chanceLabel(input, { range, yRange }),
+      chanceLabel(input),
       ...stemLabels(stems, { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b, frame }),
       ...marks.map(({ annotation }) => annotation),
     ],
@@ -281,26 +281,16 @@ function rulerOf({
   }
 }
 
-function chanceLabel(
-  { result, spectrum, chanceLevel, frame }: SpectrumFigureInput,
-  { range, yRange }: { range: [number, number]; yRange: [number, number] },
-): Partial<Annotation> {
-  const at = range[1]
-  const atFrequency = 1 / at
-  let nearest = 0
-  spectrum.frequencyHz.forEach((frequency, index) => {
-    if (Math.abs(frequency - atFrequency) < Math.abs(spectrum.frequencyHz[nearest] - atFrequency)) nearest = index
-  })
+function chanceLabel({ spectrum, chanceLevel, frame }: SpectrumFigureInput): Partial<Annotation> {
   const odds = formatProbability(chanceLevel)
   const text = isNarrow(frame) ? 'chance' : `chance reaches this high ${odds.replace(/^1 in/, '1 time in')}`
   const highest = extent(spectrum.chanceArcsec)[1]
-  const height = Math.max(yRange[0], result.lines.length + 1 > 0 ? highest : spectrum.chanceArcsec[nearest])
   return {
     text,
     x: 1,
     xref: 'paper',
     xanchor: 'right',
-    y: Math.log10(height),
+    y: Math.log10(highest),
     yref: 'y',
     yanchor: 'bottom',
     yshift: 2,
@@ -309,9 +299,11 @@ function chanceLabel(
   }
 }
 
-function periodRange(periods: Float64Array): [number, number] {
+/** Not longer than the run: nothing is known of what takes longer. */
+function periodRange(periods: Float64Array, durationSeconds: number): [number, number] {
   const [shortest, longest] = extent(periods)
-  return shortest < longest ? [shortest, longest] : [shortest / 2, longest * 2]
+  const end = durationSeconds > 2 * shortest ? Math.min(longest, durationSeconds) : longest
+  return shortest < end ? [shortest, end] : [shortest / 2, longest * 2]
 }
 
 /** From a third of a decade over the largest swing down to where the noise lies, at most four decades. */

@@ -30,15 +30,15 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
   const xTicks = angleTicks(range, plotWidth(frame, margin))
   const marks = notes.map((note) => noteMark({ number: note.number, x: note.angleDegrees }, frame))
   const layout: Partial<Layout> = {
-    ...baseLayout(frame, { heightPx: isNarrow(frame) ? 280 : 330, margin }),
+    ...baseLayout(frame, { heightPx: frame.widthPx < 420 ? 280 : 350, margin }),
     hovermode: 'closest',
     xaxis: {
       ...baseAxis(frame),
       range,
       tickvals: xTicks.values,
       ticktext: xTicks.labels,
-      ticks: 'outside',
       ticklen: 4,
+      tickcolor: colors.soft,
       showline: true,
     },
     yaxis: { ...baseAxis(frame), range: yRange, tickvals: yTicks.values, ticktext: yTicks.labels, showgrid: true },
@@ -120,13 +120,14 @@ export function slipFigure({ slip, slipForTenPercentDegrees, slipForNoHelpDegree
     },
     annotation: {
       text,
-      x: 1,
+      x: 0.5,
       xref: 'paper',
-      xanchor: 'right',
+      xanchor: 'center',
       y,
       yref: 'y',
       yanchor: 'bottom',
       showarrow: false,
+      bgcolor: colors.card,
       font: { size: 12, color: colors.soft },
     },
   })
@@ -140,8 +141,8 @@ export function slipFigure({ slip, slipForTenPercentDegrees, slipForNoHelpDegree
       range,
       tickvals: xTicks.values,
       ticktext: xTicks.labels,
-      ticks: 'outside',
       ticklen: 4,
+      tickcolor: colors.soft,
       showline: true,
     },
     yaxis: {

@@ -1,7 +1,7 @@
 import type { AnalysisResult, LineResult, Recipe } from '@/lib/analysis/types'
 import { formatNumber, formatPeriod, formatProbability } from '@/lib/units'
 import { finding, joinFindings, line, worm, type Finding } from './finding'
-import { capitalised, countWord, counted } from './words'
+import { capitalised, countWord, counted, withinSentence } from './words'
 
 const MOST_NAMED = 3
 
@@ -32,5 +32,5 @@ function linePart({ order, periodSeconds, source }: LineResult): Finding {
   const place = order
     ? finding`order ${worm(formatNumber(order.value, 3))}`
     : finding`${line(formatPeriod(periodSeconds.value))}`
-  return source === null ? finding`${place} has no known source` : finding`${place} fits the ${source}`
+  return source === null ? finding`${place} has no known source` : finding`${place} fits the ${withinSentence(source)}`
 }

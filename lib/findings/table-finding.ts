@@ -7,12 +7,13 @@ import { arcsec } from './words'
 export function tableFinding(table: RehearsedTable | null, binCount: number): Finding {
   if (!table) return finding`A correction table of ${String(binCount)} bins; it was not rehearsed here`
   const { peakToPeakBeforeArcsec, peakToPeakAfterArcsec, heldOutReduction } = table.rehearsal
-  const own = finding`The table takes the worm from ${arcsec(peakToPeakBeforeArcsec)} to ${worm(arcsec(peakToPeakAfterArcsec))} peak to peak on its own run`
-  if (heldOutReduction === null) return finding`${own}; there were too few turns to rehearse it on others`
+  if (heldOutReduction === null) {
+    return finding`Too few turns to rehearse this table on others; its bins alone would leave ${worm(arcsec(peakToPeakAfterArcsec))} of ${arcsec(peakToPeakBeforeArcsec)}`
+  }
   if (heldOutReduction <= 0) {
     return finding`On turns it was not made from, this table ${limit(`adds ${formatPercent(-heldOutReduction)}`)} to the RMS: do not load it`
   }
-  return finding`${own}, and ${worm(formatPercent(heldOutReduction))} off the RMS of turns it was not made from`
+  return finding`Rehearsed on turns it was not made from, the table takes ${worm(formatPercent(heldOutReduction))} off the RMS`
 }
 
 /** Whether playing the table turn after turn lets the axis creep. */

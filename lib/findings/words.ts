@@ -37,6 +37,11 @@ export function capitalised(text: string): string {
   return text.charAt(0).toUpperCase() + text.slice(1)
 }
 
+/** A name as it stands within a sentence: “Motor shaft” loses its capital, “RA gear” keeps it. */
+export function withinSentence(name: string): string {
+  return /^\p{Lu}\p{Ll}/u.test(name) ? name.charAt(0).toLowerCase() + name.slice(1) : name
+}
+
 /** "a", "a and b", "a, b and c". */
 export function listed(items: readonly string[]): string {
   if (items.length < 2) return items.join('')
