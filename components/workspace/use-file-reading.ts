@@ -9,7 +9,15 @@ import type { ImportFault, TablePreview, TextLayout } from '@/lib/formats/types'
 /** Where a file stands on its way to being read. */
 export type FileReading =
   | { kind: 'waiting'; fault: ImportFault | null }
-  | { kind: 'mapping'; file: IntakeFile; preview: TablePreview; draft: ImportDraft; fault: ImportFault | null }
+  | {
+      kind: 'mapping'
+      file: IntakeFile
+      preview: TablePreview
+      /** What the user has said about the layout; the rest is guessed anew from it. */
+      corrections: Partial<TextLayout>
+      draft: ImportDraft
+      fault: ImportFault | null
+    }
 
 interface FileReadingOptions {
   analysis: Pick<BenchAnalysis, 'preview' | 'loadFile'>
@@ -32,7 +40,8 @@ export function useFileReading({ analysis, earlier, onRead }: FileReadingOptions
         if (!outcome.ok) setReading({ kind: 'waiting', fault: outcome.fault })
         else {
           const { preview } = outcome
-          setReading({ kind: 'mapping', file, preview, draft: startDraft(preview, earlier), fault: null })
+          const draft = startDraft(preview, earlier)
+          setReading({ kind: 'mapping', file, preview, corrections: {}, draft, fault: null })
         }
       } finally {
         setBusy(false)
@@ -48,12 +57,13 @@ export function useFileReading({ analysis, earlier, onRead }: FileReadingOptions
   const correctLayout = useCallback(
     async (changes: Partial<TextLayout>) => {
       if (reading.kind !== 'mapping') return
-      const outcome = await previewBytes(reading.file.bytes, { ...reading.preview.layout, ...changes })
+      const corrections = { ...reading.corrections, ...changes }
+      const outcome = await previewBytes(reading.file.bytes, corrections)
       setReading((now) => {
         if (now.kind !== 'mapping') return now
         if (!outcome.ok) return { ...now, fault: outcome.fault }
         const { preview } = outcome
-        return { ...now, preview, draft: withPreview(now.draft, now.preview, preview), fault: null }
+        return { ...now, preview, corrections, draft: withPreview(now.draft, now.preview, preview), fault: null }
       })
     },
     [previewBytes, reading],

@@ -1,0 +1,128 @@
+import { readFile } from 'node:fs/promises'
+import { expect, test } from '@playwright/test'
+import Papa from 'papaparse'
+import { pixelRecording, semicolonRecording, visitorRecording } from './fixtures/recordings'
+import { BenchPage, firstNumber } from './support/bench-page'
+
+/** A wheel of 180 teeth: 86164.0905 s of a sidereal day / 180 (Aoki et al. 1982, A&A 105, 359). */
+const WORM_PERIOD_SECONDS = 478.6894
+
+const newcomer = () => ({
+  name: 'Runa Velde',
+  email: `runa.${Date.now()}.${Math.floor(Math.random() * 1e6)}@visitor.example`,
+  password: 'eight quiet turns',
+})
+
+test('a visitor drops a file, signs up, saves, re-opens and takes a correction table away', async ({ page }) => {
+  const bench = new BenchPage(page)
+  const recording = visitorRecording()
+  const person = newcomer()
+
+  await bench.open()
+  await bench.drop(recording.file)
+  await expect(bench.title).toHaveText('Which column is what?')
+  await page.getByLabel('Correction in the mount').selectOption('off')
+  await bench.read()
+
+  const period = firstNumber(await bench.figure('Worm period'))
+  expect(Math.abs(period - WORM_PERIOD_SECONDS) / WORM_PERIOD_SECONDS).toBeLessThan(0.003)
+  await expect(bench.title).toContainText('each turn')
+
+  // A setting of one's own, which must survive the way through sign-up: it stands in the address.
+  await page.getByLabel('Bins').fill('60')
+  await page.getByLabel('Bins').press('Tab')
+  await expect(page).toHaveURL(/[?&]bins=60/)
+  const figuresBefore = await bench.allFigures()
+
+  await page.getByRole('button', { name: 'Save analysis' }).click()
+  await page.getByRole('link', { name: 'Sign up' }).last().click()
+  await page.getByLabel('Name', { exact: true }).fill(person.name)
+  await page.getByLabel('E-mail').fill(person.email)
+  await page.getByLabel('Password', { exact: true }).fill(person.password)
+  await page.getByRole('button', { name: 'Make an account' }).click()
+
+  const dialog = page.getByRole('dialog', { name: 'Save this analysis' })
+  await expect(dialog).toBeVisible({ timeout: 45_000 })
+  expect(await bench.allFigures()).toBe(figuresBefore)
+  await dialog.getByLabel('Name of the new project').fill('Garden mount')
+  await dialog.getByLabel('Name of the analysis').fill('First night')
+  await dialog.getByRole('button', { name: 'Save' }).click()
+  await expect(page).toHaveURL(/\/projects\/[0-9a-f-]+\/analyses\/[0-9a-f-]+/, { timeout: 45_000 })
+  expect(await bench.allFigures()).toBe(figuresBefore)
+
+  // Computed again from what was stored, in the same engine: not one digit may differ.
+  await expect(page.getByText('every figure is the same to the last digit')).toBeVisible({ timeout: 45_000 })
+  await page.reload()
+  expect(await bench.allFigures()).toBe(figuresBefore)
+
+  await page.getByLabel('I know that the sign of this table is not proven').check()
+  await page.getByRole('button', { name: 'Make a correction table' }).click()
+  await expect(page).toHaveURL(/\/corrections\/[0-9a-f-]+$/)
+
+  const csvDownload = page.waitForEvent('download')
+  await page.getByRole('link', { name: 'Download CSV' }).click()
+  const csv = Papa.parse<string[]>(await readFile(await (await csvDownload).path(), 'utf8'), { skipEmptyLines: true })
+  expect(csv.errors).toEqual([])
+  const [header, ...records] = csv.data
+  expect(header.slice(0, 3)).toEqual(['bin', 'worm angle (deg)', 'value (arcsec)'])
+  expect(records).toHaveLength(60)
+  expect(new Set(records.map((record) => record.length))).toEqual(new Set([header.length]))
+  const values = records.map((record) => Number(record[2]))
+  // The mean is taken out, so that the table closes; and what it adds is the simulated worm turned round: 2 · 9″ or more
+  // of peak-to-peak, within what the second harmonic of 1.2″ and 60 bins can change.
+  expect(Math.abs(values.reduce((sum, value) => sum + value, 0) / values.length)).toBeLessThan(1e-9)
+  const peakToPeak = Math.max(...values) - Math.min(...values)
+  expect(peakToPeak).toBeGreaterThan(17)
+  expect(peakToPeak).toBeLessThan(20.5)
+
+  const jsonDownload = page.waitForEvent('download')
+  await page.getByRole('link', { name: 'JSON' }).click()
+  const json: unknown = JSON.parse(await readFile(await (await jsonDownload).path(), 'utf8'))
+  expect(JSON.stringify(json)).toContain('"value"')
+})
+
+test('the sample run shows the worm, and the bench undoes and redoes a setting', async ({ page }) => {
+  const bench = new BenchPage(page)
+  await bench.open()
+  await page.getByRole('button', { name: 'Take the sample run' }).click()
+  // 86164.0905 s / 152 teeth.
+  expect(Math.abs(firstNumber(await bench.figure('Worm period')) - 566.869)).toBeLessThan(1.5)
+
+  const drift = page.getByLabel('Drift', { exact: true })
+  await drift.selectOption('2')
+  await expect(page).toHaveURL(/[?&]drift=2/)
+  await page.getByRole('button', { name: 'Undo' }).click()
+  await expect(page).not.toHaveURL(/drift=/)
+  await page.getByRole('button', { name: 'Redo' }).click()
+  await expect(page).toHaveURL(/[?&]drift=2/)
+  await expect(drift).toHaveValue('2')
+
+  // A reload finds the file and the settings again.
+  await page.reload()
+  await expect(page.getByLabel('Drift', { exact: true })).toHaveValue('2', { timeout: 45_000 })
+  await bench.figure('Worm period')
+})
+
+for (const [what, recording] of [
+  ['semicolons and decimal commas', semicolonRecording()],
+  ['pixels that grow as the axis falls behind', pixelRecording()],
+] as const) {
+  test(`a recording with ${what} gives the same worm`, async ({ page }) => {
+    const bench = new BenchPage(page)
+    await bench.open()
+    await bench.choose(recording.file)
+    await expect(bench.title).toHaveText('Which column is what?')
+    if (recording.conversion.displacementUnit === 'px') {
+      await page.getByLabel('Image scale', { exact: true }).fill(String(recording.conversion.imageScaleArcsecPerPx))
+      await page.getByLabel('Declination of the field').fill(String(recording.conversion.declinationDegrees))
+      await page.getByLabel('A growing value means').selectOption('behind')
+    }
+    await bench.read()
+    const period = firstNumber(await bench.figure('Worm period'))
+    expect(Math.abs(period - WORM_PERIOD_SECONDS) / WORM_PERIOD_SECONDS).toBeLessThan(0.003)
+    // 2 × 9″ of the fundamental; the second harmonic of 1.2″ adds or takes a little.
+    const peakToPeak = firstNumber(await bench.figure(/peak to peak/i))
+    expect(peakToPeak).toBeGreaterThan(17)
+    expect(peakToPeak).toBeLessThan(20.5)
+  })
+}
