@@ -10,7 +10,7 @@ export default async function LandingPage() {
   return (
     <PageFrame>
       <div className="grid items-end gap-x-10 gap-y-4 pt-2 lg:grid-cols-[minmax(0,1fr)_auto]">
-        <div className="max-w-[48rem]">
+        <div className="max-w-[60rem]">
           <h1 className="text-title font-[640] text-balance">
             Find out what your mount’s worm does to your pictures, and whether a correction would help
           </h1>

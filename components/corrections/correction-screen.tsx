@@ -114,7 +114,11 @@ function CorrectionPage({ correction, projectName }: { correction: Correction; p
           summary={`${findingText(finding)}. One bar for each of ${table.bins.length} bins; the numbers stand in the table below.`}
         />
       </SheetSection>
-      <BinTable bins={table.bins} unit={unit} />
+      <SheetSection number={3} title="Bins" question="The numbers themselves, as the files hold them.">
+        <div className="max-w-2xl">
+          <BinTable bins={table.bins} unit={unit} />
+        </div>
+      </SheetSection>
     </>
   )
 }
@@ -143,7 +147,16 @@ function Origin({ correction }: { correction: Correction }) {
 
 function BinTable({ bins, unit }: { bins: readonly Bin[]; unit: string }) {
   const columns: readonly DataColumn<Bin>[] = binColumns(unit)
-  return <DataTable caption="bins" columns={columns} rows={bins} rowId={({ index }) => String(index)} pageSize={24} />
+  return (
+    <DataTable
+      caption="bins"
+      columns={columns}
+      rows={bins}
+      rowId={({ index }) => String(index)}
+      pageSize={24}
+      hasFilter={false}
+    />
+  )
 }
 
 const columnsByUnit = new Map<string, readonly DataColumn<Bin>[]>()
@@ -175,12 +188,11 @@ function binColumns(unit: string): readonly DataColumn<Bin>[] {
 
 function rehearsalFigures({ rehearsal, largestRateArcsecPerSecond }: RehearsedTable): KeyFigure[] {
   const figures: KeyFigure[] = [
-    { label: 'Worm, peak to peak, before', value: formatNumber(rehearsal.peakToPeakBeforeArcsec, 1), unit: '″' },
-    { label: 'After, on its own run', value: formatNumber(rehearsal.peakToPeakAfterArcsec, 2), unit: '″' },
     { label: 'Off the RMS of other turns', value: formatPercent(rehearsal.heldOutReduction) },
+    { label: 'Worm, peak to peak', value: formatNumber(rehearsal.peakToPeakBeforeArcsec, 1), unit: '″' },
+    { label: 'Of it, left by the bins', value: formatSignificant(rehearsal.peakToPeakAfterArcsec, 2), unit: '″' },
     { label: 'A tenth is back at a slip of', value: formatNumber(rehearsal.slipForTenPercentDegrees, 1), unit: '°' },
     { label: 'No help left at a slip of', value: formatNumber(rehearsal.slipForNoHelpDegrees, 0), unit: '°' },
-    { label: 'Lost to the bins', value: formatPercent(rehearsal.binningLossShare, 2) },
     { label: 'Steepest rate it asks for', value: formatSignificant(largestRateArcsecPerSecond, 2), unit: '″/s' },
   ]
   return figures

@@ -5,7 +5,6 @@ import { PageHeading } from '@/components/shell/page-heading'
 import { Button } from '@/components/ui/button'
 import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { DataState } from '@/components/ui/data-state'
-import { Actions } from '@/components/ui/dialog'
 import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
 import { Notice } from '@/components/ui/notice'
 import { SheetSection } from '@/components/ui/sheet-section'
@@ -93,11 +92,11 @@ function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: 
             {isReadOnly ? (
               <p className="text-sm text-soft">You can read this project; its owner and editors change it.</p>
             ) : (
-              <Actions className="mt-0">
+              <div>
                 <Button type="submit" variant="primary" disabled={isBusy || !isChanged}>
                   Save the drive train
                 </Button>
-              </Actions>
+              </div>
             )}
           </div>
         </form>

@@ -26,7 +26,7 @@ export function DriveTrainEditor({ value, onValue, isReadOnly = false }: DriveTr
     change({ stages: value.stages.map((other, i) => (i === index ? stage : other)) })
 
   return (
-    <fieldset disabled={isReadOnly} className="flex flex-col gap-5">
+    <fieldset disabled={isReadOnly} className="flex max-w-3xl flex-col gap-5">
       <legend className="sr-only">Drive train</legend>
       <div className="grid grid-cols-1 gap-4 sm:grid-cols-2">
         <NumberField

@@ -16,13 +16,15 @@ interface DataTableProps<Row extends RowData> {
   rowId: (row: Row) => string
   initialSort?: { id: string; desc: boolean }
   pageSize?: number
+  /** Whether a long table offers a filter. */
+  hasFilter?: boolean
   /** Shown beside the filter. */
   actions?: ReactNode
 }
 
 /** A table to sort, filter and page; arrow keys move between the rows' links. Columns should keep their identity. */
 export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
-  const { caption, columns, rows, rowId, initialSort, pageSize = 25, actions } = props
+  const { caption, columns, rows, rowId, initialSort, pageSize = 25, hasFilter = true, actions } = props
   const [query, setQuery] = useState('')
   const wanted = query.trim()
   const data = useMemo(
@@ -42,14 +44,15 @@ export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
     },
   })
   const byId = useMemo(() => new Map(columns.map((column) => [column.id, column])), [columns])
+  const isFilterShown = hasFilter && rows.length > 5
   const pageCount = table.getPageCount()
   const pageIndex = table.state.pagination.pageIndex
 
   return (
     <Card className="overflow-hidden">
-      {rows.length > 5 || actions ? (
+      {isFilterShown || actions ? (
         <div className="flex flex-wrap items-center justify-between gap-3 border-b border-rule px-5 py-3 max-sm:px-4">
-          {rows.length > 5 ? (
+          {isFilterShown ? (
             <TextInput
               type="search"
               aria-label={`Filter ${caption}`}

@@ -5,6 +5,7 @@
 export function localPath(next: unknown, fallback = '/projects'): string {
   if (typeof next !== 'string' || !/^\/(?![/\\])[\x21-\x7e]*$/.test(next)) return fallback
   const url = new URL(next, 'http://local.invalid')
-  if (url.origin !== 'http://local.invalid') return fallback
+  // `/..//host` is local as typed and `//host` once its dots are resolved.
+  if (url.origin !== 'http://local.invalid' || url.pathname.startsWith('//')) return fallback
   return `${url.pathname}${url.search}${url.hash}`
 }
