@@ -37,12 +37,12 @@ export function nextProgram(root) {
   return join(root, 'node_modules', 'next', 'dist', 'bin', 'next')
 }
 
-/** Builds unless the last build was made of the very same sources. */
-export async function ensureBuild(root, env) {
+/** Builds unless the last build was made of the very same sources (or in any case, when forced). */
+export async function ensureBuild(root, env, { isForced = false } = {}) {
   const note = join(root, '.next', 'turnwright-sources')
   const hash = hashOfSources(root)
   const isBuilt = existsSync(join(root, '.next', 'BUILD_ID')) && existsSync(note) && readFileSync(note, 'utf8') === hash
-  if (isBuilt) return
+  if (isBuilt && !isForced) return
   console.log('Building …')
   const code = await run(process.execPath, [nextProgram(root), 'build'], { cwd: root, env })
   if (code !== 0) throw new SetUpError('The build failed; Next.js says why above.')
