@@ -7,7 +7,7 @@ import { makeTable } from './analyse-table'
 import { buildViews, residualChance } from './analyse-views'
 import { describeDrift, describeLines, describeWorm } from './describe-fit'
 import { drain } from './drain'
-import { chooseWormModel, findLines, findWormStart, fitFinally } from './fit-run'
+import { chooseWormModel, findLines, findWormStart, fitFinally, withoutFreePeriod } from './fit-run'
 import type { FitRunContext, FittedRun, WormModel } from './fit-run'
 import { foldTurns, ordersUsefulOnLeftOutTurns } from './fold'
 import type { FoldInput } from './fold'
@@ -166,15 +166,26 @@ function* chooseModelFor(prepared: Prepared, recipe: Recipe): Generator<Progress
 }
 
 function* fitModel(modelled: Modelled, recipe: Recipe): Generator<Progress, Fitted | Failure> {
-  const { context, model } = modelled
-  const reference = context.gearPeriodSeconds ?? (model.wormHz === null ? null : 1 / model.wormHz)
+  const { context } = modelled
+  const reference = context.gearPeriodSeconds ?? (modelled.model.wormHz === null ? null : 1 / modelled.model.wormHz)
   const predicted = reference === null ? [] : predictedOrders(recipe.driveTrain, reference)
-  const lines = yield* findLines(context, recipe, model)
-  if (!lines.ok) return lines
-  const fitted = yield* fitFinally(context, model, lines.found, predicted)
-  if (!fitted.ok) return fitted
-  const warnings = [...lines.warnings, ...fitted.warnings]
-  return { ok: true, fitted, predicted, parts: splitModel(fitted.fit, context.track), warnings }
+  const warnings: AnalysisWarning[] = []
+  let { model } = modelled
+  for (;;) {
+    const lines = yield* findLines(context, recipe, model)
+    if (!lines.ok) return lines
+    const fitted = yield* fitFinally(context, model, lines.found, predicted)
+    if (!fitted.ok) return fitted
+    const start = withoutFreePeriod(fitted, context)
+    if (start === null) {
+      warnings.push(...lines.warnings, ...fitted.warnings)
+      return { ok: true, fitted, predicted, parts: splitModel(fitted.fit, context.track), warnings }
+    }
+    // The swing does not stand out of the noise: a period of its own would be noise too.
+    const held = yield* chooseWormModel(context, recipe, start)
+    if (!held.ok) return held
+    model = held
+  }
 }
 
 function* foldRun({ context }: Modelled, { fitted, parts }: Fitted): Generator<Progress, Folded> {
@@ -207,8 +218,8 @@ interface DescribeInput {
 function describe({ columns, recipe, prepared, modelled, fitted, folded }: DescribeInput): AnalysisResult {
   const { cleaned } = prepared
   const { track } = cleaned
-  const { context, model } = modelled
-  const { fit, errors, found } = fitted.fitted
+  const { context } = modelled
+  const { fit, errors, found, model } = fitted.fitted
   const { conversion } = recipe
   const firstUsedTimeSeconds = track.timeSeconds[0]
   const lastUsedTimeSeconds = track.timeSeconds[track.timeSeconds.length - 1]
@@ -220,6 +231,7 @@ function describe({ columns, recipe, prepared, modelled, fitted, folded }: Descr
         firstUsedTimeSeconds,
         exposureSeconds,
         periodSource: model.start.source,
+        heldPeriodSeconds: model.start.heldPeriodSeconds,
         fittedPeriodSeconds: fitted.fitted.fittedPeriodSeconds,
         gearPeriodSeconds: context.gearPeriodSeconds,
       })

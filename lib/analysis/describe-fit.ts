@@ -60,6 +60,8 @@ export interface WormContext {
   firstUsedTimeSeconds: number
   exposureSeconds: number | null
   periodSource: WormResult['periodSource']
+  /** The period as it was given where it is held: one over one over it may differ in the last digit. */
+  heldPeriodSeconds: number | null
   fittedPeriodSeconds: Estimate | null
   gearPeriodSeconds: number | null
 }
@@ -95,7 +97,7 @@ export function describeWorm(fit: JointFit, errors: FitErrors, context: WormCont
   })
 
   const atReference = wormHarmonics(fit, oscillations, exposureSeconds)
-  const period = 1 / fit.frequencies.wormHz
+  const period = context.heldPeriodSeconds ?? 1 / fit.frequencies.wormHz
   const { highest, lowest } = curveExtrema(atReference)
   const gradient = new Float64Array(covariance.length)
   const steep = steepestPoint(atReference)

@@ -1,4 +1,4 @@
-import { estimateErrors, listOscillations } from './fit-covariance'
+import { amplitudeError, estimateErrors, listOscillations } from './fit-covariance'
 import type { FitErrors } from './fit-covariance'
 import { orderOf } from './describe-fit'
 import { matchOrder } from './gear-train'
@@ -35,6 +35,8 @@ export interface WormStart {
   frequencyHz: number | null
   isFree: boolean
   source: 'fitted' | 'gear' | 'typed'
+  /** The period where it is held, null where it is free or there is none. */
+  heldPeriodSeconds: number | null
   reason: Reason | null
   intervalSeconds: [number, number] | null
   warnings: AnalysisWarning[]
@@ -60,6 +62,7 @@ export interface FittedRun {
 
 const LARGEST_HARMONIC_COUNT = 12
 const LARGEST_ORDER = 64
+const LARGEST_LOCK_TOLERANCE = 0.2
 
 /** The stage's progress, so that a caller can hand it on. */
 const report = (stage: Progress['stage'], fraction: number): Progress => ({ stage, fraction })
@@ -85,6 +88,7 @@ export function findWormStart(context: FitRunContext, recipe: Recipe): WormStart
     frequencyHz: null,
     isFree: false,
     source: recipe.wormPeriod,
+    heldPeriodSeconds: null,
     reason,
     intervalSeconds,
     warnings,
@@ -96,8 +100,8 @@ export function findWormStart(context: FitRunContext, recipe: Recipe): WormStart
       return none('short-run')
     }
     if (1 / periodSeconds > context.highestFrequencyHz) return none('out-of-range')
-    const start = { frequencyHz: 1 / periodSeconds, isFree: false, source, reason: null, intervalSeconds: null }
-    return { ...start, warnings }
+    const start = { frequencyHz: 1 / periodSeconds, isFree: false, source, heldPeriodSeconds: periodSeconds }
+    return { ...start, reason: null, intervalSeconds: null, warnings }
   }
   if (recipe.wormPeriod === 'typed') {
     const typed = recipe.typedPeriodSeconds
@@ -130,7 +134,15 @@ export function findWormStart(context: FitRunContext, recipe: Recipe): WormStart
   const factor = findSubharmonic({ ...context, driftDegree, frequencyHz: found.frequencyHz })
   const frequencyHz = found.frequencyHz / factor
   if (factor > 1) warnings.push(warning('sub-harmonic-taken', { factor, periodSeconds: 1 / frequencyHz }))
-  return { frequencyHz, isFree: true, source: 'fitted', reason: null, intervalSeconds: null, warnings }
+  return {
+    frequencyHz,
+    isFree: true,
+    source: 'fitted',
+    heldPeriodSeconds: null,
+    reason: null,
+    intervalSeconds: null,
+    warnings,
+  }
 }
 
 /** A free period with a gear known: the peak within one resolution element of it, never a stronger line elsewhere. */
@@ -150,7 +162,15 @@ function freeNearGear(
   const withinHz: [number, number] = [gearHz - 0.7 / span, gearHz + 0.7 / span]
   const near = findStrongestPeriod({ ...context, driftDegree: 1, withinHz })
   const frequencyHz = near.ok ? near.frequencyHz : gearHz
-  return { frequencyHz, isFree: true, source: 'fitted', reason: null, intervalSeconds: null, warnings }
+  return {
+    frequencyHz,
+    isFree: true,
+    source: 'fitted',
+    heldPeriodSeconds: null,
+    reason: null,
+    intervalSeconds: null,
+    warnings,
+  }
 }
 
 /** Drift degree and harmonics for the start; without a worm the drift alone. */
@@ -266,7 +286,10 @@ export function* fitFinally(
       { ...request, worm: request.worm && { ...request.worm, isFree: true } },
       0.8,
     )
-    if (free.ok && free.fit.isConverged) fittedPeriodSeconds = periodOf(free.fit, free.errors)
+    if (free.ok && free.fit.isConverged) {
+      const asRun: FittedRun = { ...free, found, model, fittedPeriodSeconds: null, warnings }
+      if (withoutFreePeriod(asRun, context) === null) fittedPeriodSeconds = periodOf(free.fit, free.errors)
+    }
   }
   if (gearPeriodSeconds !== null && fittedPeriodSeconds?.stderr) {
     const standardErrors = Math.abs(fittedPeriodSeconds.value - gearPeriodSeconds) / fittedPeriodSeconds.stderr
@@ -309,7 +332,9 @@ function lockedLines(fit: JointFit, errors: FitErrors, predicted: readonly Predi
     const order = orderOf(fit, errors, listOscillations(fit)[wormOrders.length + index])
     if (order === null) continue
     const nearest = Math.round(order.value)
-    const isNear = Math.abs(order.value - nearest) <= 3 * (order.stderr ?? 0)
+    const tolerance = 3 * (order.stderr ?? 0)
+    // An order that is known to a fifth at best would be near an integer by chance.
+    const isNear = tolerance <= LARGEST_LOCK_TOLERANCE && Math.abs(order.value - nearest) <= tolerance
     if (!isNear || nearest < 1 || nearest > LARGEST_ORDER || taken.has(nearest)) continue
     const part = matchOrder(order, predicted, 1 / turns)
     if (part !== null && !Number.isInteger(part.order)) continue
@@ -317,6 +342,35 @@ function lockedLines(fit: JointFit, errors: FitErrors, predicted: readonly Predi
     locked.set(index, nearest)
   }
   return locked
+}
+
+/** Amplitude in standard errors that one harmonic at least must have for the period to be the record's own. */
+const STANDING_ERRORS = 5
+
+/**
+ * How to go on where the period is free but no harmonic reaches 5 standard errors: the gear's period held, or without a
+ * gear no worm figure at all. Null where the free period stands.
+ */
+export function withoutFreePeriod({ fit, errors, model }: FittedRun, context: FitRunContext): WormStart | null {
+  if (!fit.isWormFree) return null
+  const stands = listOscillations(fit)
+    .slice(0, fit.shape.wormOrders.length)
+    .some(({ column }) => {
+      const [a, b] = [fit.coefficients[column], fit.coefficients[column + 1]]
+      return Math.hypot(a, b) >= STANDING_ERRORS * amplitudeError(a, b, errors.reported, column)
+    })
+  if (stands) return null
+  const { gearPeriodSeconds } = context
+  if (gearPeriodSeconds === null) {
+    return { ...model.start, frequencyHz: null, isFree: false, reason: 'no-period' }
+  }
+  return {
+    ...model.start,
+    frequencyHz: 1 / gearPeriodSeconds,
+    isFree: false,
+    source: 'gear',
+    heldPeriodSeconds: gearPeriodSeconds,
+  }
 }
 
 function periodOf(fit: JointFit, errors: FitErrors): Estimate {

@@ -53,6 +53,9 @@ const SMALLEST_RSS_SHARE = 1e-4
 export function* prewhiten(request: PrewhitenRequest): Generator<void, PrewhitenResult | Failure> {
   const { track, highestFrequencyHz } = request
   const span = track.timeSeconds[track.timeSeconds.length - 1] - track.timeSeconds[0]
+  // What is left of a noise-free signal is the arithmetic's rounding and no line.
+  const largestValue = track.raArcsec.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
+  const roundingRss = track.raArcsec.length * (1e-9 * largestValue) ** 2
   const nyquistHz = 0.5 / request.cadenceSeconds
   const lines: FoundLine[] = []
   let wormHz = request.worm?.frequencyHz ?? null
@@ -72,6 +75,7 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
   yield
   while (lines.length < LARGEST_LINE_COUNT) {
     yield
+    if (fit.rss <= roundingRss) return finish('nothing-left')
     const peak = highestPeak(spectrum, highestFrequencyHz)
     if (peak === null || !isWorthFitting(spectrum, peak, highestFrequencyHz)) return finish('nothing-left')
     const known = listOscillations(fit).map((oscillation) => oscillation.frequencyHz)

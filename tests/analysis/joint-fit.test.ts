@@ -82,6 +82,7 @@ describe('fitJointly on the synthetic run of four turns', () => {
         firstUsedTimeSeconds: 0,
         exposureSeconds: null,
         periodSource: 'fitted',
+        heldPeriodSeconds: null,
         fittedPeriodSeconds: null,
         gearPeriodSeconds: null,
       },
