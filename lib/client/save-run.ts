@@ -35,9 +35,10 @@ export function saveAnalysis(projectId: string, analysis: z.input<typeof newAnal
   return sendJson('POST', `/api/projects/${projectId}/analyses`, newAnalysisSchema.parse(analysis), analysisSchema)
 }
 
-/** The run's stored columns, packed; the worker unpacks them. */
+/** The run's stored columns, packed; they travel as a gzip file, and the worker unpacks what it holds. */
 export async function readPackedColumns({ projectId, id }: Run): Promise<Uint8Array> {
   const response = await fetch(`/api/projects/${projectId}/runs/${id}/columns`)
   if (!response.ok) throw new Error('The stored columns could not be fetched. Reload the page to try again.')
-  return new Uint8Array(await response.arrayBuffer())
+  const packed = response.body?.pipeThrough(new DecompressionStream('gzip'))
+  return new Uint8Array(await new Response(packed).arrayBuffer())
 }

@@ -104,7 +104,7 @@ export const opticsChangeSchema = opticsFieldsSchema.extend({ version })
  * at most 64 MB, streamed): 201 runSchema with status 'uploaded'. 413 `too-large` with the limit in words.
  * PUT  …/runs/[runId]/import  importRunSchema: reads the stored file with these settings: 200 runSchema, 'ready';
  *      422 with the ImportFault's message, code, row and column.
- * GET  …/runs (runListSchema), …/runs/[runId], …/runs/[runId]/columns (packed columns, gzip as content encoding),
+ * GET  …/runs (runListSchema), …/runs/[runId], …/runs/[runId]/columns (packed columns as a gzip file),
  *      …/runs/[runId]/file (the original bytes). PATCH …/runs/[runId] changes name and facts. DELETE removes (editor).
  */
 export const runSchema = z.object({

@@ -79,7 +79,6 @@ test.each([1, MEGABYTE - 1, MEGABYTE, MEGABYTE + 1, 3 * MEGABYTE + 17])(
     const fileSha256 = createHash('sha256').update(bytes).digest('hex')
     expect(made).toMatchObject({ status: 'uploaded', name: 'Night', fileName: 'night.bin', byteLength, fileSha256 })
     const file = await call(runFile.GET, '/', { projectId, runId: made.id }, { cookie: editor.cookie })
-    expect(file.headers.get('content-length')).toBe(String(byteLength))
     expect(file.headers.get('content-disposition')).toContain('attachment; filename="night.bin"')
     expect(Buffer.from(await file.arrayBuffer()).equals(bytes)).toBe(true)
     const rows = await database.db.selectFrom('runFileChunks').select('bytes').where('runId', '=', made.id).execute()
@@ -180,9 +179,9 @@ test('reading a file keeps its columns to the bit, the choices, and remembers th
     importSettings: SETTINGS,
     conversion: CONVERSION,
   })
-  const plain = await call(runColumns.GET, '/', { projectId, runId: id }, { cookie: owner.cookie })
-  const packed = new Uint8Array(await plain.arrayBuffer())
-  expect(plain.headers.get('content-encoding')).toBeNull()
+  const stored = await call(runColumns.GET, '/', { projectId, runId: id }, { cookie: owner.cookie })
+  expect(stored.headers.get('content-type')).toBe('application/gzip')
+  const packed = new Uint8Array(gunzipSync(await stored.arrayBuffer()))
   expect(createHash('sha256').update(packed).digest('hex')).toBe(read.samplesSha256)
   const { columns } = unpackColumns(packed)
   const expected = recordingText()
@@ -192,11 +191,7 @@ test('reading a file keeps its columns to the bit, the choices, and remembers th
     .map((row) => row.split(',').map(Number))
   expect([...columns.timeSeconds]).toEqual(expected.map(([time]) => time))
   expect([...columns.displacement]).toEqual(expected.map(([, displacement]) => displacement))
-  const headers = { 'accept-encoding': 'br, gzip' }
-  const compressed = await call(runColumns.GET, '/', { projectId, runId: id }, { cookie: owner.cookie, headers })
-  expect(compressed.headers.get('content-encoding')).toBe('gzip')
-  expect(gunzipSync(await compressed.arrayBuffer()).equals(packed)).toBe(true)
-  const etag = compressed.headers.get('etag') ?? ''
+  const etag = stored.headers.get('etag') ?? ''
   const again = await call(
     runColumns.GET,
     '/',

@@ -20,7 +20,6 @@ export function GET(request: Request, context: RouteContext<'projectId' | 'runId
       },
     })
     const headers = attachment({ fileName: run.fileName, contentType: 'application/octet-stream' })
-    headers.set('content-length', String(run.byteLength))
     return new Response(stream, { headers })
   })
 }
