@@ -3,7 +3,7 @@ import { chmodSync, chownSync, closeSync, existsSync, mkdirSync, mkdtempSync, op
 import { rmSync, writeFileSync } from 'node:fs'
 import { connect } from 'node:net'
 import { tmpdir } from 'node:os'
-import { dirname, join } from 'node:path'
+import { join } from 'node:path'
 import { capture, isAlive, pause, SetUpError } from './processes.mjs'
 
 const USER = 'turnwright'
@@ -36,7 +36,6 @@ function withPasswordFile(password, account, work) {
 /** Makes the files of a new cluster with one superuser, reachable by password alone. */
 export function initialiseCluster({ programs, dataDir, password, account }) {
   if (existsSync(join(dataDir, 'PG_VERSION'))) return
-  makeOwnedFolder(dirname(dataDir), account)
   makeOwnedFolder(dataDir, account)
   const result = withPasswordFile(password, account, (file) =>
     capture(
