@@ -1,3 +1,4 @@
+import { drain } from './drain'
 import { factorQr, inverseGram, multiplyQ, multiplyQTransposed, solveUpper } from './least-squares'
 import type { QrFactors } from './least-squares'
 import { lineBlock, wormBlock } from './fit-columns'
@@ -137,6 +138,15 @@ export function listOscillations(fit: JointFit): FitOscillation[] {
  * @returns all covariances, or `singular` where the full Jacobian's columns depend on each other
  */
 export function estimateErrors(fit: JointFit, timeSeconds: Float64Array, cadenceSeconds: number): FitErrors | Failure {
+  return drain(estimateErrorsInSteps(fit, timeSeconds, cadenceSeconds))
+}
+
+/** The same between pauses, for long records. */
+export function* estimateErrorsInSteps(
+  fit: JointFit,
+  timeSeconds: Float64Array,
+  cadenceSeconds: number,
+): Generator<void, FitErrors | Failure> {
   const qr = factorQr(fit.jacobian)
   if (!qr.ok) return qr
   const { residual, rss, parameterCount } = fit
@@ -144,10 +154,13 @@ export function estimateErrors(fit: JointFit, timeSeconds: Float64Array, cadence
   const lagOne = lagOneCorrelation(timeSeconds, residual, cadenceSeconds)
   const correctedLagOne = correctLagOne(lagOne, sampleCount, parameterCount)
   const white = whiteCovariance(fit, qr)
+  yield
   const autoregressive = autoregressiveCovariance({ fit, qr, timeSeconds, cadenceSeconds, lagOne: correctedLagOne })
   const oscillations = listOscillations(fit)
   const linesHz = oscillations.map(({ frequencyHz }) => frequencyHz)
+  yield
   const spectrum = residualSpectrum(timeSeconds, residual, 0.5 / cadenceSeconds)
+  yield
   const powerLaw = fitPowerLaw(spectrum, { cadenceSeconds, linesHz })
   const variance = rss / (sampleCount - parameterCount)
   const span = timeSeconds[sampleCount - 1] - timeSeconds[0]

@@ -1,4 +1,4 @@
-import { amplitudeError, estimateErrors, listOscillations } from './fit-covariance'
+import { amplitudeError, estimateErrorsInSteps, listOscillations } from './fit-covariance'
 import type { FitErrors } from './fit-covariance'
 import { orderOf } from './describe-fit'
 import { matchOrder } from './gear-train'
@@ -317,7 +317,10 @@ function* fitWithErrors(
   const fit = yield* during(report('fitting', fraction), fitJointlyInSteps({ ...request, isPolished: true }))
   if (!fit.ok) return fit
   yield report('fitting', fraction + 0.04)
-  const errors = estimateErrors(fit, track.timeSeconds, cadenceSeconds)
+  const errors = yield* during(
+    report('fitting', fraction + 0.04),
+    estimateErrorsInSteps(fit, track.timeSeconds, cadenceSeconds),
+  )
   return errors.ok ? { ok: true, fit, errors } : errors
 }
 

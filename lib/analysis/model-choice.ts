@@ -1,11 +1,10 @@
 import { drain } from './drain'
 import { averageBlocks, scatterWithinBlocks } from './block-average'
 import type { BlockAverage } from './block-average'
-import { amplitudeError, autoregressiveCovariance, listOscillations } from './fit-covariance'
+import { listOscillations } from './fit-covariance'
 import { fitJointlyInSteps } from './joint-fit'
 import type { JointFit, JointFitRequest } from './joint-fit'
-import { factorQr } from './least-squares'
-import { correctLagOne, effectiveSampleCount, lagOneCorrelation } from './noise-model'
+import { autoregressiveFactor, correctLagOne, effectiveSampleCount, lagOneCorrelation } from './noise-model'
 import type { Failure, ModelCandidate, ModelChoice, Track } from './types'
 
 export interface ModelChoiceRequest {
@@ -80,7 +79,8 @@ export function* chooseModelInSteps(request: ModelChoiceRequest): Generator<void
   const corrected = correctLagOne(lagOne, sampleCount, richest.parameterCount)
   const effectiveCount = effectiveSampleCount(sampleCount, corrected)
   const richestCount = richest.shape.wormOrders.length
-  const highestCount = fixedHarmonicCount ?? Math.min(richestCount, standingOrders(richest, request, corrected) + 2)
+  const highestCount =
+    fixedHarmonicCount ?? Math.min(richestCount, standingOrders(richest, cadenceSeconds, corrected) + 2)
 
   // Below this a residual is the rounding of the arithmetic and no evidence.
   const largestValue = track.raArcsec.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
@@ -99,7 +99,7 @@ export function* chooseModelInSteps(request: ModelChoiceRequest): Generator<void
         driftDegree,
         harmonicCount: count,
         bic: informationCriterion({
-          rss: Math.max(rss, Number.MIN_VALUE),
+          rss: Math.max(rss, smallestRss),
           sampleCount,
           effectiveCount,
           parameterCount,
@@ -168,38 +168,54 @@ function baseRequest(request: ModelChoiceRequest): Omit<JointFitRequest, 'driftD
   return { track, lines, highestFrequencyHz, isPolished: false }
 }
 
-/** The fit with everything allowed; where its columns depend on each other, with ever fewer harmonics. */
+/**
+ * The fit with everything allowed; where its columns depend on each other, with ever fewer harmonics. In a long record
+ * the period is found on block means and then held for one pass over all samples, whose residual is what is wanted.
+ */
 function* fitRichest(
   request: ModelChoiceRequest,
   driftDegree: number,
   count: number,
 ): Generator<void, JointFit | Failure> {
+  const { track, cadenceSeconds, worm, lines } = request
+  const size = lines.length === 0 && worm.isFree ? blockSize(request) : 1
   let fit: JointFit | Failure = { ok: false, reason: 'singular' }
   for (let k = count; k >= 1; k--) {
-    fit = yield* fitJointlyInSteps({
-      ...baseRequest(request),
-      driftDegree,
-      worm: { ...request.worm, orders: firstOrders(k) },
-    })
+    const orders = firstOrders(k)
+    let { frequencyHz } = worm
+    if (size > 1) {
+      const blocks = averageBlocks(track, { size, cadenceSeconds })
+      const rough = { ...baseRequest(request), track: blocks.track, driftDegree, worm: { ...worm, orders } }
+      const found = yield* fitJointlyInSteps(rough)
+      if (found.ok) frequencyHz = found.frequencies.wormHz
+    }
+    const isFree = worm.isFree && size === 1
+    fit = yield* fitJointlyInSteps({ ...baseRequest(request), driftDegree, worm: { orders, frequencyHz, isFree } })
+    if (fit.ok && worm.isFree && !isFree) return { ...fit, parameterCount: fit.parameterCount + 1 }
     if (fit.ok || request.fixedHarmonicCount !== null) return fit
   }
   return fit
 }
 
-/** The highest order whose amplitude is at least 3 AR(1) standard errors in the richest fit. */
-function standingOrders(fit: JointFit, request: ModelChoiceRequest, lagOne: number): number {
-  const qr = factorQr(fit.jacobian)
-  if (!qr.ok) return fit.shape.wormOrders.length
-  const { cadenceSeconds, track } = request
-  const covariance = autoregressiveCovariance({ fit, qr, timeSeconds: track.timeSeconds, cadenceSeconds, lagOne })
+/** The highest order whose amplitude is at least 3 standard errors √(2s²F(r, f)/N) in the richest fit. */
+function standingOrders(fit: JointFit, cadenceSeconds: number, lagOne: number): number {
+  const sampleCount = fit.residual.length
+  const variance = fit.rss / (sampleCount - fit.parameterCount)
   let highest = 1
   listOscillations(fit)
     .slice(0, fit.shape.wormOrders.length)
-    .forEach(({ column }, index) => {
-      const [a, b] = [fit.coefficients[column], fit.coefficients[column + 1]]
-      if (Math.hypot(a, b) >= 3 * amplitudeError(a, b, covariance, column)) highest = fit.shape.wormOrders[index]
+    .forEach(({ column, frequencyHz }, index) => {
+      const amplitude = Math.hypot(fit.coefficients[column], fit.coefficients[column + 1])
+      const factor = autoregressiveFactor(lagOne, frequencyHz, cadenceSeconds)
+      if (amplitude >= 3 * Math.sqrt((2 * variance * factor) / sampleCount)) highest = fit.shape.wormOrders[index]
     })
   return highest
+}
+
+/** Samples per block: at most a 60th of a turn, and no more than brings the record down to what is fitted directly. */
+function blockSize({ track, cadenceSeconds, worm }: ModelChoiceRequest): number {
+  const longest = Math.floor(1 / (worm.frequencyHz * 60 * cadenceSeconds))
+  return Math.max(1, Math.min(Math.ceil(track.timeSeconds.length / DIRECT_SAMPLE_COUNT), longest))
 }
 
 interface Search {
@@ -214,10 +230,9 @@ interface Search {
  * inside the blocks taken from the richest fit. Lines are taken off first then, for block means would weaken them.
  */
 function prepareSearch(request: ModelChoiceRequest, richest: JointFit): Search {
-  const { track, cadenceSeconds, worm, lines } = request
+  const { track, cadenceSeconds, lines } = request
   const sampleCount = track.timeSeconds.length
-  const longest = Math.floor(1 / (worm.frequencyHz * 60 * cadenceSeconds))
-  const size = Math.min(Math.ceil(sampleCount / DIRECT_SAMPLE_COUNT), longest)
+  const size = blockSize(request)
   if (size < 2) return { track, lines, totalRss: (rss) => rss }
   const withoutLines = subtractLines(track, richest)
   const blocks: BlockAverage = averageBlocks(withoutLines, { size, cadenceSeconds })

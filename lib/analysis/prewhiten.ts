@@ -88,7 +88,7 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
     if (next.escapedLines.length > 0) return finish('escaped')
     if (fit.rss - next.rss < SMALLEST_RSS_SHARE * fit.rss) return finish('nothing-left')
     yield
-    const verdict = judgeLine(request, fit, next, index)
+    const verdict: Verdict | null = yield* judgeLine(request, fit, next, index)
     if (verdict === null) return finish('nothing-left')
     const found = next.frequencies.linesHz[index]
     const others = listOscillations(next).map((oscillation) => oscillation.frequencyHz)
@@ -130,13 +130,19 @@ function isWorthFitting(
   return level === null || peak.amplitude > 3 * level
 }
 
+interface Verdict {
+  falseAlarmProbability: number
+  signalToNoise: number
+  spectrum: ResidualSpectrum
+}
+
 /** The three conditions; null when one is not met. The spectrum of what is left serves the next search. */
-function judgeLine(
+function* judgeLine(
   { track, cadenceSeconds, highestFrequencyHz, chanceLevel }: PrewhitenRequest,
   before: JointFit,
   after: JointFit,
   index: number,
-): { falseAlarmProbability: number; signalToNoise: number; spectrum: ResidualSpectrum } | null {
+): Generator<void, Verdict | null> {
   const { timeSeconds } = track
   const oscillation = listOscillations(after)[after.shape.wormOrders.length + index]
   const { column, frequencyHz } = oscillation
@@ -153,12 +159,14 @@ function judgeLine(
   })
   if (falseAlarmProbability > chanceLevel) return null
 
+  yield
   const qr = factorQr(after.jacobian)
   if (!qr.ok) return null
   const lagOne = lagOneCorrelation(timeSeconds, after.residual, cadenceSeconds)
   const corrected = correctLagOne(lagOne, timeSeconds.length, after.parameterCount)
   const sandwich = autoregressiveCovariance({ fit: after, qr, timeSeconds, cadenceSeconds, lagOne: corrected })
   if (amplitude < SMALLEST_STANDARD_ERRORS * amplitudeError(a, b, sandwich, column)) return null
+  yield
   const linesHz = listOscillations(after).map((other) => other.frequencyHz)
   const powerLaw = fitPowerLaw(spectrum, { cadenceSeconds, linesHz })
   if (powerLaw.isPreferred) {
