@@ -73,9 +73,10 @@ export async function requireUser(request: Request): Promise<SignedInUser> {
   return user
 }
 
-/** Opens a session; the answer is the Set-Cookie header that carries its token. */
+/** Opens a session, and sweeps out the expired ones; the answer is the Set-Cookie header that carries its token. */
 export async function openSession(request: Request, userId: string): Promise<string> {
   const token = randomBytes(32).toString('base64url')
+  await lucia().deleteExpiredSessions()
   const userAgent = request.headers.get('user-agent')?.slice(0, 300) ?? null
   await lucia().createSession(userId, { user_agent: userAgent }, { sessionId: sessionIdOf(token) })
   return lucia().createSessionCookie(token).serialize()

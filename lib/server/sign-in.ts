@@ -2,6 +2,7 @@ import 'server-only'
 import type { z } from 'zod'
 import { database } from '@/db'
 import { insertAccountEvent } from '@/db/queries/audit'
+import { deleteExpiredLimits } from '@/db/queries/rate-limits'
 import { findUserForSignIn, insertUser } from '@/db/queries/users'
 import type { signInSchema, signUpSchema } from '@/lib/schemas/api'
 import type { SignedInUser } from './auth'
@@ -37,6 +38,7 @@ export async function signIn(request: Request, form: z.output<typeof signInSchem
     throw new AppError('wrong-credentials', 'The e-mail address or the password is not right')
   }
   await forgetFailures(limits[0])
+  await deleteExpiredLimits(database())
   await insertAccountEvent(database(), found.id, { action: 'account.sign-in', subject: found.email })
   return { id: found.id, displayName: found.displayName, email: found.email }
 }

@@ -4,7 +4,9 @@ import { POST as signOut } from '@/app/api/auth/sign-out/route'
 import { POST as signUp } from '@/app/api/auth/sign-up/route'
 import { GET as health } from '@/app/api/health/route'
 import { GET as me } from '@/app/api/me/route'
+import { POST as createProject } from '@/app/api/projects/route'
 import { openTestDatabase } from '../support/test-database'
+import { DRIVE_TRAIN } from '../support/test-project'
 import { call, cookieOf, PASSWORD, signUpPerson } from '../support/test-server'
 
 const database = openTestDatabase()
@@ -148,6 +150,32 @@ test('a session is extended while it is used, without a new cookie', async () =>
     .where('userId', '=', guest.id)
     .executeTakeFirstOrThrow()
   expect(expiresAt.getTime()).toBeGreaterThan(soon.getTime())
+})
+
+test.each([
+  ['sign-up', signUp, { ...person, email: 'elsewhere@example.org' }],
+  ['sign-in', signIn, { email: person.email, password: PASSWORD }],
+  ['sign-out', signOut, undefined],
+  ['projects', createProject, { name: 'Mount', driveTrain: DRIVE_TRAIN }],
+])('%s is refused to pages of other sites', async (_, handler, body) => {
+  const { cookie } = await signUpPerson('Careful')
+  for (const origin of [null, 'https://elsewhere.example']) {
+    const response = await call(handler, '/', {}, { method: 'POST', body, cookie, origin })
+    expect(response.status).toBe(403)
+    expect(response.headers.get('set-cookie')).toBeNull()
+  }
+  expect(await whoIs(cookie)).toBe('Careful')
+})
+
+test('signing in sweeps out expired sessions and counters', async () => {
+  const { db } = database
+  const past = new Date(Date.now() - 1000)
+  const guest = await signUpPerson('Gone')
+  await db.updateTable('sessions').set({ expiresAt: past }).where('userId', '=', guest.id).execute()
+  await db.insertInto('rateLimits').values({ key: 'old', hits: 1, expiresAt: past }).execute()
+  expect((await post(signIn, { email: person.email, password: PASSWORD })).status).toBe(200)
+  expect(await db.selectFrom('sessions').select('id').where('userId', '=', guest.id).execute()).toEqual([])
+  expect(await db.selectFrom('rateLimits').select('key').where('key', '=', 'old').execute()).toEqual([])
 })
 
 test('health answers while the database does', async () => {
