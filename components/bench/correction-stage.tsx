@@ -1,6 +1,6 @@
 'use client'
 
-import { useCallback, useRef } from 'react'
+import { useMemo, useRef } from 'react'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
 import { TableChart } from '@/components/charts/table-chart'
 import { useWidth } from '@/components/charts/use-width'
@@ -32,8 +32,8 @@ export function CorrectionStage(props: CorrectionStageProps) {
   const table = result?.table ?? null
   const finding = result ? correctionFinding(result, recipe) : null
   const slip = views?.slip ?? null
-  const makeSlip = useCallback(
-    (frame: FigureFrame) => (slip && table ? slipFigure({ slip, ...table.rehearsal, frame }) : null),
+  const makeSlip = useMemo(
+    () => (slip && table ? (frame: FigureFrame) => slipFigure({ slip, ...table.rehearsal, frame }) : null),
     [slip, table],
   )
   const marks =
@@ -84,12 +84,12 @@ export function CorrectionStage(props: CorrectionStageProps) {
               notes={marks}
               isNarrow={width > 0 && width < 560}
             />
-            {slip ? (
+            {makeSlip ? (
               <div className="mt-4">
                 <PlotlyChart
                   name="slip"
                   summary={`If the worm angle slips by ${formatNumber(table.rehearsal.slipForTenPercentDegrees, 1)}°, a tenth of the worm is back; beyond ${formatNumber(table.rehearsal.slipForNoHelpDegrees, 0)}° the table no longer helps.`}
-                  makeFigure={(frame) => makeSlip(frame)!}
+                  makeFigure={makeSlip}
                 />
               </div>
             ) : null}

@@ -228,7 +228,7 @@ function NoteText({ label, initial, saveLabel, onSave, onCancel }: NoteTextProps
         autoFocus
         rows={3}
         maxLength={4000}
-        className="text-sm"
+        className="resize-none text-sm"
         value={text}
         onChange={(event) => setText(event.target.value)}
       />

@@ -1,6 +1,6 @@
 'use client'
 
-import { useCallback, useState } from 'react'
+import { useMemo, useState } from 'react'
 import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
 import type { AnalysisResult, Recipe, WindowName } from '@/lib/analysis/types'
@@ -34,25 +34,17 @@ export function SpectrumStage({ result, views, recipe, change, notes, noteAction
     actions: noteActions,
     startAt: result ? { kind: 'period', periodSeconds: result.worm?.periodSeconds.value ?? 100 } : null,
   })
-  const marks = own.flatMap(({ number, note }) =>
+  const placed = own.flatMap(({ number, note }) =>
     note.anchor.kind === 'period' ? [{ number, periodSeconds: note.anchor.periodSeconds }] : [],
   )
-  const marksKey = JSON.stringify(marks)
+  const placedKey = JSON.stringify(placed)
   const { chanceLevel } = recipe
-  const makeFigure = useCallback(
-    (frame: FigureFrame) =>
-      result && views
-        ? spectrumFigure({
-            result,
-            spectrum: views.spectrum,
-            chanceLevel,
-            isBeforeShown,
-            notes: JSON.parse(marksKey),
-            frame,
-          })
-        : null,
-    [result, views, chanceLevel, isBeforeShown, marksKey],
-  )
+  const makeFigure = useMemo(() => {
+    if (!result || !views) return null
+    const marks: typeof placed = JSON.parse(placedKey)
+    return (frame: FigureFrame) =>
+      spectrumFigure({ result, spectrum: views.spectrum, chanceLevel, isBeforeShown, notes: marks, frame })
+  }, [result, views, chanceLevel, isBeforeShown, placedKey])
   const finding = result ? spectrumFinding(result, recipe) : null
 
   return (
@@ -71,11 +63,11 @@ export function SpectrumStage({ result, views, recipe, change, notes, noteAction
         </>
       }
     >
-      {result && views && finding ? (
+      {result && finding && makeFigure ? (
         <PlotlyChart
           name="spectrum"
           summary={`${findingText(finding)} ${stemWords(result)}`}
-          makeFigure={(frame) => makeFigure(frame)!}
+          makeFigure={makeFigure}
           onPick={pick ? (periodSeconds) => pick({ kind: 'period', periodSeconds }) : undefined}
           legend={
             <>

@@ -1,6 +1,6 @@
 'use client'
 
-import { useCallback, useState } from 'react'
+import { useMemo, useState } from 'react'
 import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
 import { Button } from '@/components/ui/button'
@@ -34,26 +34,18 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
     actions: noteActions,
     startAt: result ? { kind: 'time', timeSeconds: result.run.firstUsedTimeSeconds } : null,
   })
-  const marks = own.flatMap(({ number, note }) =>
+  const placed = own.flatMap(({ number, note }) =>
     note.anchor.kind === 'time' ? [{ number, timeSeconds: note.anchor.timeSeconds }] : [],
   )
-  const marksKey = JSON.stringify(marks)
+  const placedKey = JSON.stringify(placed)
   const sense = senseMark(recipe.conversion.senseBasis)
   const { excludedSpans } = recipe
-  const makeFigure = useCallback(
-    (frame: FigureFrame) =>
-      result && views
-        ? trackFigure({
-            result,
-            track: views.track,
-            excludedSpans,
-            notes: JSON.parse(marksKey),
-            senseMark: sense,
-            frame,
-          })
-        : null,
-    [result, views, excludedSpans, marksKey, sense],
-  )
+  const makeFigure = useMemo(() => {
+    if (!result || !views) return null
+    const marks: typeof placed = JSON.parse(placedKey)
+    return (frame: FigureFrame) =>
+      trackFigure({ result, track: views.track, excludedSpans, notes: marks, senseMark: sense, frame })
+  }, [result, views, excludedSpans, placedKey, sense])
   const finding = result ? trackFinding(result) : null
 
   function leaveOut(span: { startSeconds: number; endSeconds: number }) {
@@ -86,11 +78,11 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
         </>
       }
     >
-      {result && views && finding ? (
+      {result && views && finding && makeFigure ? (
         <PlotlyChart
           name="track"
           summary={`${findingText(finding)} ${driftWords(result)} Drag over the picture to choose a stretch.`}
-          makeFigure={(frame) => makeFigure(frame)!}
+          makeFigure={makeFigure}
           legend={
             <>
               <LegendEntry look="recorded">recorded</LegendEntry>

@@ -1,6 +1,6 @@
 'use client'
 
-import { useCallback } from 'react'
+import { useMemo } from 'react'
 import { DialChart } from '@/components/charts/dial-chart'
 import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
@@ -25,16 +25,17 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
     actions: noteActions,
     startAt: result?.worm ? { kind: 'worm-angle', angleDegrees: 0 } : null,
   })
-  const marks = own.flatMap(({ number, note }) =>
+  const placed = own.flatMap(({ number, note }) =>
     note.anchor.kind === 'worm-angle' ? [{ number, angleDegrees: note.anchor.angleDegrees }] : [],
   )
-  const marksKey = JSON.stringify(marks)
+  const placedKey = JSON.stringify(placed)
   const sense = senseMark(recipe.conversion.senseBasis)
   const turn = views?.turn ?? null
-  const makeFigure = useCallback(
-    (frame: FigureFrame) => (turn ? turnFigure({ turn, senseMark: sense, notes: JSON.parse(marksKey), frame }) : null),
-    [turn, sense, marksKey],
-  )
+  const makeFigure = useMemo(() => {
+    if (!turn) return null
+    const marks: typeof placed = JSON.parse(placedKey)
+    return (frame: FigureFrame) => turnFigure({ turn, senseMark: sense, notes: marks, frame })
+  }, [turn, sense, placedKey])
   const finding = result ? turnFinding(result) : null
   const pickAngle = pick ? (angleDegrees: number) => pick({ kind: 'worm-angle', angleDegrees }) : undefined
   const summary = finding && result ? `${findingText(finding)} ${extremaWords(result, sense)}` : ''
@@ -63,13 +64,19 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
         ) : null
       }
     >
-      {result?.worm && turn ? (
+      {result?.worm && turn && makeFigure ? (
         <div className="grid items-start gap-x-6 gap-y-4 md:grid-cols-[minmax(0,6fr)_minmax(0,7fr)]">
-          <DialChart turn={turn} summary={`${summary} As a dial.`} senseMark={sense} notes={marks} onPick={pickAngle} />
+          <DialChart
+            turn={turn}
+            summary={`${summary} As a dial.`}
+            senseMark={sense}
+            notes={placed}
+            onPick={pickAngle}
+          />
           <PlotlyChart
             name="turn"
             summary={summary}
-            makeFigure={(frame) => makeFigure(frame)!}
+            makeFigure={makeFigure}
             onPick={pickAngle}
             legend={
               <>

@@ -79,7 +79,14 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
             strokeLinejoin="round"
           />
           {scale.ringsArcsec.map((ring) => (
-            <text key={ring} x={radius(ring) + 3} y={-3} className="figures fill-soft" fontSize="12">
+            <text
+              key={ring}
+              x={radius(ring) + (ring > 0 ? -2 : 3)}
+              textAnchor={ring > 0 ? 'end' : 'start'}
+              y={-3}
+              className="figures fill-soft"
+              fontSize="12"
+            >
               {formatNumber(ring, decimals(ring), { isSigned: true })}
             </text>
           ))}

@@ -1,6 +1,6 @@
 'use client'
 
-import { useRef, useState, type PointerEvent } from 'react'
+import { useRef, useState, type PointerEvent, type SyntheticEvent } from 'react'
 import type { Figure } from '@/lib/figures/figure'
 
 /** Moves below this are a click. */
@@ -14,6 +14,8 @@ export interface AxisDrag {
     onPointerMove: (event: PointerEvent<HTMLElement>) => void
     onPointerUp: (event: PointerEvent<HTMLElement>) => void
     onPointerCancel: () => void
+    onMouseDownCapture: (event: SyntheticEvent) => void
+    onTouchStartCapture: (event: SyntheticEvent) => void
   }
 }
 
@@ -41,14 +43,12 @@ export function useAxisDrag({ axis, onSelect, onPick }: AxisDragOptions): AxisDr
       onPointerDown(event) {
         if (event.button !== 0) return
         start.current = { x: place(event).px, pointerId: event.pointerId }
+        event.currentTarget.setPointerCapture(event.pointerId)
       },
       onPointerMove(event) {
         if (!start.current) return
         const { px } = place(event)
         if (Math.abs(px - start.current.x) < CLICK_PX) return
-        if (!event.currentTarget.hasPointerCapture(start.current.pointerId)) {
-          event.currentTarget.setPointerCapture(start.current.pointerId)
-        }
         setBand({ leftPx: Math.min(px, start.current.x), widthPx: Math.abs(px - start.current.x) })
       },
       onPointerUp(event) {
@@ -67,8 +67,15 @@ export function useAxisDrag({ axis, onSelect, onPick }: AxisDragOptions): AxisDr
         start.current = null
         setBand(null)
       },
+      onMouseDownCapture: keepToOurselves,
+      onTouchStartCapture: keepToOurselves,
     },
   }
+}
+
+/** The drawing below would begin a drag of its own, and keep the page from being scrolled by touch. */
+function keepToOurselves(event: SyntheticEvent): void {
+  event.stopPropagation()
 }
 
 /** Data value at a share 0 … 1 of the axis from its left end. */

@@ -80,10 +80,8 @@ export function baseAxis({ colors }: FigureFrame): Partial<LayoutAxis> {
     tickcolor: 'rgba(0,0,0,0)',
     gridcolor: colors.faint,
     tickfont: { family: MONO, size: 12, color: colors.soft },
-    spikecolor: colors.steel,
-    spikethickness: 1,
-    spikedash: 'dot',
-    spikemode: 'across',
+    // Plotly sets its spikes on white, whatever the theme.
+    showspikes: false,
   }
 }
 

@@ -14,7 +14,7 @@ export interface PlacedLabel extends LabelPoint {
 const CHARACTER_PX = 7.2
 const HEIGHT_PX = 16
 
-interface Box {
+export interface Box {
   left: number
   right: number
   top: number
@@ -26,9 +26,14 @@ interface Box {
  * lifted step by step. A label that finds no free place within eight steps is left out; the picture's table still names it.
  *
  * @param points in the order of their importance; pixels count from the upper left corner
+ * @param room.blocked places that other writing takes
  */
-export function placeLabels(points: readonly LabelPoint[], widthPx: number): PlacedLabel[] {
-  const taken: Box[] = points.map(({ xPx, yPx }) => ({ left: xPx - 5, right: xPx + 5, top: yPx - 5, bottom: yPx + 5 }))
+export function placeLabels(
+  points: readonly LabelPoint[],
+  { widthPx, blocked = [] }: { widthPx: number; blocked?: readonly Box[] },
+): PlacedLabel[] {
+  const dots = points.map(({ xPx, yPx }) => ({ left: xPx - 5, right: xPx + 5, top: yPx - 5, bottom: yPx + 5 }))
+  const taken: Box[] = [...blocked, ...dots]
   const placed: PlacedLabel[] = []
   for (const point of points) {
     const found = candidates(point).find((candidate) => {

@@ -202,7 +202,9 @@ function stemLabels(
     }))
     .filter(({ xPx }) => xPx >= 0 && xPx <= width)
     .sort((a, b) => b.stem.amplitudeArcsec - a.stem.amplitudeArcsec)
-  return placeLabels(points, width).map(({ xPx, yPx, text, anchor, liftPx }) => {
+  // The name of the axis stands in the upper left corner.
+  const blocked = [{ left: 0, right: 128, top: 0, bottom: 17 }]
+  return placeLabels(points, { widthPx: width, blocked }).map(({ xPx, yPx, text, anchor, liftPx }) => {
     const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
     return {
       text,

@@ -61,7 +61,6 @@ export function trackFigure(input: TrackFigureInput): Figure {
       ticklen: 4,
       tickcolor: colors.soft,
       showline: true,
-      showspikes: true,
       hoverformat: '.2f',
       unifiedhovertitle: { text: '%{x:.2f} min' },
     },

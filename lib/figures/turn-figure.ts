@@ -1,16 +1,6 @@
 import type { Annotation, Layout, Shape } from 'plotly.js-dist-min'
 import type { AnalysisViews } from '@/lib/analysis/types'
-import {
-  axisNote,
-  baseAxis,
-  baseLayout,
-  extent,
-  isNarrow,
-  noteMark,
-  plotWidth,
-  type Figure,
-  type FigureFrame,
-} from './figure'
+import { axisNote, baseAxis, baseLayout, extent, noteMark, plotWidth, type Figure, type FigureFrame } from './figure'
 import { niceTicks, type Ticks } from './ticks'
 
 export interface TurnFigureInput {

@@ -21,8 +21,7 @@ function missingPart(result: AnalysisResult): string {
     items.push({ text: `${counted(gaps.length, 'gap')} of ${formatDuration(total)} together`, isOne: false })
   }
   for (const { reason, count } of result.leftOut) {
-    if (count > 0 && !(reason === 'excluded' && gaps.length > 0))
-      items.push({ text: leftOutText(reason, count), isOne: count === 1 })
+    if (count > 0) items.push({ text: leftOutText(reason, count), isOne: count === 1 })
   }
   if (items.length === 0) return '; nothing is left out'
   const verb = items.length === 1 && items[0].isOne ? 'is' : 'are'

@@ -80,7 +80,6 @@ export function exampleRecipe(): Recipe {
       senseBasis: 'proven',
       exposureSeconds: 2,
     },
-    excludedSpans: [GAP],
     driveTrain: {
       axisKind: 'worm',
       wheelTeeth: 152,
@@ -115,12 +114,9 @@ function bins(): TableBin[] {
 export function exampleResult(): AnalysisResult {
   return {
     engineVersion: '0.1.0',
-    rows: 1366,
+    rows: 1343,
     used: 1340,
-    leftOut: [
-      { reason: 'excluded', count: 23 },
-      { reason: 'stray', count: 3 },
-    ],
+    leftOut: [{ reason: 'stray', count: 3 }],
     run: {
       durationSeconds: DURATION_SECONDS,
       medianCadenceSeconds: CADENCE_SECONDS,
