@@ -21,6 +21,7 @@ test('a visitor drops a file, signs up, saves, re-opens and takes a correction t
   await bench.open()
   await bench.drop(recording.file)
   await expect(bench.title).toHaveText('Which column is what?')
+  await bench.measuredOnTheAxis()
   await page.getByLabel('Correction in the mount').selectOption('off')
   await bench.read()
 
@@ -115,8 +116,8 @@ for (const [what, recording] of [
     if (recording.conversion.displacementUnit === 'px') {
       await page.getByLabel('Image scale', { exact: true }).fill(String(recording.conversion.imageScaleArcsecPerPx))
       await page.getByLabel('Declination of the field').fill(String(recording.conversion.declinationDegrees))
-      await page.getByLabel('A growing value means').selectOption('behind')
-    }
+      await page.getByLabel('Growing values mean').selectOption('behind')
+    } else await bench.measuredOnTheAxis()
     await bench.read()
     const period = firstNumber(await bench.figure('Worm period'))
     expect(Math.abs(period - WORM_PERIOD_SECONDS) / WORM_PERIOD_SECONDS).toBeLessThan(0.003)

@@ -32,6 +32,10 @@ export class BenchPage {
     await this.page.getByLabel('Recording file').setInputFiles(file)
   }
 
+  async measuredOnTheAxis(): Promise<void> {
+    await this.page.getByLabel('The displacement is measured').selectOption('axis')
+  }
+
   /** Sends the form with the columns as they are. */
   async read(): Promise<void> {
     await this.page.getByRole('button', { name: 'Show the worm' }).click()
