@@ -4,7 +4,7 @@ import { fileURLToPath } from 'node:url'
 import { checkNodeVersion, ensureDependencies } from './local/dependencies.mjs'
 import { openOwnCluster } from './local/own-cluster.mjs'
 import { freePortFrom, isPortFree } from './local/ports.mjs'
-import { endChildren, run, SetUpError } from './local/processes.mjs'
+import { endChildren, run, SetUpError, whenNpmIsGone } from './local/processes.mjs'
 import { readSettings } from './local/settings.mjs'
 import { ensureBuild } from './local/sources.mjs'
 import { startWebServer } from './local/web-server.mjs'
@@ -80,13 +80,16 @@ async function main() {
   if (!isStopping) process.exitCode = code || 1
 }
 
-for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
-  process.on(signal, () => {
-    if (isStopping) return
-    console.log('\nStopping …')
-    void stopAll().then(() => process.exit(0))
-  })
+function stopNow() {
+  if (isStopping) return
+  console.log('\nStopping …')
+  void stopAll().then(() => process.exit(0))
 }
+
+for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, stopNow)
+whenNpmIsGone(stopNow)
+// The terminal that showed our output may be gone before us.
+for (const stream of [process.stdout, process.stderr]) stream.on('error', () => {})
 
 try {
   await main()

@@ -6,7 +6,7 @@ import { ensureChromium } from './local/chromium.mjs'
 import { createDatabaseIfMissing } from './local/create-database.mjs'
 import { checkNodeVersion, ensureDependencies } from './local/dependencies.mjs'
 import { freePort } from './local/ports.mjs'
-import { endChildren, run, SetUpError } from './local/processes.mjs'
+import { endChildren, run, SetUpError, whenNpmIsGone } from './local/processes.mjs'
 import { ensureBuild, nextProgram } from './local/sources.mjs'
 import { playwrightCounts, Tally, vitestCounts } from './local/tally.mjs'
 import { startThrowawayCluster } from './local/throwaway-cluster.mjs'
@@ -126,9 +126,9 @@ async function main() {
   })
 }
 
-for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
-  process.on(signal, () => void stopAll().then(() => process.exit(130)))
-}
+const stopNow = () => void stopAll().then(() => process.exit(130))
+for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) process.on(signal, stopNow)
+whenNpmIsGone(stopNow)
 
 try {
   await main()

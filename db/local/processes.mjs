@@ -44,6 +44,21 @@ export function isAlive(pid) {
   }
 }
 
+/**
+ * Calls back once npm, through which we were started, is gone. A signal sent to npm alone reaches only the shell between
+ * it and us, which dies without passing it on.
+ */
+export function whenNpmIsGone(callback) {
+  if (!process.env.npm_lifecycle_event) return
+  const parent = process.ppid
+  const timer = setInterval(() => {
+    if (process.ppid === parent) return
+    clearInterval(timer)
+    callback()
+  }, 500)
+  timer.unref()
+}
+
 export function isRoot() {
   return typeof process.getuid === 'function' && process.getuid() === 0
 }
