@@ -7,7 +7,7 @@ export interface LabelPoint {
 export interface PlacedLabel extends LabelPoint {
   /** Where the text stands: over the point, or at its right or left. */
   anchor: 'over' | 'right' | 'left'
-  /** Pixels upwards from the place that the anchor gives. */
+  /** Pixels upwards from the place that the anchor gives; downwards if negative. */
   liftPx: number
 }
 
@@ -23,7 +23,7 @@ export interface Box {
 
 /**
  * Sets labels beside points so that none covers another label or a point: over the point first, then right and left, then
- * lifted step by step. A label that finds no free place within eight steps is left out; the picture's table still names it.
+ * moved up or down step by step. A label that finds no free place within eight steps is left out; the picture's table still names it.
  *
  * @param points in the order of their importance; pixels count from the upper left corner
  * @param room.blocked places that other writing takes
@@ -49,8 +49,12 @@ export function placeLabels(
 }
 
 function candidates(point: LabelPoint): PlacedLabel[] {
-  const lifts = Array.from({ length: 8 }, (_, step) => step * 9)
-  return lifts.flatMap((liftPx) => (['over', 'right', 'left'] as const).map((anchor) => ({ ...point, anchor, liftPx })))
+  const lifts = Array.from({ length: 8 }, (_, step) => step * 9).flatMap((liftPx) => [liftPx, -liftPx])
+  return lifts.flatMap((liftPx) =>
+    (['over', 'right', 'left'] as const)
+      .filter((anchor) => anchor !== 'over' || liftPx >= 0)
+      .map((anchor) => ({ ...point, anchor, liftPx: liftPx + 0 })),
+  )
 }
 
 function boxOf({ xPx, yPx, text, anchor, liftPx }: PlacedLabel): Box {

@@ -42,7 +42,7 @@ const WORDS: Record<WarningCode, Words> = {
   'short-run': {
     stage: 'track',
     say: (d) =>
-      `The run covers ${figure(d.turns, 1)} turns of the worm; ${figure(d.neededTurns, 0)} are needed for what is asked here.`,
+      `The run covers ${figure(d.turns, 1)} turns of the worm; what is asked here needs at least ${figure(d.neededTurns, 0)}.`,
   },
   'gear-unknown': {
     stage: 'harmonics',
