@@ -149,7 +149,7 @@ function BinTable({ bins, unit }: { bins: readonly Bin[]; unit: string }) {
   const columns: readonly DataColumn<Bin>[] = binColumns(unit)
   return (
     <DataTable
-      caption="bins"
+      caption="values of the bins"
       columns={columns}
       rows={bins}
       rowId={({ index }) => String(index)}

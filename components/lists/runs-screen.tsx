@@ -86,7 +86,7 @@ export function RunsScreen({ projectId }: { projectId: string }) {
           <PageHeading
             crumbs={[{ label: project.data?.name ?? 'Project', href: `/projects/${projectId}` }, { label: 'Runs' }]}
             title={findingText(runsFinding(runs))}
-            actions={canEdit ? upload : null}
+            actions={canEdit && runs.length > 0 ? upload : null}
           />
           {runs.length === 0 ? (
             <EmptyState title="Record a star for six turns of the worm" actions={canEdit ? upload : null}>

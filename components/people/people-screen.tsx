@@ -9,7 +9,7 @@ import { useMembers, useProject, type Member } from '@/lib/client/project-data'
 import { capitalised, counted } from '@/lib/findings/words'
 
 const mayDo: Record<Member['role'], string> = {
-  owner: 'everything, and decides who else is here',
+  owner: 'do everything, and decide who else is here',
   editor: 'bring in runs, analyse, write notes, make correction tables',
   viewer: 'read and download',
 }

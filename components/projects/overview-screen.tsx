@@ -82,7 +82,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
       <PageHeading
         crumbs={[{ label: 'Projects', href: '/projects' }, { label: project.name }]}
         title={findingText(title)}
-        actions={canEdit ? upload : null}
+        actions={canEdit && runs.length > 0 ? upload : null}
       />
       {latest?.worm && last ? (
         <FigureStrip figures={overviewKeyFigures(latest)} label="Figures of the latest run" />

@@ -12,18 +12,18 @@ interface SiteHeaderProps {
 export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
   return (
     <header className="no-print border-b border-rule bg-card">
-      <div className="mx-auto flex max-w-[1680px] flex-wrap items-center gap-x-7 gap-y-2 px-8 py-2.5 max-sm:px-4">
+      <div className="mx-auto grid max-w-[1680px] grid-cols-[auto_minmax(0,1fr)] items-center gap-x-7 gap-y-2 px-8 py-2.5 max-sm:gap-x-3 max-sm:px-4 md:flex">
         <Link href="/" className="flex items-center gap-2.5 rounded-control text-finding font-semibold">
           <Mark className="size-7" />
           Turnwright
         </Link>
         <SiteNav isSignedIn={user !== null} />
-        <div className="ml-auto flex items-center gap-4 max-sm:gap-3">
+        <div className="ml-auto flex min-w-0 items-center gap-4 max-sm:gap-3">
           <ThemeSwitch serverTheme={serverTheme} />
           {user ? (
             <Link
               href="/account"
-              className="max-w-40 truncate text-soft hover:text-ink pointer-coarse:py-2.5"
+              className="max-w-40 min-w-0 truncate text-soft hover:text-ink pointer-coarse:py-2.5"
               title="Your account"
             >
               {user.displayName}

@@ -11,7 +11,7 @@ export function SiteNav({ isSignedIn }: { isSignedIn: boolean }) {
   const items = navItems(pathname, isSignedIn)
   const current = currentHref(pathname, items)
   return (
-    <nav aria-label="Main" className="-mx-1 flex min-w-0 overflow-x-auto px-1 max-md:order-last max-md:w-full">
+    <nav aria-label="Main" className="-mx-1 flex min-w-0 overflow-x-auto px-1 max-md:order-last max-md:col-span-2">
       <ul className="flex gap-5">
         {items.map(({ href, label }) => (
           <li key={href}>

@@ -92,6 +92,8 @@ export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
                         onClick={header.column.getToggleSortingHandler()}
                         className={classNames(
                           'inline-flex min-h-8 items-center gap-1 rounded-control whitespace-nowrap hover:text-ink pointer-coarse:min-h-11',
+                          // The arrow's place lies outside the figures, so that the head ends where they do.
+                          column?.isNumeric && 'flex-row-reverse',
                           direction && 'text-ink',
                         )}
                       >

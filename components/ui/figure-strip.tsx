@@ -40,16 +40,16 @@ export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'la
   return (
     <span className="figures">
       <span className="text-figure font-semibold">{value}</span>
-      <span className="text-base text-soft">
+      {uncertainty === undefined ? null : ' '}
+      <span className="inline-block text-base whitespace-nowrap text-soft">
         {uncertainty === undefined ? null : (
           <>
-            {' '}
             ±{'\u2009'}
             {uncertainty}
           </>
         )}
         {typeof unit === 'string' ? withSpace(unit.trimStart()) : unit}
-        {remark === undefined ? null : <span className="ml-3">{remark}</span>}
+        {remark === undefined ? null : <span className="ml-3 whitespace-normal">{remark}</span>}
       </span>
     </span>
   )

@@ -23,7 +23,7 @@ export function Segmented<Value extends string>({ label, value, options, onValue
         <label
           key={option.value}
           className={classNames(
-            'relative cursor-pointer px-3 py-1 text-sm leading-5 pointer-coarse:px-3.5 pointer-coarse:py-3',
+            'relative cursor-pointer px-3 py-1 text-sm leading-5 max-sm:px-2 pointer-coarse:min-w-11 pointer-coarse:py-3 text-center',
             'has-focus-visible:outline-2 has-focus-visible:-outline-offset-2 has-focus-visible:outline-brass',
             option.value === value ? 'bg-faint font-semibold text-ink' : 'text-soft hover:text-ink',
           )}
