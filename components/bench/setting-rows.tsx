@@ -144,7 +144,7 @@ export function FactSetting({ label, children }: { label: string; children: Reac
 export function MoreSettings({ children }: { children: ReactNode }) {
   return (
     <details className="mt-1">
-      <summary className="py-1 text-sm text-soft pointer-coarse:py-3">More settings</summary>
+      <summary className="py-1 text-sm text-soft pointer-coarse:py-3.5">More settings</summary>
       {children}
     </details>
   )

@@ -59,7 +59,7 @@ export function ExcludeForm({ onLeaveOut }: { onLeaveOut: (span: ExcludedSpan) =
 
   return (
     <details className="no-print text-sm">
-      <summary className="py-0.5 text-soft pointer-coarse:py-3">Leave out a span</summary>
+      <summary className="py-0.5 text-soft pointer-coarse:py-3.5">Leave out a span</summary>
       <form
         className="mt-2 flex flex-col gap-2"
         noValidate

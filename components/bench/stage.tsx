@@ -32,7 +32,7 @@ export function Stage({ number, title, question, settings, isLocked, finding, as
         <p className="mt-2 max-w-[60ch] text-sm text-soft">{question}</p>
         {settings ? (
           <details className="stage-settings mt-2">
-            <summary className="py-1.5 text-sm font-semibold pointer-coarse:py-3">Settings</summary>
+            <summary className="py-1.5 text-sm font-semibold pointer-coarse:py-3.5">Settings</summary>
             <fieldset disabled={isLocked} className="min-w-0">
               <legend className="sr-only">Settings of {title}</legend>
               {settings}

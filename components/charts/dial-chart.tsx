@@ -84,7 +84,9 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
               x={radius(ring) + (ring > 0 ? -2 : 3)}
               textAnchor={ring > 0 ? 'end' : 'start'}
               y={-3}
-              className="figures fill-soft"
+              className="figures fill-soft stroke-card"
+              strokeWidth="3"
+              paintOrder="stroke"
               fontSize="12"
             >
               {formatNumber(ring, decimals(ring), { isSigned: true })}

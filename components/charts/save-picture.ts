@@ -44,6 +44,7 @@ const COPIED = [
   'stroke-dasharray',
   'stroke-opacity',
   'opacity',
+  'paint-order',
   'font-family',
   'font-size',
   'font-weight',
