@@ -14,11 +14,7 @@ export interface AnalysisWorkerApi {
   /** Guesses the layout of a file's text from its first part; `layout` holds what the user has corrected. */
   preview(bytes: Uint8Array, layout?: Partial<ImportSettings['layout']>): Promise<PreviewOutcome>
   /** Reads the whole file and keeps its columns. */
-  loadFile(
-    bytes: Uint8Array,
-    settings: ImportSettings,
-    onProgress?: (progress: Progress) => void,
-  ): Promise<LoadOutcome>
+  loadFile(bytes: Uint8Array, settings: ImportSettings, onProgress?: (progress: Progress) => void): Promise<LoadOutcome>
   /** Takes columns that were stored packed (lib/formats/packed-columns.ts). */
   loadPacked(packed: Uint8Array): Promise<LoadOutcome>
   analyse(recipe: Recipe, onProgress?: (progress: Progress) => void): Promise<AnalysisOutcome | null>
