@@ -1,6 +1,6 @@
 'use client'
 
-import { useState, type ReactNode } from 'react'
+import { useEffect, useRef, useState, type ReactNode } from 'react'
 import { Button } from '@/components/ui/button'
 import { Actions } from '@/components/ui/dialog'
 import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
@@ -39,6 +39,11 @@ export function ColumnMapper(props: ColumnMapperProps) {
   const { fileName, preview, draft, onDraft, onLayout, onSubmit, onCancel, fault } = props
   const { knownOptics = [], submitLabel = 'Read the file', isBusy = false, children } = props
   const [isTried, setTried] = useState(false)
+  const faultPlace = useRef<HTMLDivElement>(null)
+  // The button stands below a long form, what went wrong above it.
+  useEffect(() => {
+    if (fault) faultPlace.current?.scrollIntoView({ block: 'center' })
+  }, [fault])
   const faults = isTried ? importFieldFaults(draft) : {}
   const columnFaults = [faults.time, faults.displacement].filter((text) => text !== undefined)
 
@@ -73,11 +78,13 @@ export function ColumnMapper(props: ColumnMapperProps) {
             ascension.
           </Notice>
         ) : null}
-        {fault ? (
-          <Notice tone="error" title="The file could not be read" isLive>
-            {fault.message}
-          </Notice>
-        ) : null}
+        <div ref={faultPlace} className="empty:hidden">
+          {fault ? (
+            <Notice tone="error" title="The file could not be read" isLive>
+              {fault.message}
+            </Notice>
+          ) : null}
+        </div>
         <PreviewGrid
           preview={preview}
           columns={draft.columns}
