@@ -15,7 +15,7 @@ import {
   type Figure,
   type FigureFrame,
 } from './figure'
-import { placeLabels } from './place-labels'
+import { placeLabels, type Box } from './place-labels'
 import { decadeTicks, orderTicks, periodTicks } from './ticks'
 
 export interface SpectrumFigureInput {
@@ -61,6 +61,8 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
     values.map((value) => (value > 0 ? Math.max(value, yRange[0] / 2) : yRange[0] / 2))
   const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.periodSeconds, isLog: true }, frame))
   const ruler = wormPeriod === null ? null : rulerOf({ wormPeriod, range, width, frame })
+  const axes = { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b }
+  const chance = chanceLabel(input, axes)
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx, margin }),
     hovermode: 'closest',
@@ -87,8 +89,8 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
       axisNote('arcsec amplitude', frame, { x: 0, y: 1, xanchor: 'left', yanchor: 'top', xshift: 4, yshift: -2 }),
       axisNote('period', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
       ...(ruler?.annotations ?? []),
-      chanceLabel(input),
-      ...stemLabels(stems, { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b, frame }),
+      chance.annotation,
+      ...stemLabels(stems, { ...axes, taken: chance.box, frame }),
       ...marks.map(({ annotation }) => annotation),
     ],
   }
@@ -101,7 +103,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
     x: periods,
     y: floor(y),
     ...(orders ? { customdata: orders } : {}),
-    hovertemplate: `${hover}<extra>${name}</extra>`,
+    hovertemplate: `${hover} ${name}<extra></extra>`,
   })
   return {
     layout,
@@ -181,18 +183,26 @@ function stemTraces(
       mode: 'markers',
       x: stems.map(({ periodSeconds }) => periodSeconds),
       y: stems.map(({ amplitudeArcsec }) => amplitudeArcsec),
-      text: stems.map(({ hover, name }) => `${hover}<extra>${name}</extra>`),
-      hovertemplate: '%{text}',
+      text: stems.map(({ hover, name }) => `${hover} ${name}`),
+      // The second box that Plotly would put the name into stands on white, whatever the theme.
+      hovertemplate: '%{text}<extra></extra>',
       marker: { color: look.dot, size: 10, symbol: look.symbol, line: { color: look.ring, width: 1.5 } },
     },
   ]
 }
 
+interface PlotAxes {
+  xLog: [number, number]
+  yLog: [number, number]
+  width: number
+  heightPx: number
+}
+
 function stemLabels(
   stems: readonly Stem[],
-  axes: { xLog: [number, number]; yLog: [number, number]; width: number; heightPx: number; frame: FigureFrame },
+  axes: PlotAxes & { taken: Box; frame: FigureFrame },
 ): Partial<Annotation>[] {
-  const { xLog, yLog, width, heightPx, frame } = axes
+  const { xLog, yLog, width, heightPx, frame, taken } = axes
   const points = stems
     .map((stem) => ({
       stem,
@@ -203,7 +213,7 @@ function stemLabels(
     .filter(({ xPx }) => xPx >= 0 && xPx <= width)
     .sort((a, b) => b.stem.amplitudeArcsec - a.stem.amplitudeArcsec)
   // The name of the axis stands in the upper left corner.
-  const blocked = [{ left: 0, right: 128, top: 0, bottom: 17 }]
+  const blocked = [{ left: 0, right: 128, top: 0, bottom: 17 }, taken]
   return placeLabels(points, { widthPx: width, blocked }).map(({ xPx, yPx, text, anchor, liftPx }) => {
     const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
     return {
@@ -283,22 +293,30 @@ function rulerOf({
   }
 }
 
-function chanceLabel({ spectrum, chanceLevel, frame }: SpectrumFigureInput): Partial<Annotation> {
+/** Names the chance level where its curve enters the room of the words, and keeps that room free of other labels. */
+function chanceLabel({ spectrum, chanceLevel, frame }: SpectrumFigureInput, axes: PlotAxes) {
   const odds = formatProbability(chanceLevel)
   const text = isNarrow(frame) ? 'chance' : `chance reaches this high ${odds.replace(/^1 in/, '1 time in')}`
-  const highest = extent(spectrum.chanceArcsec)[1]
-  return {
+  const { xLog, yLog, width, heightPx } = axes
+  const leftPx = width - 7.3 * text.length
+  const frequency = 10 ** -(xLog[0] + (leftPx / width) * (xLog[1] - xLog[0]))
+  const index = spectrum.frequencyHz.findIndex((each) => each >= frequency)
+  const level = spectrum.chanceArcsec[index < 0 ? spectrum.chanceArcsec.length - 1 : index]
+  const share = level > 0 ? (Math.log10(level) - yLog[0]) / (yLog[1] - yLog[0]) : 0
+  const yPx = (1 - Math.min(Math.max(share, 0), 0.92)) * heightPx
+  const annotation: Partial<Annotation> = {
     text,
     x: 1,
     xref: 'paper',
     xanchor: 'right',
-    y: Math.log10(highest),
-    yref: 'y',
+    y: 1 - yPx / heightPx,
+    yref: 'paper',
     yanchor: 'bottom',
     yshift: 2,
     showarrow: false,
     font: { size: 12, color: frame.colors.soft },
   }
+  return { annotation, box: { left: leftPx, right: width, top: yPx - 20, bottom: yPx } }
 }
 
 /** Not longer than the run: nothing is known of what takes longer. */

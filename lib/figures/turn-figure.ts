@@ -54,7 +54,7 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
             connectgaps: false,
             opacity: 0.75,
             line: { color: colors.steel, width: 0.9 },
-            hovertemplate: `${hover}<extra>turn ${turnNumber}</extra>`,
+            hovertemplate: `${hover} turn ${turnNumber}<extra></extra>`,
           }) as const,
       ),
       {
@@ -64,7 +64,7 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
         x: turn.angleDegrees,
         y: turn.curveArcsec,
         line: { color: colors.brass, width: 2.75 },
-        hovertemplate: `${hover}<extra>fitted</extra>`,
+        hovertemplate: `${hover} fitted<extra></extra>`,
       },
     ],
     table: {

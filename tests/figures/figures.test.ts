@@ -219,6 +219,13 @@ describe.each([
     for (const color of colors) expect(color).toMatch(/^(#a00000|rgba\(160,0,0,[\d.]+\)|rgba\(0,0,0,0\))$/)
   })
 
+  test('has no second hover box, which Plotly sets on white', () => {
+    const { data, layout } = make()
+    if (layout.hovermode === 'x unified') return
+    for (const { hovertemplate, hoverinfo } of data)
+      expect(hoverinfo === 'skip' || String(hovertemplate).endsWith('<extra></extra>')).toBe(true)
+  })
+
   test('fits a phone and a zoom', () => {
     expect(make({ widthPx: 340 }).layout.width).toBe(340)
     const zoom: [number, number] = make().x.isLog ? [600, 100] : [5, 15]
