@@ -4,7 +4,10 @@ import nextTypeScript from 'eslint-config-next/typescript'
 /** Folders whose files may not import from the folders listed beside them (DEVELOPERS.md, "Who may import what"). */
 const zones = [
   { target: './lib/analysis', from: ['./app', './components', './db', './lib', './workers'], except: ['./analysis'] },
-  { target: './lib/simulate', from: ['./app', './components', './db', './lib/client', './lib/server', './lib/formats', './workers'] },
+  {
+    target: './lib/simulate',
+    from: ['./app', './components', './db', './lib/client', './lib/server', './lib/formats', './workers'],
+  },
   { target: './lib/formats', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/figures', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/schemas', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
@@ -21,7 +24,17 @@ const flatZones = zones.flatMap(({ target, from, except }) =>
 )
 
 const config = [
-  { ignores: ['.next/**', '.data/**', 'node_modules/**', 'next-env.d.ts', 'test-results/**', 'playwright-report/**', 'public/**'] },
+  {
+    ignores: [
+      '.next/**',
+      '.data/**',
+      'node_modules/**',
+      'next-env.d.ts',
+      'test-results/**',
+      'playwright-report/**',
+      'public/**',
+    ],
+  },
   ...nextVitals,
   ...nextTypeScript,
   {
