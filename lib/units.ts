@@ -3,8 +3,8 @@ import type { Estimate } from '@/lib/analysis/types'
 
 /** U+2212, the sign of negative figures; a hyphen is too short beside tabular digits. */
 export const MINUS = '\u2212'
-/** U+2009, between a figure and its unit. */
-export const THIN_SPACE = '\u2009'
+/** U+202F, as narrow as a thin space and never broken at the end of a line: between a figure and its unit. */
+export const THIN_SPACE = '\u202f'
 /** Stands where a figure cannot be given (U+2013). */
 export const ABSENT = '\u2013'
 

@@ -60,7 +60,7 @@ export function CorrectionStage(props: CorrectionStageProps) {
               <Facts
                 rows={[
                   [
-                    '10\u2009% of the worm is back at',
+                    '10\u202f% of the worm is back at',
                     `± ${formatNumber(table.rehearsal.slipForTenPercentDegrees, 1)}°`,
                   ],
                   ['no help left at', `± ${formatNumber(table.rehearsal.slipForNoHelpDegrees, 0)}°`],

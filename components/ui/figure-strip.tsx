@@ -44,7 +44,7 @@ export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'la
       <span className="inline-block text-base whitespace-nowrap text-soft">
         {uncertainty === undefined ? null : (
           <>
-            ±{'\u2009'}
+            ±{'\u202f'}
             {uncertainty}
           </>
         )}

@@ -31,7 +31,7 @@ export function ProgressBar({ label, fraction, onCancel, delayMs = 200 }: Progre
           {percent === null ? null : (
             <span className="figures text-soft">
               {percent}
-              {'\u2009'}%
+              {'\u202f'}%
             </span>
           )}
         </p>

@@ -45,5 +45,5 @@ export function tablePicture(table: TableResult, worm: WormResult, run: Analysis
 const UNITS: Record<TableSettings['unit'], string> = {
   arcsec: '″',
   'arcsec-per-second': '″/s',
-  'percent-sidereal': '\u2009% of sidereal',
+  'percent-sidereal': '\u202f% of sidereal',
 }

@@ -48,4 +48,6 @@ export const TABLE_CAUTIONS: readonly string[] = [
   'Keep a copy of the table that is in the mount before you replace it.',
   'A table of the wrong sign doubles the error; one with the wrong zero can do as much. Load it, record again, compare.',
   'Before an unattended run: cables slack, nothing that can meet the pier past the meridian, counterweights and their stop tight, tube balanced.',
+  'Never point an uncovered telescope near the Sun; a test by day is made with the cap on.',
+  'Power off and clutches as the maker directs before touching gears. The maker’s manual and a qualified technician come before anything shown here, and opening a mount may end its warranty.',
 ]

@@ -23,7 +23,7 @@ export function rerunFinding({ isSame, largestRelativeDifference }: RerunCompari
   const exponent = Math.ceil(Math.log10(Math.max(largestRelativeDifference, 1e-16)))
   if (exponent > -3) {
     const percent = (100 * largestRelativeDifference).toPrecision(2)
-    return `Computed again from the stored recording, a figure differs by ${percent}\u2009%. The saved ones are shown.`
+    return `Computed again from the stored recording, a figure differs by ${percent}\u202f%. The saved ones are shown.`
   }
   return `Computed again from the stored recording by another engine, no figure differs by more than 1 part in 10${superscript(-exponent)}. The saved ones are shown.`
 }

@@ -54,7 +54,7 @@ describe('FileIntake', () => {
     await user.upload(screen.getByLabelText('Recording file'), fileOfSize('long.csv', MAX_FILE_BYTES + 1))
     const alert = await screen.findByRole('alert')
     expect(alert.textContent).toContain('long.csv was not taken')
-    expect(alert.textContent).toContain('67\u2009108\u2009865 bytes')
+    expect(alert.textContent).toContain('67\u202f108\u202f865 bytes')
     expect(onFiles).not.toHaveBeenCalled()
     await user.upload(screen.getByLabelText('Recording file'), fileOfSize('full.csv', MAX_FILE_BYTES))
     await waitFor(() => expect(onFiles).toHaveBeenCalledOnce())

@@ -286,7 +286,7 @@ describe('spectrum', () => {
     const texts = layout.annotations?.map(({ text }) => text)
     for (const name of ['worm', 'worm ×2', 'belt', 'motor pulley']) expect(texts).toContain(name)
     const dots = data.find(({ mode, marker }) => mode === 'markers' && marker?.symbol === 'circle')
-    expect(String((dots?.text as string[])[0])).toMatch(/^order 1<br>567\.3\u2009s<br>7\.350″/)
+    expect(String((dots?.text as string[])[0])).toMatch(/^order 1<br>567\.3\u202fs<br>7\.350″/)
   })
 
   test('without a worm there is no ruler and no order', () => {

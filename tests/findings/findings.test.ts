@@ -79,7 +79,7 @@ describe('track', () => {
     expect(trackFinding(exampleResult())).toEqual([
       { text: 'The run covers ', emphasis: null },
       { text: '6.0 turns', emphasis: 'worm' },
-      { text: ' of the worm; a gap of 56\u2009s and three stray points are left out.', emphasis: null },
+      { text: ' of the worm; a gap of 56\u202fs and three stray points are left out.', emphasis: null },
     ])
   })
 
@@ -106,7 +106,7 @@ describe('track', () => {
   })
 
   test('gives the duration where turns cannot be counted', () => {
-    expect(findingText(trackFinding(withoutWorm))).toContain('The run lasts 56\u2009min 53\u2009s; a gap')
+    expect(findingText(trackFinding(withoutWorm))).toContain('The run lasts 56\u202fmin 53\u202fs; a gap')
   })
 })
 
@@ -148,7 +148,7 @@ describe('spectrum', () => {
   test('without a worm lines have periods instead of orders', () => {
     const result = { ...withoutWorm, lines: withoutWorm.lines.map((each) => ({ ...each, order: null })) }
     expect(findingText(spectrumFinding(result, recipe))).toBe(
-      'Nothing can be told to be the worm’s, and two lines: 869.8\u2009s fits the belt, 207.6\u2009s fits the motor pulley.',
+      'Nothing can be told to be the worm’s, and two lines: 869.8\u202fs fits the belt, 207.6\u202fs fits the motor pulley.',
     )
   })
 })
@@ -156,7 +156,7 @@ describe('spectrum', () => {
 describe('harmonics', () => {
   test('says who carries the power', () => {
     expect(findingText(harmonicsFinding(exampleResult()))).toBe(
-      'The worm’s fundamental, 7.350 ± 0.042″, carries 94\u2009% of the swing’s power; the second harmonic most of the rest.',
+      'The worm’s fundamental, 7.350 ± 0.042″, carries 94\u202f% of the swing’s power; the second harmonic most of the rest.',
     )
   })
 
@@ -167,13 +167,13 @@ describe('harmonics', () => {
       each.fundamentalPowerShare = 0.4
     })
     expect(findingText(harmonicsFinding(result))).toBe(
-      'The second harmonic swings most; the worm’s fundamental, 7.350 ± 0.042″, carries only 40\u2009% of the swing’s power.',
+      'The second harmonic swings most; the worm’s fundamental, 7.350 ± 0.042″, carries only 40\u202f% of the swing’s power.',
     )
   })
 
   test('the choice of their number is told', () => {
     const { modelChoice } = exampleResult()
-    expect(harmonicCountSentence(modelChoice, recipe)).toContain('a chance of 41\u2009%')
+    expect(harmonicCountSentence(modelChoice, recipe)).toContain('a chance of 41\u202f%')
     expect(harmonicCountSentence(modelChoice, { ...recipe, harmonicCount: 3 })).toBe(
       'The number of harmonics was set by hand.',
     )
@@ -183,7 +183,7 @@ describe('harmonics', () => {
 describe('turn and spans', () => {
   test('variance that repeats, and the RMS a perfect table leaves', () => {
     expect(findingText(turnFinding(exampleResult()))).toBe(
-      '99.0\u2009% of the variance repeats each turn; a perfect table leaves 10\u2009% of the RMS.',
+      '99.0\u202f% of the variance repeats each turn; a perfect table leaves 10\u202f% of the RMS.',
     )
     expect(findingText(turnFinding(withoutWorm))).toContain('too short')
   })
@@ -205,7 +205,7 @@ describe('turn and spans', () => {
 describe('correction', () => {
   test('what it takes off, and where the axis is furthest ahead', () => {
     expect(findingText(correctionFinding(exampleResult(), recipe))).toBe(
-      'Rehearsed on turns it was not made from, it removes 93\u2009% of the RMS. At 33° the axis runs 8.6″ ahead; there the table holds it back.',
+      'Rehearsed on turns it was not made from, it removes 93\u202f% of the RMS. At 33° the axis runs 8.6″ ahead; there the table holds it back.',
     )
   })
 
@@ -230,7 +230,7 @@ describe('correction', () => {
     const result = changed(({ table }) => {
       if (table) table.rehearsal.heldOutReduction = -0.12
     })
-    expect(correctionFinding(result, recipe)).toContainEqual({ text: 'adds 12\u2009%', emphasis: 'limit' })
+    expect(correctionFinding(result, recipe)).toContainEqual({ text: 'adds 12\u202f%', emphasis: 'limit' })
   })
 
   test('a correction that was on, or may have been, gives only an addition', () => {
@@ -267,7 +267,7 @@ describe('figures over the sheet', () => {
   test('five, with units and uncertainties', () => {
     expect(keyFigures(exampleResult())).toEqual([
       { label: 'Worm period', value: '567.28', uncertainty: '0.27', unit: 's' },
-      { label: 'Worm, peak to peak (scale ± 1\u2009%)', value: '16.02', uncertainty: '0.13', unit: '″' },
+      { label: 'Worm, peak to peak (scale ± 1\u202f%)', value: '16.02', uncertainty: '0.13', unit: '″' },
       { label: 'Steepest rate', value: '0.1221', uncertainty: '0.0011', unit: '″/s' },
       { label: 'Drift', value: '+0.3510', uncertainty: '0.0020', unit: '″/min' },
       { label: 'Left after the fit, RMS', value: '0.50', unit: '″' },

@@ -10,8 +10,8 @@ import { closureFinding, tableFinding } from '@/lib/findings/table-finding'
 const hillside = { axisKind: 'worm' as const, wheelTeeth: 152, wormStarts: 1, stages: [] }
 
 test('driveFinding states the worm period of the teeth', () => {
-  expect(findingText(driveFinding(hillside))).toBe('A wheel of 152 teeth turns its worm once in 566.87\u2009s')
-  expect(findingText(driveFinding({ ...hillside, wormStarts: 2 }))).toContain('1133.74\u2009s')
+  expect(findingText(driveFinding(hillside))).toBe('A wheel of 152 teeth turns its worm once in 566.87\u202fs')
+  expect(findingText(driveFinding({ ...hillside, wormStarts: 2 }))).toContain('1133.74\u202fs')
   expect(findingText(driveFinding({ ...hillside, wheelTeeth: null }))).toContain('not known yet')
 })
 
@@ -119,7 +119,7 @@ describe('tableFinding', () => {
   })
 
   test('warns where the table would make things worse', () => {
-    expect(findingText(tableFinding(rehearsed(0.93), 48))).toContain('93\u2009% off the RMS')
+    expect(findingText(tableFinding(rehearsed(0.93), 48))).toContain('93\u202f% off the RMS')
     expect(findingText(tableFinding(rehearsed(-0.1), 48))).toContain('do not load it')
     expect(findingText(tableFinding(rehearsed(null), 48))).toContain('Too few turns')
     expect(findingText(tableFinding(null, 48))).toContain('not rehearsed')

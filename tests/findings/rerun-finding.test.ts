@@ -46,5 +46,5 @@ test('a missing line and a difference of per cent are said as such', () => {
   expect(rerunFinding(compareResults(saved, fewer))).toContain('in one result and not in the other')
   const other = structuredClone(saved)
   other.spans.rawArcsec *= 1.02
-  expect(rerunFinding(compareResults(saved, other))).toContain('2.0\u2009%')
+  expect(rerunFinding(compareResults(saved, other))).toContain('2.0\u202f%')
 })

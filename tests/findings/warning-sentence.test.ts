@@ -31,7 +31,7 @@ test.each(Object.keys(WARNING_CODES) as WarningCode[])('%s is told in a whole se
 test('figures stand in the sentence', () => {
   expect(warningSentence({ code: 'period-differs-from-gear', details })).toEqual({
     stage: 'harmonics',
-    text: 'The fitted period of 570.1\u2009s is 4.2 standard errors away from the 566.9\u2009s of the drive train. Look at the count of teeth, the tracking rate and the clock of the recording.',
+    text: 'The fitted period of 570.1\u202fs is 4.2 standard errors away from the 566.9\u202fs of the drive train. Look at the count of teeth, the tracking rate and the clock of the recording.',
   })
 })
 

@@ -284,7 +284,7 @@ describe('faults are told before anything is chosen', () => {
     bytes.set(text)
     const outcome = previewTable(bytes)
     expect(outcome.ok ? null : outcome.fault.code).toBe('too-large')
-    expect(outcome.ok ? '' : outcome.fault.message).toContain('67\u2009108\u2009865 bytes')
+    expect(outcome.ok ? '' : outcome.fault.message).toContain('67\u202f108\u202f865 bytes')
     expect(previewTable(bytes.subarray(0, MAX_FILE_BYTES)).ok).toBe(true)
   })
 })

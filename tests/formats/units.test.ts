@@ -17,7 +17,7 @@ import {
 } from '@/lib/units'
 
 /** Tests are written with ~ for the thin space, which cannot be seen. */
-const thin = (text: string) => text.replaceAll('~', '\u2009')
+const thin = (text: string) => text.replaceAll('~', '\u202f')
 
 test.each([
   [-1.25, 1, {}, '−1.3'],
