@@ -60,6 +60,8 @@ export function startDraft(
     conversion: {
       ...conversion,
       displacementUnit: columns.displacementUnit,
+      // Last time's proof says nothing of tonight: the camera may have been turned since.
+      senseBasis: 'assumed',
       declinationDegrees: hints.declinationDegrees ?? conversion.declinationDegrees,
       exposureSeconds: hints.exposureSeconds ?? conversion.exposureSeconds,
     },

@@ -217,11 +217,16 @@ describe('the form as it opens', () => {
     const preview = previewOf(guided)
     const first = startDraft(preview)
     const columns = { ...preview.suggested!, declination: null }
-    const conversion = { ...first.conversion, imageScaleArcsecPerPx: 1.55, positiveMeans: 'behind' as const }
+    const sense = { positiveMeans: 'behind', senseBasis: 'proven' } as const
+    const conversion = { ...first.conversion, imageScaleArcsecPerPx: 1.55, ...sense }
     const lastImport = { settings: { version: 1 as const, layout: preview.layout, columns }, conversion }
     const again = startDraft(preview, { lastImport, wheelTeeth: 152 })
     expect(again.columns.declination).toBeNull()
-    expect(again.conversion).toMatchObject({ imageScaleArcsecPerPx: 1.55, positiveMeans: 'behind' })
+    expect(again.conversion).toMatchObject({
+      imageScaleArcsecPerPx: 1.55,
+      positiveMeans: 'behind',
+      senseBasis: 'assumed',
+    })
     expect(again.wheelTeeth).toBe(152)
 
     const other = previewOf(utf8('clock;ra (arcsec)\n' + table(40, (i) => `2031-11-14T21:03:${10 + i};${swing(i)}`)))
