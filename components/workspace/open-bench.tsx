@@ -14,6 +14,7 @@ import { createWorkSaver } from '@/lib/client/save-work'
 import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import { defaultRecipe } from '@/lib/schemas/recipe'
 import { withRecipeAddress } from '@/lib/schemas/recipe-address'
+import { assertCurrent } from './assert-current'
 import { downloadTable } from './download-table'
 import { loadSample } from './load-sample'
 import { ReadingScreen } from './reading-screen'
@@ -102,7 +103,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
 
   async function save(choice: SaveChoice) {
     if (!work || !recipe || !result || !saver) return
-    if (analysis.isComputing) throw new Error('The figures are still being computed. Try again in a moment.')
+    assertCurrent(analysis)
     try {
       const saved = await saver({ work, recipe, result, ...choice }, setStep)
       await dropKeptWork()
@@ -151,6 +152,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         }
         notes={[]}
         onDownloadTable={(format, request) => {
+          assertCurrent(analysis)
           if (result) downloadTable({ format, request, result, recipe, runName })
         }}
         hasWormAngle={analysis.loaded?.ok === true && analysis.loaded.hasWormAngle}

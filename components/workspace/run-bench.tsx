@@ -15,6 +15,7 @@ import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import { compareResults, rerunFinding } from '@/lib/findings/rerun-finding'
 import { correctionSchema, type Analysis, type Project, type Run } from '@/lib/schemas/api'
 import { defaultRecipe } from '@/lib/schemas/recipe'
+import { assertCurrent } from './assert-current'
 import { NameDialog } from './name-dialog'
 import { useRunNotes } from './use-run-notes'
 
@@ -54,13 +55,13 @@ export function RunBench({ project, run, analysis, savedResult }: RunBenchProps)
   }, [loadPacked, run])
 
   const isAsSaved = analysis !== null && JSON.stringify(recipe) === JSON.stringify(analysis.recipe)
-  const isCurrent = !bench.isComputing && JSON.stringify(bench.outcomeRecipe) === JSON.stringify(recipe)
   const computed = bench.outcome?.ok ? bench.outcome.result : null
   const shown = isAsSaved ? savedResult : computed
   const notes = useRunNotes(project.id, analysis?.id ?? null)
 
   async function save(name: string): Promise<Analysis> {
-    if (!computed || !isCurrent) throw new Error('The figures are still being computed. Try again in a moment.')
+    assertCurrent(bench)
+    if (!computed) throw new Error('There are no figures to save: the run could not be analysed with these settings.')
     return saveAnalysis(project.id, { runId: run.id, name, recipe, result: { ...computed } })
   }
 
@@ -117,7 +118,7 @@ export function RunBench({ project, run, analysis, savedResult }: RunBenchProps)
             {fault ?? `Reload the page. (${bench.fault})`}
           </Notice>
         ) : null}
-        {analysis && savedResult && isAsSaved && isCurrent && computed ? (
+        {analysis && savedResult && isAsSaved && bench.isCurrent && computed ? (
           <Notice>
             {analysis.engineVersion === ENGINE_VERSION
               ? rerunFinding(compareResults(savedResult, computed))

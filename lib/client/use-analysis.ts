@@ -12,6 +12,8 @@ export interface BenchAnalysis {
   outcome: AnalysisOutcome | null
   /** The recipe that the outcome was computed from. */
   outcomeRecipe: Recipe | null
+  /** Whether the outcome is that of the present recipe: not while one is computed, nor after a cancel. */
+  isCurrent: boolean
   progress: Progress | null
   isComputing: boolean
   /** The run that is in the worker; null before the first load and while one is being read. */
@@ -131,7 +133,9 @@ export function useBenchAnalysis(
     }),
     [client, load],
   )
-  return { ...state, ...actions }
+  const isCurrent =
+    !state.isComputing && state.outcomeRecipe !== null && JSON.stringify(state.outcomeRecipe) === recipeText
+  return { ...state, ...actions, isCurrent }
 }
 
 function messageOf(error: unknown): string {

@@ -1,5 +1,6 @@
 import { act, cleanup, renderHook, waitFor } from '@testing-library/react'
 import { afterEach, describe, expect, test } from 'vitest'
+import { assertCurrent } from '@/components/workspace/assert-current'
 import type { AnalysisOutcome, Progress, Recipe } from '@/lib/analysis/types'
 import type { AnalysisClient } from '@/lib/client/analysis-client'
 import { useBenchAnalysis } from '@/lib/client/use-analysis'
@@ -75,9 +76,9 @@ describe('useBenchAnalysis', () => {
     expect(worker.calls).toHaveLength(1)
     rerender({ recipe: { ...defaultRecipe(), chanceLevel: 0.01 } })
     await waitFor(() => expect(worker.calls).toHaveLength(2))
-    expect(result.current).toMatchObject({ outcome: singular, isComputing: true })
+    expect(result.current).toMatchObject({ outcome: singular, isComputing: true, isCurrent: false })
     await act(async () => worker.calls[1].answer(shortRun))
-    expect(result.current.outcome).toEqual(shortRun)
+    expect(result.current).toMatchObject({ outcome: shortRun, isCurrent: true })
   })
 
   test('drops what an overtaken analysis answers late', async () => {
@@ -95,7 +96,11 @@ describe('useBenchAnalysis', () => {
     rerender({ recipe: { ...defaultRecipe(), chanceLevel: 0.01 } })
     await waitFor(() => expect(worker.calls).toHaveLength(2))
     await act(async () => result.current.cancel())
-    expect(result.current).toMatchObject({ outcome: singular, isComputing: false })
+    expect(result.current).toMatchObject({ outcome: singular, isComputing: false, isCurrent: false })
+    expect(() => assertCurrent(result.current)).toThrow('stopped')
+    rerender({ recipe: defaultRecipe() })
+    await act(async () => worker.calls[2].answer(singular))
+    expect(() => assertCurrent(result.current)).not.toThrow()
   })
 
   test('a worker that breaks down is told', async () => {
