@@ -37,7 +37,8 @@ function NameForm({ onClose, label, initial, onName }: Omit<NameDialogProps, 'is
     resolver: zodResolver(nameSchema),
     defaultValues: { name: initial.slice(0, 120) },
   })
-  const { errors, isSubmitting } = formState
+  // Once saved, the way on is under way: a second press would save twice.
+  const { errors, isSubmitting, isSubmitSuccessful } = formState
   const submit = handleSubmit(async ({ name }) => {
     try {
       await onName(name)
@@ -57,7 +58,7 @@ function NameForm({ onClose, label, initial, onName }: Omit<NameDialogProps, 'is
       ) : null}
       <Actions>
         <Button onClick={onClose}>Not now</Button>
-        <Button type="submit" variant="primary" disabled={isSubmitting}>
+        <Button type="submit" variant="primary" disabled={isSubmitting || isSubmitSuccessful}>
           Save
         </Button>
       </Actions>

@@ -10,6 +10,7 @@ import { Actions, Dialog } from '@/components/ui/dialog'
 import { Notice } from '@/components/ui/notice'
 import type { Recipe } from '@/lib/analysis/types'
 import { dropKeptWork, findKeptWork, keepWork, type KeptWork } from '@/lib/client/kept-work'
+import { RequestError } from '@/lib/client/fetcher'
 import { createWorkSaver } from '@/lib/client/save-work'
 import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import { defaultRecipe } from '@/lib/schemas/recipe'
@@ -90,12 +91,18 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
   }, [isSignedIn, loadFile, open, openSample])
 
   const startOver = useCallback(async () => {
-    await dropKeptWork()
+    if (work) await dropKeptWork(work)
     forgetSettings()
     file.startOver()
     setWork(null)
     setRecipe(null)
-  }, [file])
+  }, [file, work])
+
+  /** Keeps the work once more: another tab may have put its own in the place. */
+  function askForAccount() {
+    setDialog('account')
+    if (work) void keepWork(work).then(setKept)
+  }
 
   const saver = useMemo(() => (work ? createWorkSaver() : null), [work])
   const [step, setStep] = useState<string | null>(null)
@@ -106,8 +113,11 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
     assertCurrent(analysis)
     try {
       const saved = await saver({ work, recipe, result, ...choice }, setStep)
-      await dropKeptWork()
+      await dropKeptWork(work)
       router.push(`/projects/${saved.projectId}/analyses/${saved.id}`)
+    } catch (error) {
+      if (error instanceof RequestError && error.isSignedOut) askForAccount()
+      throw error
     } finally {
       setStep(null)
     }
@@ -145,7 +155,11 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         actions={
           <>
             <Button onClick={() => void startOver()}>Another file</Button>
-            <Button variant="primary" disabled={!result} onClick={() => setDialog(isSignedIn ? 'save' : 'account')}>
+            <Button
+              variant="primary"
+              disabled={!result}
+              onClick={() => (isSignedIn ? setDialog('save') : askForAccount())}
+            >
               Save analysis
             </Button>
           </>
@@ -160,7 +174,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         isReadOnly={false}
       />
       {analysis.fault ? (
-        <div className="mx-auto max-w-360 px-8 pb-6">
+        <div>
           <WorkerFault message={analysis.fault} />
         </div>
       ) : null}
@@ -170,6 +184,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         onClose={() => setDialog('none')}
         defaults={{ projectName: 'My mount', runName, analysisName: 'First look' }}
         onSave={save}
+        onSignedOut={askForAccount}
         progressText={step}
       />
     </>

@@ -10,7 +10,7 @@ import { Field } from '@/components/ui/field'
 import { Notice } from '@/components/ui/notice'
 import { Select } from '@/components/ui/select'
 import { TextInput } from '@/components/ui/text-input'
-import { getJson } from '@/lib/client/fetcher'
+import { getJson, RequestError } from '@/lib/client/fetcher'
 import { projectListSchema, type Project } from '@/lib/schemas/api'
 
 const newProject = 'new'
@@ -41,13 +41,19 @@ interface SaveDialogProps {
   defaults: { projectName: string; runName: string; analysisName: string }
   /** Rejects with an Error whose message can be shown; what was typed stays. */
   onSave: (choice: SaveChoice) => Promise<void>
+  /** Called when the session turns out to have ended. */
+  onSignedOut: () => void
   /** What is being done, for the line beside the button. */
   progressText: string | null
 }
 
 /** Asks under which mount and names the work on the open bench is to be kept. */
-export function SaveDialog({ isOpen, onClose, ...rest }: SaveDialogProps) {
-  const { data, error } = useSWR(isOpen ? '/api/projects' : null, (url: string) => getJson(url, projectListSchema))
+export function SaveDialog({ isOpen, onClose, onSignedOut, ...rest }: SaveDialogProps) {
+  const { data, error } = useSWR<{ projects: Project[] }, Error>(
+    isOpen ? '/api/projects' : null,
+    (url: string) => getJson(url, projectListSchema),
+    { onError: (fault) => fault instanceof RequestError && fault.isSignedOut && onSignedOut() },
+  )
   return (
     <Dialog isOpen={isOpen} onClose={onClose} title="Save this analysis">
       {error ? <Notice tone="error">{error.message}</Notice> : null}
@@ -66,14 +72,15 @@ function SaveForm({
   onSave,
   onClose,
   progressText,
-}: Omit<SaveDialogProps, 'isOpen'> & { projects: Project[] }) {
+}: Omit<SaveDialogProps, 'isOpen' | 'onSignedOut'> & { projects: Project[] }) {
   const writable = projects.filter((project) => project.role !== 'viewer')
   const { register, handleSubmit, control, setError, formState } = useForm({
     resolver: zodResolver(saveSchema),
     defaultValues: { projectId: writable[0]?.id ?? newProject, ...defaults },
   })
   const projectId = useWatch({ control, name: 'projectId' })
-  const { errors, isSubmitting } = formState
+  // Once saved, the way on is under way: a second press would save twice.
+  const { errors, isSubmitting, isSubmitSuccessful } = formState
 
   const submit = handleSubmit(async (values) => {
     try {
@@ -108,7 +115,11 @@ function SaveForm({
       <Field label="Name of the analysis" error={errors.analysisName?.message}>
         {(field) => <TextInput {...field} {...register('analysisName')} />}
       </Field>
-      {errors.root ? <Notice tone="error">{errors.root.message}</Notice> : null}
+      {errors.root ? (
+        <Notice tone="error" isLive>
+          {errors.root.message}
+        </Notice>
+      ) : null}
       <Actions>
         {progressText ? (
           <p role="status" className="mr-auto text-sm text-soft">
@@ -116,7 +127,7 @@ function SaveForm({
           </p>
         ) : null}
         <Button onClick={onClose}>Not now</Button>
-        <Button type="submit" variant="primary" disabled={isSubmitting}>
+        <Button type="submit" variant="primary" disabled={isSubmitting || isSubmitSuccessful}>
           Save
         </Button>
       </Actions>

@@ -31,6 +31,11 @@ export class RequestError extends Error {
     this.current = refusal.current
   }
 
+  /** The session has ended, or there was none. */
+  get isSignedOut(): boolean {
+    return this.code === 'not-signed-in'
+  }
+
   /** Somebody else changed the same thing after this person had opened it. */
   get isConflict(): boolean {
     return this.code === 'changed-meanwhile'

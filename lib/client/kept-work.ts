@@ -41,10 +41,17 @@ export async function findKeptWork(): Promise<KeptWork | undefined> {
   }
 }
 
-export async function dropKeptWork(): Promise<void> {
+/** Forgets this work; what another tab has kept meanwhile stays. */
+export async function dropKeptWork(work: KeptWork): Promise<void> {
   try {
-    await del(key)
+    const kept = await findKeptWork()
+    if (kept && isSameFile(kept, work)) await del(key)
   } catch {
     // Nothing was kept where there is no storage.
   }
+}
+
+function isSameFile(a: KeptWork, b: KeptWork): boolean {
+  if (a.fileName !== b.fileName || a.bytes.length !== b.bytes.length) return false
+  return a.bytes.every((byte, index) => byte === b.bytes[index])
 }

@@ -67,7 +67,10 @@ export class AppError extends Error {
 }
 
 export function notSignedIn(): AppError {
-  return new AppError('not-signed-in', 'Sign in first')
+  return new AppError(
+    'not-signed-in',
+    'You are not signed in, or no longer. Sign in, in another tab if you have unsaved work here, and try again.',
+  )
 }
 
 export function unreadableFile({ code, message, row, column }: ImportFault): AppError {
