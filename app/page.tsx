@@ -9,17 +9,17 @@ export default async function LandingPage() {
   const user = await currentUser()
   return (
     <PageFrame>
-      <div className="grid items-end gap-x-10 gap-y-4 pt-2 lg:grid-cols-[minmax(0,1fr)_auto]">
-        <div className="max-w-[60rem]">
+      <div className="grid items-end gap-y-4 pt-2 lg:grid-cols-[minmax(0,1.45fr)_minmax(0,1fr)]">
+        <div className="max-w-[60rem] lg:pr-5">
           <h1 className="text-title font-[640] text-balance">
             Find out what your mount’s worm does to your pictures, and whether a correction would help
           </h1>
-          <p className="mt-2 text-finding text-soft">
+          <p className="mt-2 text-finding text-pretty text-soft">
             Bring the log of a star that was tracked for an hour. Turnwright tells drift from gears, says which part of
             the drive makes which swing and how sure that is, and makes a correction table that it has rehearsed first.
           </p>
         </div>
-        <div>
+        <div className="lg:pl-5">
           <div className="flex flex-wrap gap-2">
             <ButtonLink href="/bench" variant="primary">
               Try the bench
@@ -30,7 +30,7 @@ export default async function LandingPage() {
               <ButtonLink href="/sign-in">Sign in</ButtonLink>
             )}
           </div>
-          <p className="mt-2 max-w-[17rem] text-sm text-soft">
+          <p className="mt-2 text-sm text-pretty text-soft">
             No account needed. A file of your own stays in this browser until you sign in and save it.
           </p>
         </div>

@@ -81,12 +81,9 @@ export function Bench(props: BenchProps) {
   }
 
   return (
-    <div className="mx-auto flex w-full max-w-360 flex-col gap-4 px-8 py-6 max-sm:px-3">
+    <div className="flex flex-col gap-4">
       <header>
-        <div className="flex min-h-9 items-center justify-between gap-4">
-          <div className="min-w-0 text-sm text-soft">{props.crumbs ?? props.runLabel}</div>
-          {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
-        </div>
+        <div className="mb-1 text-sm text-soft">{props.crumbs ?? props.runLabel}</div>
         <div className="flex items-end justify-between gap-x-6 gap-y-3 max-lg:flex-col max-lg:items-start">
           <h1 className="min-w-0 flex-1 text-title font-semibold">
             {result ? (
@@ -97,7 +94,10 @@ export function Bench(props: BenchProps) {
               `Reading ${props.runLabel}`
             )}
           </h1>
-          <div className="no-print flex shrink-0 flex-wrap items-center gap-2">{props.actions}</div>
+          <div className="no-print flex shrink-0 flex-wrap items-center gap-2">
+            {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
+            {props.actions}
+          </div>
         </div>
       </header>
       {result ? <FigureStrip figures={keyFigures(result).map(small)} /> : null}
@@ -167,28 +167,14 @@ function Computing({ progress, onCancel }: { progress: Progress | null; onCancel
 
 function UndoButtons({ undo, redo }: { undo: (() => void) | null; redo: (() => void) | null }) {
   return (
-    <div className="no-print flex shrink-0 gap-1">
-      <Button
-        variant="quiet"
-        className="border-transparent px-2 disabled:border-transparent disabled:bg-transparent"
-        disabled={!undo}
-        aria-label="Undo"
-        title="Undo (Ctrl+Z)"
-        onClick={() => undo?.()}
-      >
+    <>
+      <Button size="icon" disabled={!undo} aria-label="Undo" title="Undo (Ctrl+Z)" onClick={() => undo?.()}>
         <Arrow />
       </Button>
-      <Button
-        variant="quiet"
-        className="border-transparent px-2 disabled:border-transparent disabled:bg-transparent"
-        disabled={!redo}
-        aria-label="Redo"
-        title="Redo (Ctrl+Shift+Z)"
-        onClick={() => redo?.()}
-      >
+      <Button size="icon" disabled={!redo} aria-label="Redo" title="Redo (Ctrl+Shift+Z)" onClick={() => redo?.()}>
         <Arrow isMirrored />
       </Button>
-    </div>
+    </>
   )
 }
 

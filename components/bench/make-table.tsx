@@ -81,7 +81,7 @@ export function MakeTable({ recipe, mountCorrection, onMakeTable, onDownloadTabl
           {(['csv', 'json'] as const).map((format) => (
             <Button
               key={format}
-              className="min-h-8 px-2.5 py-1 text-sm"
+              size="small"
               disabled={!isAllowed || isBusy}
               onClick={() => void act(() => onDownloadTable(format, request))}
             >

@@ -238,10 +238,10 @@ function NoteText({ label, initial, saveLabel, onSave, onCancel }: NoteTextProps
         </p>
       ) : null}
       <div className="mt-1.5 flex gap-2">
-        <Button variant="primary" className="min-h-8 px-3 py-1 text-sm" disabled={isBusy} onClick={() => void save()}>
+        <Button variant="primary" size="small" disabled={isBusy} onClick={() => void save()}>
           {saveLabel}
         </Button>
-        <Button className="min-h-8 px-3 py-1 text-sm" onClick={onCancel}>
+        <Button size="small" onClick={onCancel}>
           Cancel
         </Button>
       </div>

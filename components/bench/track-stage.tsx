@@ -100,12 +100,12 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
               onClose={() => setSelection(null)}
             >
               {isLocked ? null : (
-                <Button variant="primary" className="min-h-8 px-3 py-1 text-sm" onClick={() => leaveOut(selection)}>
+                <Button variant="primary" size="small" onClick={() => leaveOut(selection)}>
                   Leave out
                 </Button>
               )}
               <Button
-                className="min-h-8 px-3 py-1 text-sm"
+                size="small"
                 onClick={() => {
                   selection.zoomIn()
                   setSelection(null)

@@ -47,7 +47,7 @@ export function useStageNotes({ kind, notes, actions, startAt }: StageNotesOptio
     pickBar:
       onAdd && picked && !isOpen ? (
         <PictureBar label={anchorText(picked)} onClose={() => setPicked(null)}>
-          <Button className="min-h-8 px-3 py-1 text-sm" onClick={() => setOpen(true)}>
+          <Button size="small" onClick={() => setOpen(true)}>
             Note here
           </Button>
         </PictureBar>
@@ -75,7 +75,7 @@ export function PictureBar({ label, children, onClose }: { label: string; childr
         {label}
       </span>
       {children}
-      <Button variant="quiet" className="min-h-8 px-3 py-1 text-sm" onClick={onClose}>
+      <Button variant="quiet" size="small" onClick={onClose}>
         Cancel
       </Button>
     </div>

@@ -2,7 +2,7 @@
 
 import { useState } from 'react'
 import type { AnalysisViews } from '@/lib/analysis/types'
-import { dialPath, dialPoint, dialRadius, dialScale } from '@/lib/figures/dial'
+import { dialPath, freestAngle, dialPoint, dialRadius, dialScale } from '@/lib/figures/dial'
 import { formatNumber, wrapDegrees } from '@/lib/units'
 import { SvgPicture } from './svg-picture'
 
@@ -23,6 +23,7 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
   const [pointed, setPointed] = useState<number | null>(null)
   const scale = dialScale(turn.curveArcsec, ...turn.turns.map(({ arcsec }) => arcsec))
   const radius = (arcsec: number) => RIM * dialRadius(arcsec, scale)
+  const labelAngle = freestAngle(turn, scale.ringsArcsec)
   const closed = [...turn.angleDegrees]
   const index = pointed === null ? null : nearestIndex(closed, pointed)
 
@@ -81,9 +82,9 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
           {scale.ringsArcsec.map((ring) => (
             <text
               key={ring}
-              x={radius(ring) + (ring > 0 ? -2 : 3)}
-              textAnchor={ring > 0 ? 'end' : 'start'}
-              y={-3}
+              x={dialPoint(labelAngle, radius(ring)).x}
+              y={dialPoint(labelAngle, radius(ring)).y + 4}
+              textAnchor="middle"
               className="figures fill-soft stroke-card"
               strokeWidth="3"
               paintOrder="stroke"

@@ -83,6 +83,8 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
       ))}
       {bars.map((bar) => (
         <rect
+          // Bars that touch are drawn to whole pixels, else their edges shine through as stripes.
+          shapeRendering={gap === 0 ? 'crispEdges' : undefined}
           key={bar.index}
           x={x(bar.left) + gap}
           width={Math.max(barWidth - 2 * gap, 0.5)}

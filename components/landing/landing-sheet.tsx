@@ -1,11 +1,12 @@
 import type { LandingPicture } from '@/lib/figures/landing-picture'
+import { withSpace } from '@/lib/units'
 import { LandingDialDrawing } from './landing-dial'
 import { LandingStemsDrawing } from './landing-stems'
 import { LandingTrackDrawing } from './landing-track'
 
 /** Track, spectrum and turn of one run on one sheet; the sentences above the drawings are their text alternative. */
 export function LandingSheet({ picture }: { picture: LandingPicture }) {
-  const { track, stems, dial, findings } = picture
+  const { track, stems, dial, findings, figures } = picture
   return (
     <figure className="overflow-hidden rounded-card border border-rule bg-card">
       <div className={dial ? 'grid lg:grid-cols-[minmax(0,1.45fr)_minmax(0,1fr)]' : undefined}>
@@ -27,13 +28,25 @@ export function LandingSheet({ picture }: { picture: LandingPicture }) {
         {dial ? (
           <div className="flex min-w-0 flex-col p-5 max-lg:order-last max-lg:border-t max-lg:border-rule max-sm:px-3 lg:row-span-2">
             <p className="mb-3 text-finding font-semibold text-pretty">{findings.dial}</p>
-            <div className="my-auto">
-              <LandingDialDrawing dial={dial} />
-            </div>
+            <LandingDialDrawing dial={dial} />
             <p className="mt-3 text-sm text-soft">
               Every turn laid over the others, once round the worm. Outward the axis is ahead, inward behind; the dotted
               circle is zero. Figures in arc seconds.
             </p>
+            <dl className="mt-auto pt-4">
+              {figures.map(({ label, value, uncertainty, unit }) => (
+                <div key={label} className="flex items-baseline justify-between gap-3 border-t border-rule py-1.5">
+                  <dt className="text-sm text-soft">{label}</dt>
+                  <dd className="text-right">
+                    <span className="figures font-semibold">{value}</span>
+                    <span className="figures text-sm text-soft">
+                      {uncertainty === undefined ? null : ` ±\u202f${uncertainty}`}
+                      {unit === undefined ? null : withSpace(unit)}
+                    </span>
+                  </dd>
+                </div>
+              ))}
+            </dl>
           </div>
         ) : null}
         <div className="min-w-0 border-t border-rule p-5 max-sm:px-3 lg:border-r">

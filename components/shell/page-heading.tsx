@@ -22,7 +22,7 @@ export function PageHeading({ crumbs = [], title, lead, actions }: PageHeadingPr
       <div className="max-w-[64rem] min-w-0">
         <Crumbs crumbs={crumbs} />
         <h1 className="text-title font-[640] text-balance">{title}</h1>
-        {lead ? <p className="mt-1.5 max-w-[75ch] text-soft">{lead}</p> : null}
+        {lead ? <p className="mt-1.5 max-w-[75ch] text-pretty text-soft">{lead}</p> : null}
       </div>
       {actions ? <div className="no-print flex flex-wrap gap-2">{actions}</div> : null}
     </div>

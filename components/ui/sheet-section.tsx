@@ -24,7 +24,9 @@ export function SheetSection({ number, title, question, settings, finding, aside
       aria-labelledby={headingId}
       className={classNames(
         'grid grid-cols-1',
-        aside ? 'lg:grid-cols-[12.25rem_minmax(0,1fr)_17rem]' : 'lg:grid-cols-[12.25rem_minmax(0,1fr)]',
+        aside
+          ? 'lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.25rem]'
+          : 'lg:grid-cols-[13rem_minmax(0,1fr)]',
       )}
     >
       <div className="border-rule p-5 max-lg:pb-0 max-sm:px-4 lg:border-r">

@@ -3,7 +3,6 @@
 import type { ReactNode } from 'react'
 import { ColumnMapper } from '@/components/import/column-mapper'
 import { FileIntake } from '@/components/import/file-intake'
-import { PageFrame } from '@/components/shell/page-frame'
 import { PageHeading, type Crumb } from '@/components/shell/page-heading'
 import { Card } from '@/components/ui/card'
 import type { ImportChoices } from '@/components/import/import-draft'
@@ -29,7 +28,7 @@ export function ReadingScreen(props: ReadingScreenProps) {
   const { reading, isBusy } = file
   const isMapping = reading.kind === 'mapping'
   return (
-    <PageFrame>
+    <>
       <PageHeading
         crumbs={crumbs}
         title={isMapping ? 'Which column is what?' : title}
@@ -64,6 +63,6 @@ export function ReadingScreen(props: ReadingScreenProps) {
           {children}
         </>
       )}
-    </PageFrame>
+    </>
   )
 }

@@ -112,7 +112,7 @@ export function RunBench({ project, run, analysis, savedResult }: RunBenchProps)
         mountCorrection={run.facts.mountCorrection}
         isReadOnly={isViewer}
       />
-      <div className="no-print mx-auto flex w-full max-w-360 flex-col gap-3 px-8 pb-10 max-sm:px-3">
+      <div className="no-print flex flex-col gap-3 empty:hidden">
         {(fault ?? bench.fault) ? (
           <Notice tone="error" title="The recording could not be worked on" isLive>
             {fault ?? `Reload the page. (${bench.fault})`}

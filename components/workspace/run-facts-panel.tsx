@@ -13,11 +13,11 @@ import { Notice } from '@/components/ui/notice'
 import { NumberField } from '@/components/ui/number-input'
 import { Select, type SelectOption } from '@/components/ui/select'
 import { TextInput } from '@/components/ui/text-input'
-import { formatMinute } from '@/lib/client/dates'
+import { formatDayAndTime, formatMinute } from '@/lib/client/dates'
 import { sendJson } from '@/lib/client/fetcher'
 import { runSchema, type Run } from '@/lib/schemas/api'
 import type { RunFacts } from '@/lib/schemas/run-facts'
-import { formatBytes, formatCount } from '@/lib/units'
+import { formatBytes, formatCount, formatNumber } from '@/lib/units'
 
 type Choice = 'sideOfPier' | 'trackingRate' | 'mountCorrection' | 'guiding'
 
@@ -62,7 +62,7 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
   const [isEditing, setEditing] = useState(false)
   const { facts } = run
   return (
-    <div className="mx-auto w-full max-w-360 px-8 pb-16 max-sm:px-3">
+    <>
       <TitledCard
         title="About this run"
         actions={
@@ -75,8 +75,10 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
         }
       >
         <dl className="grid grid-cols-3 gap-x-8 gap-y-2 max-lg:grid-cols-2 max-sm:grid-cols-1">
-          <Fact term="Recorded">{facts.startedAt ? formatMinute(facts.startedAt) : 'not known'}</Fact>
-          <Fact term="Hour angle">{facts.hourAngleDegrees === null ? 'not known' : `${facts.hourAngleDegrees}°`}</Fact>
+          <Fact term="Recorded">{facts.startedAt ? `${formatDayAndTime(facts.startedAt)} UTC` : 'not known'}</Fact>
+          <Fact term="Hour angle">
+            {facts.hourAngleDegrees === null ? 'not known' : degrees(facts.hourAngleDegrees, '°')}
+          </Fact>
           {(Object.keys(CHOICES) as Choice[]).map((key) => (
             <Fact key={key} term={CHOICES[key].label}>
               {CHOICES[key].options.find(({ value }) => value === facts[key])?.label}
@@ -86,7 +88,7 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
             <Fact term="Table in the mount">{facts.mountCorrectionTable ?? 'not named'}</Fact>
           ) : null}
           <Fact term="Temperature">
-            {facts.temperatureCelsius === null ? 'not known' : `${facts.temperatureCelsius} °C`}
+            {facts.temperatureCelsius === null ? 'not known' : degrees(facts.temperatureCelsius, '°C')}
           </Fact>
           <Fact term="Load and balance">{facts.loadAndBalance ?? 'not noted'}</Fact>
           <Fact term="Sense">{facts.senseProof ?? 'assumed, not proven'}</Fact>
@@ -102,8 +104,13 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
       <Dialog isOpen={isEditing} onClose={() => setEditing(false)} title="What is known of this run">
         <FactsForm run={run} onClose={() => setEditing(false)} />
       </Dialog>
-    </div>
+    </>
   )
+}
+
+/** As it was typed, with a decimal only where there is one. */
+function degrees(value: number, unit: string): string {
+  return formatNumber(value, Number.isInteger(value) ? 0 : 1, { unit })
 }
 
 function Fact({ term, children }: { term: string; children: ReactNode }) {

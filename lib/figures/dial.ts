@@ -52,3 +52,21 @@ export function dialPath(
   }
   return path
 }
+
+/** The angle at which the curve keeps furthest from the rings, so that their labels stand clear of it. */
+export function freestAngle(
+  { angleDegrees, curveArcsec }: { angleDegrees: ArrayLike<number>; curveArcsec: ArrayLike<number> },
+  ringsArcsec: readonly number[],
+): number {
+  const room = (degrees: number) => {
+    let nearest = Infinity
+    for (let i = 0; i < angleDegrees.length; i++) {
+      const away = Math.abs(((angleDegrees[i] - degrees + 540) % 360) - 180)
+      if (away > 12) continue
+      for (const ring of ringsArcsec) nearest = Math.min(nearest, Math.abs(curveArcsec[i] - ring))
+    }
+    return nearest
+  }
+  const candidates = Array.from({ length: 24 }, (_, step) => 15 * step)
+  return candidates.reduce((best, degrees) => (room(degrees) > room(best) ? degrees : best))
+}

@@ -1,5 +1,6 @@
 import type { AnalysisViews } from '@/lib/analysis/types'
 import { formatNumber } from '@/lib/units'
+import { freestAngle } from './dial'
 import { evenTicks, short, type Tick } from './svg-geometry'
 
 /** Every turn on one worm angle, round a dial: 0° on top, clockwise, outward is ahead. */
@@ -50,20 +51,6 @@ export function landingDial(turn: NonNullable<AnalysisViews['turn']>): LandingDi
     turnPaths: turn.turns.map(({ angleDegrees, arcsec }) => polarPath(angleDegrees, arcsec, radius)),
     curvePath: polarPath(turn.angleDegrees, turn.curveArcsec, radius, true),
   }
-}
-
-/** The diagonal on which the curve keeps furthest from the circles, so that their labels stand clear of it. */
-function freestAngle({ angleDegrees, curveArcsec }: NonNullable<AnalysisViews['turn']>, rings: number[]): number {
-  const room = (degrees: number) => {
-    let nearest = Infinity
-    for (let i = 0; i < angleDegrees.length; i++) {
-      const away = Math.abs(((angleDegrees[i] - degrees + 540) % 360) - 180)
-      if (away > 12) continue
-      for (const ring of rings) nearest = Math.min(nearest, Math.abs(curveArcsec[i] - ring))
-    }
-    return nearest
-  }
-  return [45, 135, 225, 315].reduce((best, degrees) => (room(degrees) > room(best) ? degrees : best))
 }
 
 function pointAt(degrees: number, radius: number) {

@@ -1,4 +1,5 @@
 import type { AnalysisResult, AnalysisSuccess, AnalysisViews } from '@/lib/analysis/types'
+import { keyFigures, type KeyFigureText } from '@/lib/findings/key-figures'
 import { formatNumber } from '@/lib/units'
 import { landingDial, type LandingDial } from './landing-dial'
 import { landingFindings, type LandingFindings } from './landing-findings'
@@ -12,6 +13,8 @@ export interface LandingPicture {
   /** Null when the record gave no worm. */
   dial: LandingDial | null
   findings: LandingFindings
+  /** The key figures of the run, as the bench shows them. */
+  figures: KeyFigureText[]
 }
 
 export interface LandingTrack {
@@ -34,6 +37,7 @@ export function landingPicture({ result, views }: Pick<AnalysisSuccess, 'result'
     stems: landingStems(result, views),
     dial: views.turn ? landingDial(views.turn) : null,
     findings: landingFindings(result),
+    figures: keyFigures(result),
   }
 }
 

@@ -1,6 +1,6 @@
 import type { Annotation, Layout, ScatterData, Shape } from 'plotly.js-dist-min'
 import type { AnalysisResult, AnalysisViews } from '@/lib/analysis/types'
-import { harmonicName } from '@/lib/findings/words'
+import { harmonicName, withinSentence } from '@/lib/findings/words'
 import { formatNumber, formatPeriod, formatProbability } from '@/lib/units'
 import { withAlpha } from './chart-colors'
 import {
@@ -157,7 +157,7 @@ function stemsOf({ worm, lines }: AnalysisResult): Stem[] {
   const others = lines.map(({ order, periodSeconds, amplitudeArcsec, source }): Stem => ({
     periodSeconds: periodSeconds.value,
     amplitudeArcsec: amplitudeArcsec.value,
-    name: source ?? 'unexplained',
+    name: source === null ? 'unexplained' : withinSentence(source),
     isWorm: false,
     hover: `${order ? `order ${formatNumber(order.value, 3)}<br>` : ''}${formatPeriod(periodSeconds.value)}<br>${formatNumber(amplitudeArcsec.value, 3)}″`,
   }))
@@ -227,6 +227,9 @@ function stemLabels(
       yanchor: anchor === 'over' ? 'bottom' : 'middle',
       yshift: liftPx + (anchor === 'over' ? 5 : 3),
       showarrow: false,
+      // A curve that passes behind the word would strike it through.
+      bgcolor: withAlpha(frame.colors.card, 0.8),
+      borderpad: 0,
       font: { family: SANS, size: 13, weight: 600, color: stem?.isWorm ? frame.colors.brass : frame.colors.verdigris },
     }
   })

@@ -1,6 +1,16 @@
 import type { Annotation, Layout, Shape } from 'plotly.js-dist-min'
 import type { AnalysisViews } from '@/lib/analysis/types'
-import { axisNote, baseAxis, baseLayout, extent, noteMark, plotWidth, type Figure, type FigureFrame } from './figure'
+import {
+  axisNote,
+  baseAxis,
+  baseLayout,
+  extent,
+  isNarrow,
+  noteMark,
+  plotWidth,
+  type Figure,
+  type FigureFrame,
+} from './figure'
 import { niceTicks, type Ticks } from './ticks'
 
 export interface TurnFigureInput {
@@ -97,32 +107,36 @@ export function slipFigure({ slip, slipForTenPercentDegrees, slipForNoHelpDegree
   const high = Math.max(1.1, extent(slip.shareLeft)[1] * 1.05)
   const yTicks = niceTicks([0, high], 4)
   const xTicks = angleTicks(range, plotWidth(frame, margin), true)
-  const level = (y: number, text: string): { shape: Partial<Shape>; annotation: Partial<Annotation> } => ({
-    shape: {
-      type: 'line',
-      xref: 'paper',
-      x0: 0,
-      x1: 1,
-      yref: 'y',
-      y0: y,
-      y1: y,
-      line: { color: colors.oxide, width: 1.5, dash: 'dot' },
-    },
-    annotation: {
-      text,
-      x: 0.5,
-      xref: 'paper',
-      xanchor: 'center',
-      y,
-      yref: 'y',
-      yanchor: 'bottom',
-      showarrow: false,
-      bgcolor: colors.card,
-      font: { size: 12, color: colors.soft },
-    },
-  })
-  const noHelp = level(1, `no help beyond ±${slipForNoHelpDegrees.toFixed(0)}°`)
+  const narrow = isNarrow(frame)
   const marks = [-slipForTenPercentDegrees, slipForTenPercentDegrees].filter((at) => at >= whole[0] && at <= whole[1])
+  const word = (text: string, place: Partial<Annotation>): Partial<Annotation> => ({
+    text,
+    yref: 'y',
+    y: 1,
+    yanchor: 'bottom',
+    showarrow: false,
+    font: { size: 12, color: colors.soft },
+    ...place,
+  })
+  // To the right of the mark the curve is still low, so the words above the limit stand clear of it.
+  const words = [
+    ...(marks.length === 2
+      ? [
+          word(`${narrow ? '' : 'a tenth back at '}±${slipForTenPercentDegrees.toFixed(1)}°`, {
+            x: slipForTenPercentDegrees,
+            xanchor: 'left',
+            xshift: 4,
+            yref: 'paper',
+            yanchor: 'top',
+          }),
+        ]
+      : []),
+    word(`no help beyond ±${slipForNoHelpDegrees.toFixed(0)}°`, {
+      x: -slipForTenPercentDegrees,
+      xanchor: 'right',
+      xshift: -6,
+    }),
+  ]
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx: 190, margin }),
     hovermode: 'closest',
@@ -143,7 +157,16 @@ export function slipFigure({ slip, slipForTenPercentDegrees, slipForNoHelpDegree
       showgrid: true,
     },
     shapes: [
-      noHelp.shape,
+      {
+        type: 'line',
+        xref: 'paper',
+        x0: 0,
+        x1: 1,
+        yref: 'y',
+        y0: 1,
+        y1: 1,
+        line: { color: colors.oxide, width: 1.5, dash: 'dot' },
+      },
       ...marks.map((at): Partial<Shape> => ({
         type: 'line',
         xref: 'x',
@@ -158,7 +181,7 @@ export function slipFigure({ slip, slipForTenPercentDegrees, slipForNoHelpDegree
     annotations: [
       axisNote('RMS of the swing left', frame, { x: 0, y: 1, xanchor: 'left', xshift: -44, yshift: 6 }),
       axisNote('slip of the worm angle', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
-      noHelp.annotation,
+      ...words,
     ],
   }
   return {
