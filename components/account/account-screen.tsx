@@ -38,7 +38,9 @@ export function AccountScreen({ user }: { user: { displayName: string; email: st
           <FactRow name="name">
             <span className="font-sans">{user.displayName}</span>
           </FactRow>
-          <FactRow name="e-mail">{user.email}</FactRow>
+          <FactRow name="e-mail">
+            <span className="font-sans break-all">{user.email}</span>
+          </FactRow>
         </dl>
       </SheetSection>
       <SheetSection title="Theme" question="Remembered in this browser.">

@@ -48,6 +48,8 @@ export function BinPicture({ values, axisTitle, summary }: BinPictureProps) {
               width={width * (1 - gap)}
               y={top}
               height={height}
+              // Bars that touch are drawn to whole pixels, else their edges shine through as stripes.
+              shapeRendering={gap === 0 ? 'crispEdges' : undefined}
               className="fill-brass-fill"
             />
           ))}

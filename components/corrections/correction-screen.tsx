@@ -90,7 +90,9 @@ function CorrectionPage({ correction, projectName }: { correction: Correction; p
           ) : null}
           <ul className="flex list-disc flex-col gap-2 pl-5">
             {TABLE_CAUTIONS.map((caution) => (
-              <li key={caution}>{caution}</li>
+              <li key={caution} className="text-pretty">
+                {caution}
+              </li>
             ))}
           </ul>
         </div>
@@ -104,7 +106,9 @@ function CorrectionPage({ correction, projectName }: { correction: Correction; p
         <ul className="mb-5 flex max-w-[80ch] list-disc flex-col gap-1 pl-5">
           {tableMeaning(settings, { wormPeriodSeconds: table.wormPeriodSeconds, orders: rehearsed?.orders }).map(
             (line) => (
-              <li key={line}>{line}</li>
+              <li key={line} className="text-pretty">
+                {line}
+              </li>
             ),
           )}
         </ul>
@@ -134,12 +138,18 @@ function Origin({ correction }: { correction: Correction }) {
             {correction.analysisName}
           </Link>
         </FactRow>
-        <FactRow name="sense">{correction.senseBasis}</FactRow>
-        <FactRow name="kind">{correction.kind === 'addition' ? 'addition' : 'stands alone'}</FactRow>
+        <FactRow name="sense">
+          <span className="font-sans">{correction.senseBasis}</span>
+        </FactRow>
+        <FactRow name="kind">
+          <span className="font-sans">{correction.kind === 'addition' ? 'addition' : 'stands alone'}</span>
+        </FactRow>
         <FactRow name="made by">
           <span className="font-sans">{correction.createdBy}</span>
         </FactRow>
-        <FactRow name="on">{formatDay(correction.createdAt)}</FactRow>
+        <FactRow name="on">
+          <span className="font-sans">{formatDay(correction.createdAt)}</span>
+        </FactRow>
       </dl>
     </>
   )

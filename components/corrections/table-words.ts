@@ -7,6 +7,12 @@ const units: Record<TableSettings['unit'], string> = {
   'percent-sidereal': '% of sidereal rate',
 }
 
+const spelledUnits: Record<TableSettings['unit'], string> = {
+  arcsec: 'arc seconds',
+  'arcsec-per-second': 'arc seconds per second',
+  'percent-sidereal': '% of the sidereal rate',
+}
+
 export function unitText(unit: TableSettings['unit']): string {
   return units[unit]
 }
@@ -23,7 +29,7 @@ export function tableMeaning(
       ? 'it says what the axis should do: a positive value moves it ahead, to the west'
       : 'it says what the axis does wrong: a positive value means that it runs ahead, to the west; play it with the opposite sign'
   const lines = [
-    `Each value is ${quantityText} in ${unitText(unit)}, and ${sign}.`,
+    `Each value is ${quantityText} in ${spelledUnits[unit]}, and ${sign}.`,
     `${binCount} bins of equal width make one turn of the worm, which takes ${formatNumber(facts.wormPeriodSeconds, 2, { unit: 's' })}.`,
     `The listed worm angle ${angleDirection === 'increasing' ? 'grows' : 'falls'} with time; its zero is ${originText(origin)}.`,
   ]

@@ -53,7 +53,7 @@ export function PreviewGrid({ preview, columns, onColumns, fault }: PreviewGridP
               row
             </th>
             {preview.columns.map((column) => (
-              <th key={column.index} scope="col" className="min-w-52 px-3 py-2 font-normal">
+              <th key={column.index} scope="col" className="min-w-52 px-3 py-2 font-normal max-sm:min-w-36 max-sm:px-2">
                 <ColumnHead
                   column={column}
                   columns={columns}
@@ -77,7 +77,7 @@ export function PreviewGrid({ preview, columns, onColumns, fault }: PreviewGridP
                 <td
                   key={column.index}
                   className={classNames(
-                    'figures max-w-56 truncate px-3 py-1 whitespace-pre',
+                    'figures max-w-56 truncate px-3 py-1 whitespace-pre max-sm:px-2',
                     roleOf(columns, column.index) === null && 'text-soft',
                   )}
                 >

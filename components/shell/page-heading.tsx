@@ -39,7 +39,10 @@ export function Crumbs({ crumbs }: { crumbs: readonly Crumb[] }) {
           <li key={index} className="flex gap-x-1.5">
             {index > 0 ? <span aria-hidden="true">/</span> : null}
             {crumb.href ? (
-              <Link href={crumb.href} className="hover:text-ink hover:underline">
+              <Link
+                href={crumb.href}
+                className="hover:text-ink hover:underline pointer-coarse:-my-3.25 pointer-coarse:py-3.25"
+              >
                 {crumb.label}
               </Link>
             ) : (

@@ -13,7 +13,10 @@ export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
   return (
     <header className="no-print border-b border-rule bg-card">
       <div className="mx-auto grid max-w-[1680px] grid-cols-[auto_minmax(0,1fr)] items-center gap-x-7 gap-y-2 px-8 py-2.5 max-sm:gap-x-3 max-sm:px-4 md:flex">
-        <Link href="/" className="flex items-center gap-2.5 rounded-control text-finding font-semibold">
+        <Link
+          href="/"
+          className="flex items-center gap-2.5 rounded-control text-finding font-semibold pointer-coarse:min-h-11"
+        >
           <Mark className="size-7" />
           Turnwright
         </Link>
@@ -23,13 +26,13 @@ export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
           {user ? (
             <Link
               href="/account"
-              className="max-w-40 min-w-0 truncate text-soft hover:text-ink pointer-coarse:py-2.5"
+              className="max-w-40 min-w-0 truncate text-soft hover:text-ink pointer-coarse:py-3"
               title="Your account"
             >
               {user.displayName}
             </Link>
           ) : (
-            <Link href="/sign-in" className="whitespace-nowrap text-soft hover:text-ink pointer-coarse:py-2.5">
+            <Link href="/sign-in" className="whitespace-nowrap text-soft hover:text-ink pointer-coarse:py-3">
               Sign in
             </Link>
           )}

@@ -1,6 +1,7 @@
 import type { ReactNode } from 'react'
 import { withSpace } from '@/lib/units'
 import { Card } from './card'
+import { classNames } from './class-names'
 
 export interface KeyFigure {
   label: ReactNode
@@ -41,7 +42,13 @@ export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'la
     <span className="figures">
       <span className="text-figure font-semibold">{value}</span>
       {uncertainty === undefined ? null : ' '}
-      <span className="inline-block text-base whitespace-nowrap text-soft">
+      <span
+        className={classNames(
+          'inline-block text-base whitespace-nowrap text-soft max-xl:text-sm',
+          // On a phone some would fit beside their figure and some not; below it they line up.
+          uncertainty !== undefined && 'max-sm:block',
+        )}
+      >
         {uncertainty === undefined ? null : (
           <>
             ±{'\u202f'}

@@ -86,7 +86,13 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
     },
     shapes: [...(ruler?.shapes ?? []), ...marks.map(({ shape }) => ({ ...shape }))],
     annotations: [
-      axisNote('arcsec amplitude', frame, { x: 0, y: 1, xanchor: 'left', yanchor: 'top', xshift: 4, yshift: -2 }),
+      axisNote('arcsec amplitude', frame, {
+        // On a phone the worm's own stem stands in the left corner.
+        ...(narrow ? { x: 1, xanchor: 'right', xshift: -2 } : { x: 0, xanchor: 'left', xshift: 4 }),
+        y: 1,
+        yanchor: 'top',
+        yshift: -2,
+      }),
       axisNote('period', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
       ...(ruler?.annotations ?? []),
       chance.annotation,
@@ -212,8 +218,9 @@ function stemLabels(
     }))
     .filter(({ xPx }) => xPx >= 0 && xPx <= width)
     .sort((a, b) => b.stem.amplitudeArcsec - a.stem.amplitudeArcsec)
-  // The name of the axis stands in the upper left corner.
-  const blocked = [{ left: 0, right: 128, top: 0, bottom: 17 }, taken]
+  // The name of the axis stands in the upper left corner, on a phone in the right one.
+  const left = isNarrow(frame) ? width - 128 : 0
+  const blocked = [{ left, right: left + 128, top: 0, bottom: 17 }, taken]
   return placeLabels(points, { widthPx: width, blocked }).map(({ xPx, yPx, text, anchor, liftPx }) => {
     const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
     return {
