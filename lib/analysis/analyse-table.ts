@@ -12,12 +12,23 @@ import { leaveOneTurnOut } from './fold'
 import type { FoldInput } from './fold'
 import { slipCurve } from './rehearsal'
 import { playAt } from './table-playback'
-import type { AnalysisResult, AnalysisViews, Reason, Recipe, RunColumns, TableResult } from './types'
+import type {
+  AnalysisResult,
+  AnalysisViews,
+  AnalysisWarning,
+  Reason,
+  Recipe,
+  RunColumns,
+  TableResult,
+  TableSettings,
+} from './types'
+import { warning } from './warnings'
 
 export interface TableOutcome {
   table: TableResult | null
   reason: Reason | null
   slip: AnalysisViews['slip']
+  warnings: AnalysisWarning[]
   /** The table as played at worm angles counted from the first used sample; null without a table. */
   playedArcsec(angleDegrees: Float64Array): Float64Array | null
 }
@@ -34,7 +45,13 @@ export function makeTable(input: {
   folded: { foldInput: FoldInput | null; usefulOrders: readonly number[] }
 }): TableOutcome {
   const { columns, recipe, prepared, result, folded } = input
-  const none = (reason: Reason): TableOutcome => ({ table: null, reason, slip: null, playedArcsec: () => null })
+  const none = (reason: Reason): TableOutcome => ({
+    table: null,
+    reason,
+    slip: null,
+    warnings: [],
+    playedArcsec: () => null,
+  })
   const { worm } = result
   if (worm === null || folded.foldInput === null) return none(result.wormReason ?? 'no-period')
   const settings = recipe.table
@@ -43,13 +60,14 @@ export function makeTable(input: {
   const defaultOrders = worm.harmonics
     .filter(({ order, isPhaseMeaningful }) => isPhaseMeaningful && folded.usefulOrders.includes(order))
     .map(({ order }) => order)
+  const recordedZero = wormAngleOrigin(columns, prepared, periodSeconds)
   const tableInput = {
     harmonics: worm.harmonics,
     periodSeconds,
     firstUsedTimeSeconds,
     settings,
     defaultOrders,
-    wormAngleOriginSeconds: wormAngleOrigin(columns, prepared, periodSeconds),
+    wormAngleOriginSeconds: recordedZero?.originSeconds ?? null,
   }
   const origin = tableOrigin(tableInput)
   if (!origin.ok) return none(origin.reason)
@@ -72,16 +90,29 @@ export function makeTable(input: {
   return {
     table,
     reason: null,
+    warnings: directionWarnings(settings, recordedZero),
     slip: slipCurve(played, all, SLIP_DEGREES),
     playedArcsec: (angleDegrees) => angleDegrees.map((degrees) => playAt(played, degrees / 360 - originTurns)),
   }
+}
+
+interface RecordedZero {
+  originSeconds: number
+  direction: TableSettings['angleDirection']
+}
+
+/** A table that counts from the recorded angle must count it in the direction in which it was recorded. */
+function directionWarnings(settings: TableSettings, recorded: RecordedZero | null): AnalysisWarning[] {
+  if (settings.origin.kind !== 'worm-angle-column' || recorded === null) return []
+  if (recorded.direction === settings.angleDirection) return []
+  return [warning('angle-direction-differs', { recorded: recorded.direction === 'increasing' ? 'rising' : 'falling' })]
 }
 
 function wormAngleOrigin(
   columns: RunColumns,
   { converted, cleaned }: { converted: ConvertedRun; cleaned: CleanedTrack },
   periodSeconds: number,
-): number | null {
+): RecordedZero | null {
   const { wormAngleDegrees } = columns
   if (wormAngleDegrees === null) return null
   const rows = cleaned.keptIndices
@@ -90,5 +121,5 @@ function wormAngleOrigin(
     wormAngleDegrees: Float64Array.from(rows, (row) => wormAngleDegrees[row]),
     periodSeconds,
   })
-  return origin.ok ? origin.originSeconds : null
+  return origin.ok ? origin : null
 }

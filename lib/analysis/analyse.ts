@@ -116,6 +116,7 @@ export function createAnalyser(columns: RunColumns): Analyser {
       const table = makeTable({ columns, recipe, prepared, result, folded })
       result.table = table.table
       result.tableReason = table.reason
+      result.warnings.push(...table.warnings)
       yield { stage: 'correcting', fraction: 0.96 }
       const base = yield* views(fitKey + recipe.spectrumWindow, function* () {
         yield { stage: 'correcting', fraction: 0.97 }
@@ -351,6 +352,7 @@ function collectWarnings(input: {
     }
   }
   const { turns } = result.run
+  if (turns !== null && turns < 3 && result.drift.degree < 2) warnings.push(warning('drift-taken-straight', { turns }))
   if (turns !== null && turns < 4 && result.residual.correctedLagOneCorrelation > LOWER_BOUND_CORRELATION) {
     warnings.push(warning('errors-may-be-small', { turns }))
   }

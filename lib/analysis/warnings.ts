@@ -37,6 +37,12 @@ export const WARNING_CODES = {
   'fast-motion': 'fast-motion',
   /** The exposure averages over half of a swing or more; its amplitude is not corrected: periodSeconds, factor. */
   'exposure-too-long': 'exposure-too-long',
+  /** Under three turns only a straight drift can be told from the worm: turns. */
+  'drift-taken-straight': 'drift-taken-straight',
+  /** Without teeth, too few turns to see whether the worm turns half as fast: turns, neededTurns. */
+  'period-may-be-harmonic': 'period-may-be-harmonic',
+  /** The table counts from a worm angle that was recorded in the other direction: recorded ('rising' or 'falling'). */
+  'angle-direction-differs': 'angle-direction-differs',
   /** A predicted order is too fast for the cadence and shows at another period: name, order, aliasSeconds. */
   'predicted-order-aliased': 'predicted-order-aliased',
 } as const

@@ -95,6 +95,21 @@ const WORDS: Record<WarningCode, Words> = {
     say: (d) =>
       `The exposure smooths over the swing of ${period(d.periodSeconds)}: only ${figure(100 * Number(d.factor), 0)} % of it is seen, and its size is not corrected.`,
   },
+  'drift-taken-straight': {
+    stage: 'harmonics',
+    say: (d) =>
+      `In ${figure(d.turns, 1)} turns a bent drift cannot be told from the worm, so the drift is taken as straight. If it bends, swing and phase are off by more than their standard errors.`,
+  },
+  'period-may-be-harmonic': {
+    stage: 'harmonics',
+    say: (d) =>
+      `Without the number of teeth, a record of ${figure(d.turns, 1)} such swings does not show whether the worm itself turns half as fast; ${figure(d.neededTurns, 0)} would. Give the teeth of the wheel.`,
+  },
+  'angle-direction-differs': {
+    stage: 'correction',
+    say: (d) =>
+      `The recorded worm angle is ${d.recorded ?? ABSENT}, the table’s is not: a mount that counts as the file does would play it backwards. Turn the direction of the table round.`,
+  },
   'predicted-order-aliased': {
     stage: 'spectrum',
     say: (d) =>

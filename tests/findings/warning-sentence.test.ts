@@ -20,6 +20,7 @@ const details = {
   name: 'belt teeth',
   order: 60,
   aliasSeconds: 31.2,
+  recorded: 'falling',
 }
 
 test.each(Object.keys(WARNING_CODES) as WarningCode[])('%s is told in a whole sentence', (code) => {
