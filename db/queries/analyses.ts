@@ -72,8 +72,24 @@ export interface NewAnalysis {
   worm: AnalysisResult['worm']
 }
 
+/** Keeps the analysis; the very same one, saved again by the same person, is kept once (an answer may have been lost). */
 export async function insertAnalysis(trx: Transaction<Database>, access: ProjectAccess<'edit'>, fields: NewAnalysis) {
   const { runId, name, recipe, result, samplesSha256, worm } = fields
+  const recipeText = JSON.stringify(recipe)
+  const resultText = JSON.stringify(result)
+  const twin = await trx
+    .selectFrom('analyses')
+    .select('id')
+    .where('runId', '=', runId)
+    .where('projectId', '=', access.projectId)
+    .where('createdBy', '=', access.userId)
+    .where('name', '=', name)
+    .where('samplesSha256', '=', samplesSha256)
+    .where('recipe', '=', sql<Recipe>`${recipeText}::jsonb`)
+    .where('result', '=', sql<NewAnalysis['result']>`${resultText}::jsonb`)
+    .limit(1)
+    .executeTakeFirst()
+  if (twin) return findAnalysis(trx, access, twin.id)
   const { id } = await trx
     .insertInto('analyses')
     .values({
@@ -82,8 +98,8 @@ export async function insertAnalysis(trx: Transaction<Database>, access: Project
       name,
       engineVersion: result.engineVersion,
       samplesSha256,
-      recipe: JSON.stringify(recipe),
-      result: JSON.stringify(result),
+      recipe: recipeText,
+      result: resultText,
       wormPeriodSeconds: worm?.periodSeconds.value ?? null,
       wormAmplitudeArcsec: worm?.harmonics.find(({ order }) => order === 1)?.amplitudeArcsec.value ?? null,
       peakToPeakArcsec: worm?.peakToPeakArcsec.value ?? null,

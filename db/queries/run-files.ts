@@ -50,6 +50,11 @@ export async function insertRunFile(
   return { byteLength, sha256: hash.digest('hex') }
 }
 
+/** Takes back what insertRunFile wrote in the same transaction. */
+export async function deleteRunFile(trx: Transaction<Database>, runId: string): Promise<void> {
+  await trx.deleteFrom('runFileChunks').where('runId', '=', runId).execute()
+}
+
 /** The original bytes, one row after the other. */
 export async function* readRunFile(db: Kysely<Database>, access: ProjectAccess, runId: string): AsyncGenerator<Buffer> {
   for (let index = 0; ; index += 1) {

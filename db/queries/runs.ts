@@ -87,6 +87,26 @@ export async function insertRun(
   return findRun(trx, access, id)
 }
 
+/**
+ * A run that this person has stored from the very same file under the same names and that nobody has read or changed since:
+ * what is there when the answer to an upload was lost and the file is sent again.
+ */
+export function findUnreadTwin(
+  db: Kysely<Database>,
+  access: ProjectAccess<'edit'>,
+  { name, fileName, file }: Omit<NewRun, 'id'>,
+) {
+  return runsOf(db, access)
+    .where('runs.createdBy', '=', access.userId)
+    .where('runs.status', '=', 'uploaded')
+    .where('runs.version', '=', 1)
+    .where('runs.fileSha256', '=', file.sha256)
+    .where('runs.name', '=', name)
+    .where('runs.fileName', '=', fileName)
+    .limit(1)
+    .executeTakeFirst()
+}
+
 /** The run, if it still is at the version that a change was made from; else the refusal that tells of the other change. */
 export async function findRunAtVersion(
   db: Kysely<Database>,

@@ -72,6 +72,15 @@ describe('a saved analysis', () => {
     expect((await get(analysis.GET, { analysisId: made.id })).result).toEqual(result)
   })
 
+  test('saved again after a lost answer is kept once; with another name, another is kept', async () => {
+    const run = await makeRun(owner)
+    const first = await makeAnalysis(owner, run.id)
+    expect(await makeAnalysis(owner, run.id)).toEqual(first)
+    expect((await makeAnalysis(editor, run.id)).id).not.toBe(first.id)
+    const changed = someResult({ used: 58 })
+    expect((await makeAnalysis(owner, run.id, changed)).id).not.toBe(first.id)
+  })
+
   test('without a worm shows none in the list', async () => {
     const run = await makeRun(owner)
     await makeAnalysis(owner, run.id, someResult({ worm: null, wormReason: 'short-run', table: null }))
@@ -126,6 +135,13 @@ describe('a saved analysis', () => {
 })
 
 describe('notes', () => {
+  test.each(['a\u0000b', 'a\ud800b'])('text that no database can hold is refused: %j', async (text) => {
+    const { id: analysisId } = await makeAnalysis(owner, (await makeRun(owner)).id)
+    const response = await post(notes.POST, { anchor: { kind: 'whole' }, text }, { analysisId })
+    expect(response.status).toBe(400)
+    expect((await response.json()).error.code).toBe('bad-request')
+  })
+
   test.each([
     { kind: 'whole' },
     { kind: 'time', timeSeconds: -12.25 },
