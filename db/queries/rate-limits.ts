@@ -37,19 +37,19 @@ export async function countAttempt(db: Kysely<Database>, { key, most, windowSeco
   return stateOf(row, most)
 }
 
-/** Whether the next attempt would be one too many; counts nothing. */
-export async function findLimitState(db: Kysely<Database>, { key, most }: Limit): Promise<LimitState> {
-  const row = await db
-    .selectFrom('rateLimits')
-    .select(['hits', 'expiresAt'])
-    .where('key', '=', key)
-    .where('expiresAt', '>', sql<Date>`now()`)
-    .executeTakeFirst()
-  return stateOf(row, most - 1)
-}
-
 export async function forgetAttempts(db: Kysely<Database>, key: string): Promise<void> {
   await db.deleteFrom('rateLimits').where('key', '=', key).execute()
+}
+
+/** Takes one attempt back that turned out not to be one to count. */
+export async function returnAttempt(db: Kysely<Database>, key: string): Promise<void> {
+  await db.deleteFrom('rateLimits').where('key', '=', key).where('hits', '<=', 1).execute()
+  await db
+    .updateTable('rateLimits')
+    .set({ hits: sql<number>`hits - 1` })
+    .where('key', '=', key)
+    .where('hits', '>', 1)
+    .execute()
 }
 
 export async function deleteExpiredLimits(db: Kysely<Database>): Promise<void> {

@@ -1,7 +1,7 @@
 import 'server-only'
 import { createHash } from 'node:crypto'
 import { database } from '@/db'
-import { countAttempt, findLimitState, forgetAttempts, type Limit } from '@/db/queries/rate-limits'
+import { countAttempt, type Limit } from '@/db/queries/rate-limits'
 import { environment } from './environment'
 import { AppError } from './errors'
 
@@ -56,18 +56,4 @@ function tooMany(secondsLeft: number): AppError {
 export async function takeAttempt(limit: Limit): Promise<void> {
   const { isOver, secondsLeft } = await countAttempt(database(), limit)
   if (isOver) throw tooMany(secondsLeft)
-}
-
-/** Refuses once failures have filled the limit, without counting. */
-export async function assertBelow(limit: Limit): Promise<void> {
-  const { isOver, secondsLeft } = await findLimitState(database(), limit)
-  if (isOver) throw tooMany(secondsLeft)
-}
-
-export async function countFailure(limit: Limit): Promise<void> {
-  await countAttempt(database(), limit)
-}
-
-export async function forgetFailures(limit: Limit): Promise<void> {
-  await forgetAttempts(database(), limit.key)
 }

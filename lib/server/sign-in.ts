@@ -2,13 +2,13 @@ import 'server-only'
 import type { z } from 'zod'
 import { database } from '@/db'
 import { insertAccountEvent } from '@/db/queries/audit'
-import { deleteExpiredLimits } from '@/db/queries/rate-limits'
+import { deleteExpiredLimits, forgetAttempts, returnAttempt } from '@/db/queries/rate-limits'
 import { findUserForSignIn, insertUser } from '@/db/queries/users'
 import type { signInSchema, signUpSchema } from '@/lib/schemas/api'
 import type { SignedInUser } from './auth'
 import { AppError } from './errors'
 import { hashPassword, isPasswordRight } from './passwords'
-import { accountLimit, addressLimit, assertBelow, countFailure, forgetFailures, takeAttempt } from './rate-limit'
+import { accountLimit, addressLimit, takeAttempt } from './rate-limit'
 
 /** Makes an account. @throws {AppError} not-valid with fields.email when the address has one */
 export async function signUp(request: Request, form: z.output<typeof signUpSchema>): Promise<SignedInUser> {
@@ -28,16 +28,21 @@ export async function signUp(request: Request, form: z.output<typeof signUpSchem
     })
 }
 
-/** Only failures count towards the limits. @throws {AppError} wrong-credentials, the same for an unknown address */
+/**
+ * Only failures count towards the limits; an attempt is counted before the password is looked at, so that guesses made at
+ * once find the limit too. @throws {AppError} wrong-credentials, the same for an unknown address
+ */
 export async function signIn(request: Request, form: z.output<typeof signInSchema>): Promise<SignedInUser> {
-  const limits = [accountLimit('sign-in account', form.email), addressLimit('sign-in address', request)]
-  for (const limit of limits) await assertBelow(limit)
+  const ofAccount = accountLimit('sign-in account', form.email)
+  const ofAddress = addressLimit('sign-in address', request)
+  await takeAttempt(ofAccount)
+  await takeAttempt(ofAddress)
   const found = await findUserForSignIn(database(), form.email)
   if (!(await isPasswordRight(found?.passwordHash, form.password)) || !found) {
-    for (const limit of limits) await countFailure(limit)
     throw new AppError('wrong-credentials', 'The e-mail address or the password is not right')
   }
-  await forgetFailures(limits[0])
+  await forgetAttempts(database(), ofAccount.key)
+  await returnAttempt(database(), ofAddress.key)
   await deleteExpiredLimits(database())
   await insertAccountEvent(database(), found.id, { action: 'account.sign-in', subject: found.email })
   return { id: found.id, displayName: found.displayName, email: found.email }

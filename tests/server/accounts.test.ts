@@ -79,6 +79,14 @@ test('signing in ends the session that the browser had', async () => {
   expect(await whoIs(cookieOf(response))).toBe(person.displayName)
 })
 
+test('signing up ends the session that the browser had', async () => {
+  const first = await signUpPerson('Before')
+  const body = { displayName: 'After', email: 'after@example.org', password: PASSWORD }
+  const response = await post(signUp, body, first.cookie)
+  expect(await whoIs(first.cookie)).toBeNull()
+  expect(await whoIs(cookieOf(response))).toBe('After')
+})
+
 test('a wrong password and an unknown address get the same answer', async () => {
   const wrong = await post(signIn, { email: person.email, password: 'something else' })
   const unknown = await post(signIn, { email: 'nobody@example.org', password: PASSWORD })
@@ -102,6 +110,25 @@ test('ten failures close an account to further attempts, even with the right pas
     .set({ expiresAt: new Date(Date.now() - 1000) })
     .execute()
   expect((await post(signIn, { email, password: PASSWORD })).status).toBe(200)
+})
+
+test('guesses made at once are counted before they are looked at', async () => {
+  const email = 'hurried@example.org'
+  expect((await post(signUp, { displayName: 'Hurried', email, password: PASSWORD })).status).toBe(201)
+  const guesses = Array.from({ length: 30 }, (_, index) => post(signIn, { email, password: `guess ${index}` }))
+  const statuses = (await Promise.all(guesses)).map(({ status }) => status)
+  expect(statuses.filter((status) => status === 401)).toHaveLength(10)
+  expect(statuses.filter((status) => status === 429)).toHaveLength(20)
+})
+
+test('signing in does not use up the attempts of an address', async () => {
+  const hits = () =>
+    database.db.selectFrom('rateLimits').select('hits').where('key', '=', 'sign-in address shared').executeTakeFirst()
+  const before = await hits()
+  for (let round = 0; round < 3; round += 1) {
+    expect((await post(signIn, { email: person.email, password: PASSWORD })).status).toBe(200)
+  }
+  expect(await hits()).toEqual(before)
 })
 
 test('with a trusted proxy the last forwarded address is counted, without one it is not believed', async () => {
