@@ -21,8 +21,9 @@ export function encodeCursor({ at, id }: Place): string {
 export function decodeCursor(cursor: string): Place | null {
   const [instant = '', id = ''] = Buffer.from(cursor, 'base64url').toString('utf8').split(' ')
   const at = new Date(instant)
+  const isInstant = /^\d{4}-\d\d-\d\dT[\d:.]+Z$/.test(instant) && !Number.isNaN(at.getTime())
   const isUuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/.test(id)
-  return Number.isNaN(at.getTime()) || !isUuid ? null : { at, id }
+  return isInstant && isUuid ? { at, id } : null
 }
 
 export function pageSize(limit: number | undefined): number {

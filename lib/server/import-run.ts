@@ -9,16 +9,25 @@ import { findRunAtVersion, updateRunColumns } from '@/db/queries/runs'
 import { readColumns } from '@/db/read-columns'
 import type { importRunSchema } from '@/lib/schemas/api'
 import { unreadableFile } from './errors'
+import { createGate } from './gate'
 
 type RunImport = z.output<typeof importRunSchema>
 
+/** A file, its columns and what they are packed into: some 250 MB for the largest. */
+const gate = createGate(3, 'Several files are being read just now. Try again in a moment; yours is stored.')
+
 /** Reads the stored file with the given settings; on a fault the run and its file stay as they were. */
-export async function importRun(access: ProjectAccess<'edit'>, runId: string, wanted: RunImport) {
+export function importRun(access: ProjectAccess<'edit'>, runId: string, wanted: RunImport) {
+  return gate(() => readAndKeep(access, runId, wanted))
+}
+
+async function readAndKeep(access: ProjectAccess<'edit'>, runId: string, wanted: RunImport) {
   const { version, settings, conversion } = wanted
-  await findRunAtVersion(database(), access, { runId, version })
-  const parts: Buffer[] = []
-  for await (const part of readRunFile(database(), access, runId)) parts.push(part)
-  const outcome = await readColumns(Buffer.concat(parts), settings)
+  const { byteLength } = await findRunAtVersion(database(), access, { runId, version })
+  const bytes = Buffer.alloc(byteLength)
+  let filled = 0
+  for await (const part of readRunFile(database(), access, runId)) filled += part.copy(bytes, filled)
+  const outcome = await readColumns(bytes, settings)
   if (!outcome.ok) throw unreadableFile(outcome.fault)
   const { rowCount, samplesSha256, compressed, startedAtMs } = outcome
   const startedAt = wanted.facts.startedAt ?? (startedAtMs === null ? null : new Date(startedAtMs).toISOString())

@@ -2,6 +2,7 @@ import 'server-only'
 import { z } from 'zod'
 import { database } from '@/db'
 import { accessProject, type ProjectAccess, type Right } from '@/db/queries/access'
+import { decodeCursor } from '@/db/queries/page'
 import { requireUser, type SignedInUser } from './auth'
 import { bodyParts } from './body'
 import { AppError, errorResponse } from './errors'
@@ -78,7 +79,20 @@ export async function readJson<Schema extends z.ZodType>(request: Request, schem
   } catch {
     throw new AppError('bad-request', 'The request holds no readable JSON')
   }
+  if (!isStorable(value)) {
+    throw new AppError(
+      'bad-request',
+      'A text holds a character that can’t be kept (NUL, or half of a pair). Remove it.',
+    )
+  }
   return schema.parse(value)
+}
+
+/** Whether no text in it holds what PostgreSQL takes neither as text nor in JSON: NUL and single surrogates. */
+function isStorable(value: unknown): boolean {
+  if (typeof value === 'string') return !/\0|\p{Surrogate}/u.test(value)
+  if (value === null || typeof value !== 'object') return true
+  return Object.entries(value).every(([key, item]) => isStorable(key) && isStorable(item))
 }
 
 /** Answers a value in the form that the schema promises; nothing that the schema does not name leaves the server. */
@@ -91,7 +105,11 @@ export function answerNothing(): Response {
 }
 
 const pageQuerySchema = z.object({
-  cursor: z.string().max(200).optional(),
+  cursor: z
+    .string()
+    .max(200)
+    .refine((cursor) => cursor === '' || decodeCursor(cursor), { error: 'This is no place in the list' })
+    .optional(),
   limit: z.coerce.number().int().min(1).optional(),
 })
 

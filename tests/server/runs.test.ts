@@ -163,6 +163,43 @@ test('a file name is cut to its last part, and nothing in it reaches a header', 
   )
 })
 
+test('a file sent again after a lost answer is stored once; once read, or under another name, it is another run', async () => {
+  const first = await upload(owner, recordingText(61))
+  const before = await counts()
+  expect(await upload(owner, recordingText(61))).toEqual(first)
+  expect(await counts()).toEqual(before)
+  expect((await upload(editor, recordingText(61))).id).not.toBe(first.id)
+  const bytes = new TextEncoder().encode(recordingText(61))
+  const other = await (await post(bytes)).json()
+  expect(other.id).not.toBe(first.id)
+  expect((await put(first.id)).status).toBe(200)
+  expect((await upload(owner, recordingText(61))).id).not.toBe(first.id)
+})
+
+test('more readings at once than the server has room for are put off, and nothing is lost', async () => {
+  const stored = []
+  for (let index = 0; index < 8; index += 1) stored.push(await upload(owner, recordingText(70 + index)))
+  const statuses = (await Promise.all(stored.map(({ id }) => put(id)))).map(({ status }) => status)
+  expect(new Set(statuses)).toEqual(new Set([200, 503]))
+  const later = await put(stored[statuses.indexOf(503)].id)
+  expect(later.status).toBe(200)
+})
+
+test('characters that the database can’t hold are left out of names', async () => {
+  const bytes = new TextEncoder().encode(recordingText(62))
+  const query = '?name=Ni%00ght%07&fileName=night.csv'
+  const init = { method: 'POST', body: bytes, cookie: owner.cookie }
+  const response = await call(runs.POST, `/${query}`, { projectId }, init)
+  expect(await response.json()).toMatchObject({ name: 'Night' })
+})
+
+test('a place in the list that is none of ours is refused', async () => {
+  for (const cursor of ['x', Buffer.from('+275000-01-01T00:00:00Z x').toString('base64url')]) {
+    const response = await call(runs.GET, `/?cursor=${cursor}`, { projectId }, { cookie: owner.cookie })
+    expect(response.status).toBe(422)
+  }
+})
+
 function put(runId: string, given: Record<string, unknown> = {}) {
   const body = { version: 1, settings: SETTINGS, conversion: CONVERSION, facts: unknownRunFacts(), ...given }
   return call(runImport.PUT, '/', { projectId, runId }, { method: 'PUT', body, cookie: editor.cookie })
@@ -305,7 +342,7 @@ test('the list is paged newest first, without a gap or a repetition', async () =
   const { id: listed, people } = await makeProject(database.db)
   const where = { projectId: listed, cookie: people.owner.cookie }
   const made: string[] = []
-  for (let index = 0; index < 5; index += 1) made.push((await upload(where)).id)
+  for (let index = 0; index < 5; index += 1) made.push((await upload(where, recordingText(60 + index))).id)
   const at = new Date('2026-11-01T00:00:00Z')
   await database.db.updateTable('runs').set({ createdAt: at }).where('id', 'in', made.slice(0, 3)).execute()
   const seen: string[] = []
