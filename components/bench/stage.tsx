@@ -20,7 +20,7 @@ export function Stage({ number, title, question, settings, isLocked, finding, as
   return (
     <section
       aria-labelledby={headingId}
-      className="grid grid-cols-1 rounded-card border border-rule bg-card lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.25rem]"
+      className="grid grid-cols-1 rounded-card border border-rule bg-card lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.75rem]"
     >
       <div className="min-w-0 px-5 pt-5 max-sm:px-4 lg:border-r lg:border-rule lg:pb-5">
         <p className="figures text-sm text-brass" aria-hidden="true">

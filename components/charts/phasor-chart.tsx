@@ -6,9 +6,9 @@ import { harmonicName } from '@/lib/findings/words'
 import { formatEstimate, formatNumber } from '@/lib/units'
 import { SvgPicture } from './svg-picture'
 
-const CELL = 216
-const HEIGHT = 262
-const RIM = 76
+/** Sizes of one picture; two abreast, on a phone, it is drawn smaller so that its letters keep their size. */
+const WIDE = { cell: 216, height: 262, rim: 76, reach: 96 }
+const SMALL = { cell: 172, height: 232, rim: 62, reach: 80 }
 const COLUMNS = 4
 
 /** One small picture a harmonic: size and phase as a dot, and the ellipse in which 95 of 100 repeats would fall. */
@@ -22,13 +22,14 @@ export function PhasorChart({
   columns?: number
 }) {
   const across = Math.min(columns, Math.max(1, harmonics.length))
+  const size = columns < COLUMNS ? SMALL : WIDE
   const down = Math.ceil(harmonics.length / across)
   return (
     <SvgPicture
       name="harmonics"
       summary={summary}
-      width={across * CELL}
-      height={down * HEIGHT}
+      width={across * size.cell}
+      height={down * size.height}
       className="mx-auto block h-auto w-full"
       table={{
         columns: [
@@ -48,22 +49,23 @@ export function PhasorChart({
       {harmonics.map((harmonic, index) => (
         <g
           key={harmonic.order}
-          transform={`translate(${(index % across) * CELL + CELL / 2} ${Math.floor(index / across) * HEIGHT + 106})`}
+          transform={`translate(${((index % across) + 0.5) * size.cell} ${Math.floor(index / across) * size.height + size.rim + 30})`}
         >
-          <Phasor harmonic={harmonic} />
+          <Phasor harmonic={harmonic} size={size} />
         </g>
       ))}
     </SvgPicture>
   )
 }
 
-function Phasor({ harmonic }: { harmonic: HarmonicResult }) {
+function Phasor({ harmonic, size }: { harmonic: HarmonicResult; size: typeof WIDE }) {
+  const { cell, height, rim, reach } = size
   const { order, cosArcsec, sinArcsec, covarianceArcsec2, amplitudeArcsec, phaseDegrees, isPhaseMeaningful } = harmonic
   const amplitude = Math.hypot(cosArcsec, sinArcsec)
   const ellipse = errorEllipse(covarianceArcsec2)
   // The dot lies on the rim, unless the ellipse would leave the picture.
   const rimArcsec = Math.max(amplitude, ellipse.major * 0.72, 1e-9)
-  const scale = RIM / rimArcsec
+  const scale = rim / rimArcsec
   const x = cosArcsec * scale
   const y = -sinArcsec * scale
   return (
@@ -71,14 +73,10 @@ function Phasor({ harmonic }: { harmonic: HarmonicResult }) {
       <title>
         {`${harmonicName(order)}: ${formatEstimate(amplitudeArcsec, { unit: '″' })}, ${isPhaseMeaningful ? `at ${formatEstimate(phaseDegrees, { unit: '°' })}` : 'phase unknown'}`}
       </title>
-      <rect x={-CELL / 2} y={-104} width={CELL} height={HEIGHT} className="fill-transparent" />
-      <circle r={RIM} fill="none" className="stroke-faint" />
-      <circle r={RIM / 2} fill="none" className="stroke-faint" />
-      <path
-        d={`M${-RIM - 20} 0H${RIM + 20}M0 ${-RIM - 20}V${RIM + 20}`}
-        className="stroke-soft"
-        strokeDasharray="2 3"
-      />
+      <rect x={-cell / 2} y={-rim - 28} width={cell} height={height} className="fill-transparent" />
+      <circle r={rim} fill="none" className="stroke-faint" />
+      <circle r={rim / 2} fill="none" className="stroke-faint" />
+      <path d={`M${-reach} 0H${reach}M0 ${-reach}V${reach}`} className="stroke-soft" strokeDasharray="2 3" />
       <ellipse
         rx={Math.max(ellipse.major * scale, 1)}
         ry={Math.max(ellipse.minor * scale, 1)}
@@ -102,7 +100,7 @@ function Phasor({ harmonic }: { harmonic: HarmonicResult }) {
         strokeWidth="1.5"
       />
       <text
-        y={RIM + 44}
+        y={reach + 24}
         textAnchor="middle"
         fontSize="13"
         fontWeight="600"
@@ -110,7 +108,7 @@ function Phasor({ harmonic }: { harmonic: HarmonicResult }) {
       >
         {harmonicName(order)}
       </text>
-      <text y={RIM + 63} textAnchor="middle" fontSize="12.5" className="figures fill-soft">
+      <text y={reach + 43} textAnchor="middle" fontSize="12.5" className="figures fill-soft">
         {isPhaseMeaningful ? `rim ${formatNumber(rimArcsec, rimArcsec < 0.1 ? 3 : 2)}″` : 'not certain'}
       </text>
     </>

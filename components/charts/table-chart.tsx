@@ -8,6 +8,8 @@ import { formatNumber } from '@/lib/units'
 import { LegendEntry } from './picture'
 import { SvgPicture } from './svg-picture'
 
+const LINE_HEIGHT = 15
+const LETTER_WIDTH = 7.3
 const MARGIN = { left: 56, right: 22, top: 14, bottom: 52 }
 
 interface TableChartProps {
@@ -23,15 +25,23 @@ interface TableChartProps {
 export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isNarrow }: TableChartProps) {
   const [pointed, setPointed] = useState<number | null>(null)
   const { bars, curve, unit } = picture
-  const width = isNarrow ? 420 : 870
-  const height = 238
+  // Drawn at about the size it is seen at, so that the letters keep theirs.
+  const width = isNarrow ? 336 : 870
+  const titleLines = wrapped(axisTitle, width - 24)
+  const extra = LINE_HEIGHT * (titleLines.length - 1)
+  const height = 238 + extra
   const [low, high] = extent(
     bars.map(({ value }) => value),
     curve.map(({ value }) => value),
     [0],
   )
   const pad = 0.06 * Math.max(high - low, 1e-12)
-  const plot = { left: MARGIN.left, right: width - MARGIN.right, top: MARGIN.top, bottom: height - MARGIN.bottom }
+  const plot = {
+    left: MARGIN.left,
+    right: width - MARGIN.right,
+    top: MARGIN.top + extra,
+    bottom: height - MARGIN.bottom,
+  }
   const x = (angle: number) => plot.left + (angle / 360) * (plot.right - plot.left)
   const y = (value: number) => plot.bottom - ((value - low + pad) / (high - low + 2 * pad)) * (plot.bottom - plot.top)
   const ticks = niceTicks([low - pad, high + pad], 4, { isSigned: true })
@@ -70,9 +80,11 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
         </>
       }
     >
-      <text x="12" y="10" fontSize="12" className="figures fill-soft">
-        {axisTitle}
-      </text>
+      {titleLines.map((line, index) => (
+        <text key={line} x="12" y={10 + LINE_HEIGHT * index} fontSize="12" className="figures fill-soft">
+          {line}
+        </text>
+      ))}
       {ticks.values.map((value, index) => (
         <g key={value}>
           <line x1={plot.left} x2={plot.right} y1={y(value)} y2={y(value)} className="stroke-faint" />
@@ -133,4 +145,14 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
       </text>
     </SvgPicture>
   )
+}
+
+/** Words in lines of at most this width, at the size of the axis titles. */
+function wrapped(text: string, widthPx: number): string[] {
+  const most = Math.floor(widthPx / LETTER_WIDTH)
+  return text.split(' ').reduce<string[]>((lines, word) => {
+    const last = lines.at(-1)
+    if (last === undefined || last.length + 1 + word.length > most) return [...lines, word]
+    return [...lines.slice(0, -1), `${last} ${word}`]
+  }, [])
 }

@@ -47,6 +47,7 @@ const columns: readonly DataColumn<AnalysisRow>[] = [
     id: 'amplitude',
     header: 'Worm amplitude',
     isNumeric: true,
+    isSecondary: true,
     value: ({ wormAmplitudeArcsec }) => wormAmplitudeArcsec,
     cell: ({ wormAmplitudeArcsec }) => formatNumber(wormAmplitudeArcsec, 2, { unit: '″' }),
   },

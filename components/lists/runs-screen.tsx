@@ -37,6 +37,7 @@ const columns: readonly DataColumn<RunRow>[] = [
     id: 'rows',
     header: 'Rows',
     isNumeric: true,
+    isSecondary: true,
     value: ({ rowCount }) => rowCount,
     cell: ({ rowCount }) => (rowCount === null ? '–' : formatCount(rowCount)),
   },

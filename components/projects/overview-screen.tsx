@@ -122,7 +122,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
                   key={run.id}
                   className="flex flex-wrap justify-between gap-x-4 border-b border-rule py-2 last:border-b-0"
                 >
-                  <Link className="link font-semibold" href={`${base}/runs/${run.id}`}>
+                  <Link className="link font-semibold pointer-coarse:py-2.5" href={`${base}/runs/${run.id}`}>
                     {run.name}
                   </Link>
                   <span className="text-sm text-soft">
@@ -173,7 +173,10 @@ function HistoryTable({ projectId, history }: { projectId: string; history: read
           .map((point) => (
             <tr key={point.analysisId} className="border-b border-rule">
               <th scope="row" className="py-1.5 text-left font-normal whitespace-nowrap">
-                <Link href={`/projects/${projectId}/analyses/${point.analysisId}`} className="hover:underline">
+                <Link
+                  href={`/projects/${projectId}/analyses/${point.analysisId}`}
+                  className="hover:underline pointer-coarse:inline-block pointer-coarse:py-3"
+                >
                   {formatDay(point.at)}
                 </Link>
               </th>

@@ -12,7 +12,7 @@ interface SiteHeaderProps {
 export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
   return (
     <header className="no-print border-b border-rule bg-card">
-      <div className="mx-auto grid max-w-[1680px] grid-cols-[auto_minmax(0,1fr)] items-center gap-x-7 gap-y-2 px-8 py-2.5 max-sm:gap-x-3 max-sm:px-4 md:flex">
+      <div className="mx-auto grid max-w-[1680px] grid-cols-[auto_minmax(0,1fr)] items-center gap-x-7 gap-y-2 px-8 py-2.5 max-sm:gap-x-2 max-sm:px-4 md:flex">
         <Link
           href="/"
           className="flex items-center gap-2.5 rounded-control text-finding font-semibold pointer-coarse:min-h-11"
@@ -21,7 +21,7 @@ export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
           Turnwright
         </Link>
         <SiteNav isSignedIn={user !== null} />
-        <div className="ml-auto flex min-w-0 items-center gap-4 max-sm:gap-3">
+        <div className="ml-auto flex min-w-0 items-center gap-4 max-sm:gap-2">
           <ThemeSwitch serverTheme={serverTheme} />
           {user ? (
             <Link

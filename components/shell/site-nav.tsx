@@ -2,16 +2,29 @@
 
 import Link from 'next/link'
 import { usePathname } from 'next/navigation'
+import { useEffect, useRef } from 'react'
 import { classNames } from '@/components/ui/class-names'
 import { currentHref, navItems } from './nav-items'
 
-/** Inside a project its parts, elsewhere the ways in. On a phone the row scrolls. */
+/** Inside a project its parts, elsewhere the ways in. On a phone the row scrolls, to where one is. */
 export function SiteNav({ isSignedIn }: { isSignedIn: boolean }) {
   const pathname = usePathname()
   const items = navItems(pathname, isSignedIn)
   const current = currentHref(pathname, items)
+  const nav = useRef<HTMLElement>(null)
+
+  useEffect(() => {
+    const row = nav.current
+    const link = row?.querySelector<HTMLElement>('[aria-current]')
+    if (row && link) row.scrollLeft = link.offsetLeft - row.offsetLeft - (row.clientWidth - link.offsetWidth) / 2
+  }, [current])
+
   return (
-    <nav aria-label="Main" className="-mx-1 flex min-w-0 overflow-x-auto px-1 max-md:order-last max-md:col-span-2">
+    <nav
+      ref={nav}
+      aria-label="Main"
+      className="-mx-1 flex min-w-0 overflow-x-auto px-1 max-md:order-last max-md:col-span-2"
+    >
       <ul className="flex gap-5">
         {items.map(({ href, label }) => (
           <li key={href}>

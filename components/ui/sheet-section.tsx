@@ -25,7 +25,7 @@ export function SheetSection({ number, title, question, settings, finding, aside
       className={classNames(
         'grid grid-cols-1',
         aside
-          ? 'lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.25rem]'
+          ? 'lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.75rem]'
           : 'lg:grid-cols-[13rem_minmax(0,1fr)]',
       )}
     >

@@ -1,4 +1,5 @@
 import type { AnalysisResult, AnalysisViews } from '@/lib/analysis/types'
+import { withinSentence } from '@/lib/findings/words'
 import { formatNumber, formatPeriod } from '@/lib/units'
 import { placeStemLabels, type LabelledStem, type LabelPlace } from './landing-labels'
 import { logScale, short, type PlotBox, type Tick } from './svg-geometry'
@@ -40,7 +41,7 @@ export function landingStems(result: AnalysisResult, { spectrum }: AnalysisViews
     ...lines.map((line) => ({
       periodSeconds: line.periodSeconds.value,
       amplitudeArcsec: line.amplitudeArcsec.value,
-      label: line.source ?? formatPeriod(line.periodSeconds.value),
+      label: line.source === null ? formatPeriod(line.periodSeconds.value) : withinSentence(line.source),
       kind: 'line' as const,
     })),
   ].filter(({ periodSeconds }) => periodSeconds <= longest && periodSeconds >= shortest)

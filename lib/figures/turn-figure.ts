@@ -131,7 +131,7 @@ export function slipFigure({ slip, slipForTenPercentDegrees, slipForNoHelpDegree
           }),
         ]
       : []),
-    word(`no help beyond ±${slipForNoHelpDegrees.toFixed(0)}°`, {
+    word(narrow ? 'no help' : `no help beyond ±${slipForNoHelpDegrees.toFixed(0)}°`, {
       x: -slipForTenPercentDegrees,
       xanchor: 'right',
       xshift: -6,
