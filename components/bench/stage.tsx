@@ -29,7 +29,7 @@ export function Stage({ number, title, question, settings, isLocked, finding, as
         <h2 id={headingId} className="text-finding font-semibold">
           {title}
         </h2>
-        <p className="mt-2 max-w-[60ch] text-sm text-soft">{question}</p>
+        <p className="mt-2 max-w-[60ch] text-sm text-pretty text-soft">{question}</p>
         {settings ? (
           <details className="stage-settings mt-2">
             <summary className="py-1.5 text-sm font-semibold pointer-coarse:py-3.5">Settings</summary>

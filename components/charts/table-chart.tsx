@@ -93,18 +93,19 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
           </text>
         </g>
       ))}
-      {bars.map((bar) => (
-        <rect
-          // Bars that touch are drawn to whole pixels, else their edges shine through as stripes.
-          shapeRendering={gap === 0 ? 'crispEdges' : undefined}
-          key={bar.index}
-          x={x(bar.left) + gap}
-          width={Math.max(barWidth - 2 * gap, 0.5)}
-          y={Math.min(y(bar.value), y(0))}
-          height={Math.max(Math.abs(y(bar.value) - y(0)), 0.5)}
-          className={bar === hit ? 'fill-brass' : 'fill-brass-fill opacity-80'}
-        />
-      ))}
+      <g className="opacity-80">
+        {bars.map((bar) => (
+          <rect
+            key={bar.index}
+            x={x(bar.left) + gap}
+            // Bars that touch overlap a little, else the ground shines through between them.
+            width={gap === 0 ? 1.2 * barWidth : Math.max(barWidth - 2 * gap, 0.5)}
+            y={Math.min(y(bar.value), y(0))}
+            height={Math.max(Math.abs(y(bar.value) - y(0)), 0.5)}
+            className={bar === hit ? 'fill-brass' : 'fill-brass-fill'}
+          />
+        ))}
+      </g>
       <line x1={plot.left} x2={plot.right} y1={y(0)} y2={y(0)} className="stroke-soft" />
       <polyline
         points={curve

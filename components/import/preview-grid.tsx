@@ -53,7 +53,7 @@ export function PreviewGrid({ preview, columns, onColumns, fault }: PreviewGridP
               row
             </th>
             {preview.columns.map((column) => (
-              <th key={column.index} scope="col" className="min-w-52 px-3 py-2 font-normal max-sm:min-w-36 max-sm:px-2">
+              <th key={column.index} scope="col" className="min-w-52 px-3 py-2 font-normal max-sm:min-w-32 max-sm:px-2">
                 <ColumnHead
                   column={column}
                   columns={columns}

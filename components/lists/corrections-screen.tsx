@@ -41,10 +41,11 @@ const columns: readonly DataColumn<CorrectionRow>[] = [
     isSecondary: true,
     value: ({ kind }) => (kind === 'addition' ? 'added to the table in the mount' : 'stands alone'),
   },
-  { id: 'bins', header: 'Bins', isNumeric: true, value: ({ settings }) => settings.binCount },
+  { id: 'bins', header: 'Bins', isSecondary: true, isNumeric: true, value: ({ settings }) => settings.binCount },
   {
     id: 'unit',
     header: 'Values',
+    isSecondary: true,
     value: ({ settings }) => `${settings.meaning}, ${unitText(settings.unit)}`,
   },
   { id: 'sense', header: 'Sense', value: ({ senseBasis }) => senseBasis },

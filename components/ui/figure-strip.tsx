@@ -23,10 +23,10 @@ export function FigureStrip({ figures, label = 'Key figures' }: { figures: reado
         {figures.map((figure, index) => (
           <div
             key={index}
-            className="min-w-0 border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:last:odd:col-span-2"
+            className="flex min-w-0 flex-col border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:last:odd:col-span-2"
           >
             <dt className="text-sm text-soft">{figure.label}</dt>
-            <dd className="mt-0.5">
+            <dd className="mt-auto pt-0.5">
               <Figure {...figure} />
             </dd>
           </div>

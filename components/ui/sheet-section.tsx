@@ -34,7 +34,7 @@ export function SheetSection({ number, title, question, settings, finding, aside
         <h2 id={headingId} className="text-finding font-semibold">
           {title}
         </h2>
-        {question ? <div className="mt-2 text-sm text-soft">{question}</div> : null}
+        {question ? <div className="mt-2 text-sm text-pretty text-soft">{question}</div> : null}
         {settings ? (
           <>
             <div className="mt-3 hidden lg:block">{settings}</div>
