@@ -8,8 +8,18 @@ function migrator(db: Kysely<Database>): Migrator {
   return new Migrator({ db, provider: { getMigrations: async () => migrations } })
 }
 
+/** A database that a later release has changed already, in words that say what to do. */
+function told(error: unknown): unknown {
+  const missing = error instanceof Error ? /previously executed migration (\S+) is missing/.exec(error.message) : null
+  if (!missing) return error
+  return new Error(
+    `The database is of a later release than this one: it holds the migration ${missing[1]}. Start that release, or, with it, go back: node --import tsx db/migrate.ts ${Object.keys(migrations).at(-1)}`,
+    { cause: error },
+  )
+}
+
 function finished({ error, results }: MigrationResultSet): string[] {
-  if (error) throw error
+  if (error) throw told(error)
   return (results ?? []).filter(({ status }) => status === 'Success').map(({ migrationName }) => migrationName)
 }
 

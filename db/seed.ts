@@ -1,5 +1,5 @@
 import { randomInt } from 'node:crypto'
-import { mkdirSync, writeFileSync } from 'node:fs'
+import { mkdirSync, renameSync, writeFileSync } from 'node:fs'
 import { dirname } from 'node:path'
 import { hash } from '@node-rs/argon2'
 import { sql, type Kysely } from 'kysely'
@@ -49,7 +49,9 @@ async function main(): Promise<void> {
     }
     await seedDemo(db, ids as DemoUserIds)
     mkdirSync(dirname(signInsFile), { recursive: true })
-    writeFileSync(signInsFile, `${JSON.stringify(signIns, null, 2)}\n`, { mode: 0o600 })
+    // Under another name first: a half-written file would be taken for the whole at every later start.
+    writeFileSync(`${signInsFile}.new`, `${JSON.stringify(signIns, null, 2)}\n`, { mode: 0o600 })
+    renameSync(`${signInsFile}.new`, signInsFile)
   } finally {
     await db.destroy()
   }

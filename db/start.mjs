@@ -1,6 +1,7 @@
 import { existsSync, readFileSync, rmSync } from 'node:fs'
 import { dirname, join } from 'node:path'
 import { fileURLToPath } from 'node:url'
+import { checkDatabase } from './local/check-database.mjs'
 import { checkNodeVersion, ensureDependencies } from './local/dependencies.mjs'
 import { openOwnCluster } from './local/own-cluster.mjs'
 import { freePortFrom, isPortFree } from './local/ports.mjs'
@@ -42,7 +43,10 @@ async function choosePort(wanted) {
 
 /** Our own cluster, with the demo in it, unless DATABASE_URL names another database. */
 async function openDatabase(settings) {
-  if (settings.DATABASE_URL) return { url: settings.DATABASE_URL, isOwn: false }
+  if (settings.DATABASE_URL) {
+    await checkDatabase(settings.DATABASE_URL)
+    return { url: settings.DATABASE_URL, isOwn: false }
+  }
   const cluster = await openOwnCluster(root)
   started.push(cluster.close)
   if (cluster.isNew) rmSync(signInsFile, { force: true })
@@ -80,6 +84,12 @@ async function main() {
   if (!isStopping) process.exitCode = code || 1
 }
 
+/** A checkout that was started by another user (root, say) before holds files that are not ours. */
+function noRight({ code, path }) {
+  if (!['EACCES', 'EPERM'].includes(code) || !path) return null
+  return `\nThis user may not write ${path}: start as the one who started first, or make the checkout's files yours (chown).`
+}
+
 function stopNow() {
   if (isStopping) return
   console.log('\nStopping …')
@@ -95,7 +105,7 @@ try {
   await main()
 } catch (error) {
   if (!isStopping) {
-    console.error(error instanceof SetUpError ? `\n${error.message}` : error)
+    console.error(error instanceof SetUpError ? `\n${error.message}` : (noRight(error) ?? error))
     process.exitCode = 1
   }
 }

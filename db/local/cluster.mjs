@@ -1,10 +1,10 @@
 import { spawn } from 'node:child_process'
 import { chmodSync, chownSync, closeSync, existsSync, mkdirSync, mkdtempSync, openSync, readFileSync } from 'node:fs'
-import { rmSync, writeFileSync } from 'node:fs'
+import { renameSync, rmSync, writeFileSync } from 'node:fs'
 import { connect } from 'node:net'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { capture, isAlive, pause, SetUpError } from './processes.mjs'
+import { capture, commandOf, isAlive, pause, SetUpError } from './processes.mjs'
 
 const USER = 'turnwright'
 
@@ -36,19 +36,42 @@ function withPasswordFile(password, account, work) {
 /** Makes the files of a new cluster with one superuser, reachable by password alone. */
 export function initialiseCluster({ programs, dataDir, password, account }) {
   if (existsSync(join(dataDir, 'PG_VERSION'))) return
-  makeOwnedFolder(dataDir, account)
+  // Made beside its place and moved there when it is whole: killed half-way, it leaves nothing that looks like a cluster.
+  const making = `${dataDir}.making`
+  rmSync(making, { recursive: true, force: true })
+  makeOwnedFolder(making, account)
   const result = withPasswordFile(password, account, (file) =>
     capture(
       join(programs, 'initdb'),
-      ['-D', dataDir, '-U', USER, '--auth=scram-sha-256', `--pwfile=${file}`, '--encoding=UTF8', '--locale=C.UTF-8'],
+      ['-D', making, '-U', USER, '--auth=scram-sha-256', `--pwfile=${file}`, '--encoding=UTF8', '--locale=C.UTF-8'],
       { ...account, cwd: '/' },
     ),
   )
   if (!result.ok) throw new SetUpError(`The database cluster in ${dataDir} could not be made:\n${result.stderr}`)
+  try {
+    renameSync(making, dataDir)
+  } catch {
+    throw new SetUpError(`${dataDir} holds something that is no database cluster. Move it away and start again.`)
+  }
+}
+
+/** Major version of PostgreSQL that made the cluster, or null where there is none. */
+export function clusterVersion(dataDir) {
+  try {
+    return readFileSync(join(dataDir, 'PG_VERSION'), 'utf8').trim()
+  } catch {
+    return null
+  }
+}
+
+/** Left by a server that was killed; PostgreSQL would not start while any process has the number that stands in it. */
+function dropStaleLock(dataDir) {
+  if (!runningServer(dataDir)) rmSync(join(dataDir, 'postmaster.pid'), { force: true })
 }
 
 /** Gives the superuser of a stopped cluster a new password, without knowing the old one. */
 export function resetPassword({ programs, dataDir, password, account }) {
+  dropStaleLock(dataDir)
   const result = capture(join(programs, 'postgres'), ['--single', '-D', dataDir, 'postgres'], {
     ...account,
     cwd: '/',
@@ -62,10 +85,16 @@ export function runningServer(dataDir) {
   try {
     const lines = readFileSync(join(dataDir, 'postmaster.pid'), 'utf8').split('\n')
     const pid = Number(lines[0])
-    return pid > 0 && isAlive(pid) ? { pid, port: Number(lines[3]) } : null
+    return pid > 0 && isAlive(pid) && isServerOf(pid, dataDir) ? { pid, port: Number(lines[3]) } : null
   } catch {
     return null
   }
+}
+
+/** After a crash and a restart of the machine, the noted number may belong to any other program. */
+function isServerOf(pid, dataDir) {
+  const command = commandOf(pid)
+  return command === null || (command.includes('postgres') && command.includes(dataDir))
 }
 
 function answersOn(port) {
@@ -81,6 +110,7 @@ function answersOn(port) {
  * every program of its group at once, and the database has to be the last to stop.
  */
 export async function startServer({ programs, dataDir, port, account, settings = {} }) {
+  dropStaleLock(dataDir)
   const logFile = join(dataDir, 'server.log')
   const log = openSync(logFile, 'a', 0o600)
   own(logFile, account)

@@ -1,11 +1,19 @@
 import { createHash, randomBytes } from 'node:crypto'
-import { existsSync, mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
+import { mkdirSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
-import { databaseUrl, initialiseCluster, resetPassword, runningServer, startServer, stopServer } from './cluster.mjs'
+import {
+  clusterVersion,
+  databaseUrl,
+  initialiseCluster,
+  resetPassword,
+  runningServer,
+  startServer,
+  stopServer,
+} from './cluster.mjs'
 import { createDatabaseIfMissing } from './create-database.mjs'
 import { freePort, isPortFree } from './ports.mjs'
 import { ensurePostgresPrograms, postgresAccount } from './postgres-programs.mjs'
-import { capture, isAlive } from './processes.mjs'
+import { capture, commandOf, isAlive } from './processes.mjs'
 
 const DATABASE = 'turnwright'
 
@@ -28,6 +36,11 @@ function chooseDataDir(dataFolder, account) {
   return `/var/lib/postgresql/turnwright-${hash}`
 }
 
+/** Whether a start is still running under this number, which by now may be another program's. */
+function isStart(pid) {
+  return isAlive(pid) && (commandOf(pid)?.includes('start.mjs') ?? true)
+}
+
 /** Notes that this process needs the cluster; the last one to leave stops it. */
 function register(dataFolder) {
   const folder = join(dataFolder, 'starts')
@@ -35,7 +48,7 @@ function register(dataFolder) {
   writeFileSync(join(folder, String(process.pid)), '')
   return function leave() {
     rmSync(join(folder, String(process.pid)), { force: true })
-    const others = readdirSync(folder).filter((pid) => isAlive(Number(pid)) || rmSync(join(folder, pid)))
+    const others = readdirSync(folder).filter((pid) => isStart(Number(pid)) || rmSync(join(folder, pid)))
     return others.length === 0
   }
 }
@@ -47,7 +60,8 @@ function register(dataFolder) {
  * this checkout still uses it
  */
 export async function openOwnCluster(root) {
-  const programs = await ensurePostgresPrograms()
+  // First of any version: installing it is what makes the postgres account.
+  await ensurePostgresPrograms()
   const account = postgresAccount()
   const dataFolder = join(root, '.data')
   mkdirSync(dataFolder, { recursive: true, mode: 0o755 })
@@ -55,7 +69,9 @@ export async function openOwnCluster(root) {
   const stateFile = join(dataFolder, 'postgres.json')
   const known = readState(stateFile)
   const state = known?.dataDir === dataDir ? known : { dataDir, password: randomBytes(24).toString('hex'), port: 0 }
-  const isNew = !existsSync(join(dataDir, 'PG_VERSION'))
+  const version = clusterVersion(dataDir)
+  const isNew = version === null
+  const programs = await ensurePostgresPrograms(version)
   const save = () => writeFileSync(stateFile, `${JSON.stringify(state, null, 2)}\n`, { mode: 0o600 })
 
   const leave = register(dataFolder)

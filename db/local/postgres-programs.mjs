@@ -1,7 +1,7 @@
 import { existsSync, readdirSync, readFileSync } from 'node:fs'
 import { delimiter, join } from 'node:path'
 import { aptInstall } from './apt.mjs'
-import { isRoot, SetUpError } from './processes.mjs'
+import { capture, isRoot, SetUpError } from './processes.mjs'
 
 const DEBIAN_FOLDER = '/usr/lib/postgresql'
 
@@ -9,19 +9,33 @@ function isProgramFolder(folder) {
   return existsSync(join(folder, 'initdb')) && existsSync(join(folder, 'postgres'))
 }
 
+/** Major version of the programs in a folder. */
+function versionOf(folder) {
+  return /(\d+)/.exec(capture(join(folder, 'postgres'), ['--version']).stdout)?.[1]
+}
+
 /** Folder with initdb and postgres: Debian's newest version, else wherever PATH leads; null when there is none. */
-export function findPostgresPrograms() {
+function findPostgresPrograms(wantedVersion) {
   const versions = existsSync(DEBIAN_FOLDER) ? readdirSync(DEBIAN_FOLDER) : []
   const debian = versions.sort((a, b) => Number(b) - Number(a)).map((version) => join(DEBIAN_FOLDER, version, 'bin'))
   const onPath = (process.env.PATH ?? '').split(delimiter).filter(Boolean)
-  return [...debian, ...onPath].find(isProgramFolder) ?? null
+  const folders = [...debian, ...onPath].filter(isProgramFolder)
+  const fits = (folder) => wantedVersion === null || versionOf(folder) === wantedVersion
+  return folders.find(fits) ?? null
 }
 
-export async function ensurePostgresPrograms() {
-  const found = findPostgresPrograms()
+/** @param wantedVersion of the cluster that they are for: a server reads only files of its own version. Null: any will do */
+export async function ensurePostgresPrograms(wantedVersion = null) {
+  const found = findPostgresPrograms(wantedVersion)
   if (found) return found
+  if (wantedVersion !== null && findPostgresPrograms(null)) {
+    throw new SetUpError(
+      `The project's database was made by PostgreSQL ${wantedVersion}, which is not on this machine any more. Install it ` +
+        `(on Debian: apt-get install postgresql-${wantedVersion}), or move .data away to begin with an empty one.`,
+    )
+  }
   await aptInstall(['postgresql'], "PostgreSQL's server")
-  const installed = findPostgresPrograms()
+  const installed = findPostgresPrograms(wantedVersion)
   if (!installed) throw new SetUpError("PostgreSQL was installed, but its programs can't be found.")
   return installed
 }

@@ -1,4 +1,5 @@
 import { spawn, spawnSync } from 'node:child_process'
+import { readFileSync } from 'node:fs'
 
 const children = new Set()
 
@@ -41,6 +42,15 @@ export function isAlive(pid) {
     return true
   } catch (error) {
     return error.code === 'EPERM'
+  }
+}
+
+/** The command line of a running process, or null where the system does not tell (/proc is Linux's). */
+export function commandOf(pid) {
+  try {
+    return readFileSync(`/proc/${pid}/cmdline`, 'utf8').split('\0').join(' ')
+  } catch {
+    return null
   }
 }
 

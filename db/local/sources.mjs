@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto'
-import { existsSync, readdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { existsSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { run, SetUpError } from './processes.mjs'
 
@@ -9,6 +9,7 @@ const FILES = [
   'proxy.ts',
   'next.config.mjs',
   'postcss.config.mjs',
+  'tailwind.config.ts',
   'tsconfig.json',
   'package.json',
   'package-lock.json',
@@ -44,6 +45,8 @@ export async function ensureBuild(root, env, { isForced = false } = {}) {
   const isBuilt = existsSync(join(root, '.next', 'BUILD_ID')) && existsSync(note) && readFileSync(note, 'utf8') === hash
   if (isBuilt && !isForced) return
   console.log('Building …')
+  // A build that is broken off must not pass for the one before it.
+  rmSync(note, { force: true })
   const code = await run(process.execPath, [nextProgram(root), 'build'], { cwd: root, env })
   if (code !== 0) throw new SetUpError('The build failed; Next.js says why above.')
   writeFileSync(note, hash)
