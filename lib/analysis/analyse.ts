@@ -353,7 +353,9 @@ function collectWarnings(input: {
   }
   const { turns } = result.run
   if (turns !== null && turns < 3 && result.drift.degree < 2) warnings.push(warning('drift-taken-straight', { turns }))
-  if (turns !== null && turns < 4 && result.residual.correctedLagOneCorrelation > LOWER_BOUND_CORRELATION) {
+  // Under two turns the harmonics take slow noise into themselves, and nothing is left to show it.
+  const isNoiseSlow = result.residual.correctedLagOneCorrelation > LOWER_BOUND_CORRELATION
+  if (turns !== null && (turns < 2 || (turns < 4 && isNoiseSlow))) {
     warnings.push(warning('errors-may-be-small', { turns }))
   }
   if (fastRatio > 1.2 && Number.isFinite(fastRatio)) warnings.push(warning('fast-motion', { ratio: fastRatio }))

@@ -61,6 +61,8 @@ export interface FittedRun {
 }
 
 const LARGEST_HARMONIC_COUNT = 12
+/** A worm that turns half as fast as the strongest swing is looked for when it makes three turns itself. */
+const TURNS_TO_HALVE = 6
 const LARGEST_ORDER = 64
 const LARGEST_LOCK_TOLERANCE = 0.2
 
@@ -134,6 +136,9 @@ export function findWormStart(context: FitRunContext, recipe: Recipe): WormStart
   const factor = findSubharmonic({ ...context, driftDegree, frequencyHz: found.frequencyHz })
   const frequencyHz = found.frequencyHz / factor
   if (factor > 1) warnings.push(warning('sub-harmonic-taken', { factor, periodSeconds: 1 / frequencyHz }))
+  else if (turns < TURNS_TO_HALVE) {
+    warnings.push(warning('period-may-be-harmonic', { turns, neededTurns: TURNS_TO_HALVE }))
+  }
   return {
     frequencyHz,
     isFree: true,
@@ -240,6 +245,9 @@ export function* findLines(
   )
   if (!result.ok) return result
   const warnings = result.stoppedBy === 'line-limit' ? [warning('line-limit', { count: result.lines.length })] : []
+  if (model.wormHz !== null && result.unresolvedHz !== null) {
+    warnings.push(warning('swing-beside-worm', { periodSeconds: 1 / result.unresolvedHz }))
+  }
   return { ok: true, found: result.lines, warnings }
 }
 
@@ -264,6 +272,11 @@ export function* fitFinally(
     reached = yield* fitWithErrors(context, requestFor(context, model, orders, found), 0.65)
   }
   if (!reached.ok) return reached
+  for (let weak = weakestDoubtfulLine(reached); weak !== null; weak = weakestDoubtfulLine(reached)) {
+    found = found.toSpliced(weak, 1)
+    reached = yield* fitWithErrors(context, requestFor(context, model, orders, found), 0.68)
+    if (!reached.ok) return reached
+  }
   const locked = lockedLines(reached.fit, reached.errors, predicted)
   if (locked.size > 0) {
     orders = [...orders, ...locked.values()].sort((a, b) => a - b)
@@ -324,6 +337,21 @@ function* fitWithErrors(
   return errors.ok ? { ok: true, fit, errors } : errors
 }
 
+/**
+ * The line furthest below 3 standard errors of the joint fit, or one slower than the record; null where there is none. A
+ * line that was found while another was still missing from the model may be nothing, or drift, once both are in it.
+ */
+function weakestDoubtfulLine({ fit, errors }: { fit: JointFit; errors: FitErrors }): number | null {
+  let weakest: { index: number; ratio: number } | null = null
+  const lowestHz = 0.5 / fit.time.halfSpanSeconds
+  for (const [index, { column, frequencyHz }] of listOscillations(fit).slice(fit.shape.wormOrders.length).entries()) {
+    const [a, b] = [fit.coefficients[column], fit.coefficients[column + 1]]
+    const ratio = frequencyHz < lowestHz ? 0 : Math.hypot(a, b) / amplitudeError(a, b, errors.reported, column)
+    if (ratio < Math.min(LEAST_LINE_ERRORS, weakest?.ratio ?? Infinity)) weakest = { index, ratio }
+  }
+  return weakest?.index ?? null
+}
+
 /** Index of each line that stands at an integer order no part of another order explains, and that order. */
 function lockedLines(fit: JointFit, errors: FitErrors, predicted: readonly PredictedOrder[]): Map<number, number> {
   const locked = new Map<number, number>()
@@ -346,6 +374,9 @@ function lockedLines(fit: JointFit, errors: FitErrors, predicted: readonly Predi
   }
   return locked
 }
+
+/** Amplitude in standard errors below which a phase means nothing, and a line in the final fit neither. */
+const LEAST_LINE_ERRORS = 3
 
 /** Amplitude in standard errors that one harmonic at least must have for the period to be the record's own. */
 const STANDING_ERRORS = 5

@@ -2,7 +2,7 @@ import { amplitudeError, autoregressiveCovariance, listOscillations, whiteCovari
 import { fitJointlyInSteps } from './joint-fit'
 import type { JointFit, JointFitRequest } from './joint-fit'
 import { factorQr } from './least-squares'
-import { correctLagOne, fitPowerLaw, lagOneCorrelation } from './noise-model'
+import { autoregressiveFactor, correctLagOne, fitPowerLaw, lagOneCorrelation } from './noise-model'
 import { falseAlarmProbability as chanceOfPeak, timeVariance } from './false-alarm'
 import { highestPeak, meanAmplitude, residualSpectrum } from './residual-spectrum'
 import type { ResidualSpectrum } from './residual-spectrum'
@@ -33,6 +33,8 @@ export interface PrewhitenResult {
   wormHz: number | null
   /** Why the search ended; told to people where a limit was met. */
   stoppedBy: 'nothing-left' | 'line-limit' | 'escaped' | 'singular'
+  /** A peak that noise would not give, but too close to a line or harmonic to be one of its own; null: none. */
+  unresolvedHz: number | null
 }
 
 const LARGEST_LINE_COUNT = 20
@@ -59,6 +61,7 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
   const nyquistHz = 0.5 / request.cadenceSeconds
   const lines: FoundLine[] = []
   let wormHz = request.worm?.frequencyHz ?? null
+  let unresolvedHz: number | null = null
   const fitWith = (frequenciesHz: readonly number[]) =>
     fitJointlyInSteps({
       track,
@@ -80,6 +83,8 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
     if (peak === null || !isWorthFitting(spectrum, peak, highestFrequencyHz)) return finish('nothing-left')
     const known = listOscillations(fit).map((oscillation) => oscillation.frequencyHz)
     const distance = Math.min(...known.map((f) => Math.abs(f - peak.frequencyHz)))
+    // Kept only if the search ends here: a peak that becomes a line of its own is resolved.
+    unresolvedHz = distance < 1 / span && standsOut(request, fit, spectrum, peak) ? peak.frequencyHz : null
     if (distance < 0.5 / span) return finish('nothing-left')
     const next: JointFit | Failure = yield* fitWith([...fit.frequencies.linesHz, peak.frequencyHz])
     yield
@@ -91,10 +96,13 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
     const verdict: Verdict | null = yield* judgeLine(request, fit, next, index)
     if (verdict === null) return finish('nothing-left')
     const found = next.frequencies.linesHz[index]
+    // Less than one whole cycle in the record is drift by another name.
+    if (found < 1 / span) return finish('nothing-left')
     const others = listOscillations(next).map((oscillation) => oscillation.frequencyHz)
     others.splice(others.length - 1, 1)
     const nearest = Math.min(Infinity, ...others.map((f) => Math.abs(f - found)))
     if (nearest < 0.5 / span) return finish('nothing-left')
+    unresolvedHz = null
     const { falseAlarmProbability, signalToNoise } = verdict
     lines.push({ frequencyHz: found, falseAlarmProbability, signalToNoise, isUnresolved: nearest < 1 / span })
     next.frequencies.linesHz.forEach((frequencyHz, k) => {
@@ -107,7 +115,7 @@ export function* prewhiten(request: PrewhitenRequest): Generator<void, Prewhiten
   return finish('line-limit')
 
   function finish(stoppedBy: PrewhitenResult['stoppedBy']): PrewhitenResult {
-    return { ok: true, lines, wormHz, stoppedBy }
+    return { ok: true, lines, wormHz, stoppedBy, unresolvedHz }
   }
 }
 
@@ -128,6 +136,23 @@ function isWorthFitting(
     marginHz: 1 / spectrum.spanSeconds,
   })
   return level === null || peak.amplitude > 3 * level
+}
+
+/** Whether a peak of a residual meets, without a fit of its own, what is asked of a line: 4 times the level, 5 errors. */
+function standsOut(
+  { track, cadenceSeconds, highestFrequencyHz }: PrewhitenRequest,
+  fit: JointFit,
+  spectrum: ResidualSpectrum,
+  { frequencyHz, amplitude }: { frequencyHz: number; amplitude: number },
+): boolean {
+  const level = amplitudeAround(spectrum, frequencyHz, highestFrequencyHz)
+  if (amplitude < SMALLEST_SIGNAL_TO_NOISE * level) return false
+  const sampleCount = fit.residual.length
+  const lagOne = lagOneCorrelation(track.timeSeconds, fit.residual, cadenceSeconds)
+  const corrected = correctLagOne(lagOne, sampleCount, fit.parameterCount)
+  const variance = (fit.rss / (sampleCount - fit.parameterCount)) * (2 / sampleCount)
+  const error = Math.sqrt(variance * autoregressiveFactor(corrected, frequencyHz, cadenceSeconds))
+  return amplitude >= SMALLEST_STANDARD_ERRORS * error
 }
 
 interface Verdict {

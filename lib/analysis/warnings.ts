@@ -25,13 +25,15 @@ export const WARNING_CODES = {
   'sub-harmonic-taken': 'sub-harmonic-taken',
   /** Two lines lie closer than 1/T: periodSeconds. */
   'line-unresolved': 'line-unresolved',
+  /** What is left swings closer to a harmonic or line than the record can tell apart: periodSeconds. */
+  'swing-beside-worm': 'swing-beside-worm',
   /** The search for lines stopped at its limit: count. */
   'line-limit': 'line-limit',
   /** Fewer harmonics than asked for could be fitted: wanted, kept. */
   'harmonics-dropped': 'harmonics-dropped',
   /** The fit had not settled after its last step. */
   'not-converged': 'not-converged',
-  /** Under four turns in correlated noise errors may be a fifth too small: turns. */
+  /** Under four turns in correlated noise errors may be a fifth too small, under two by far more: turns. */
   'errors-may-be-small': 'errors-may-be-small',
   /** The drive moves within a few frames, σ₁/σ₂ of the residual: ratio. */
   'fast-motion': 'fast-motion',

@@ -68,6 +68,11 @@ const WORDS: Record<WarningCode, Words> = {
     say: (d) =>
       `The line near ${period(d.periodSeconds)} lies closer to its neighbour than this run can tell apart; a longer run would.`,
   },
+  'swing-beside-worm': {
+    stage: 'spectrum',
+    say: (d) =>
+      `Something near ${period(d.periodSeconds)} swings beside a harmonic or a line, closer to it than this run can tell apart: the worm’s period and harmonics may be off by more than their standard errors.`,
+  },
   'line-limit': {
     stage: 'spectrum',
     say: (d) => `The search ended at its limit of ${counted(Number(d.count), 'line')}; there may be more.`,
@@ -83,7 +88,9 @@ const WORDS: Record<WarningCode, Words> = {
   'errors-may-be-small': {
     stage: 'harmonics',
     say: (d) =>
-      `With ${figure(d.turns, 1)} turns and noise that lingers, the standard errors may be a fifth too small.`,
+      Number(d.turns) < 2
+        ? `With ${figure(d.turns, 1)} turns slow noise passes for harmonics of the worm: the standard errors may be far too small.`
+        : `With ${figure(d.turns, 1)} turns and noise that lingers, the standard errors may be a fifth too small.`,
   },
   'fast-motion': {
     stage: 'spans',

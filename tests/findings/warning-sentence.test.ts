@@ -36,6 +36,12 @@ test('figures stand in the sentence', () => {
   })
 })
 
+test('under two turns the standard errors are worth less than between two and four', () => {
+  const text = (turns: number) => warningSentence({ code: 'errors-may-be-small', details: { turns } }).text
+  expect(text(1.1)).toContain('slow noise passes for harmonics')
+  expect(text(2.4)).toContain('a fifth too small')
+})
+
 test('a word of a newer core is shown as it is', () => {
   expect(warningSentence({ code: 'moon-in-the-way', details: {} }).text).toBe(
     'The analysis warns of “moon in the way”.',
