@@ -39,14 +39,16 @@ export function advice(result: AnalysisResult, recipe: Recipe): Advice {
       rule: `At least ${formatPercent(ENOUGH_FRAMES)} of unguided pictures stay within the tolerance.`,
     }
   }
-  const reduction = turn.heldOutReduction ?? 1 - turn.rmsShareLeft
+  // Under two turns no phase is met twice, so nothing is known of what repeats.
+  const reduction = turn.heldOutReduction ?? (turn.completeTurns >= 2 ? 1 - turn.rmsShareLeft : null)
   const fundamental = wormResult.harmonics[0]?.amplitudeArcsec.value ?? 0
   const strongest = lines.reduce((most, each) => Math.max(most, each.amplitudeArcsec.value), 0)
-  if (reduction < WORTHWHILE_REDUCTION || strongest > fundamental) {
+  const isLost = reduction !== null && reduction < WORTHWHILE_REDUCTION
+  if (isLost || strongest > fundamental) {
     const cause =
       strongest > fundamental
         ? `a line beside the worm swings ${arcsec(strongest)}, more than the worm itself, and no table can take it out`
-        : `only ${formatPercent(Math.max(0, reduction))} of the RMS is the same from turn to turn`
+        : `only ${formatPercent(Math.max(0, reduction ?? 0))} of the RMS is the same from turn to turn, unless the air was poor`
     return {
       verdict: 'inspect',
       sentence: finding`${limit('Look at the mount')}: ${cause}.`,

@@ -14,7 +14,7 @@ const WORDS: Record<Reason, ReasonWords> = {
     next: 'Record for longer, or leave less out.',
   },
   'short-run': {
-    what: 'The run is too short: it does not cover one whole turn of the worm.',
+    what: 'The run is too short: a worm figure takes one whole turn where the teeth are known, three where they are not.',
     next: 'Record at least three turns, with guiding off.',
   },
   'not-finite': {

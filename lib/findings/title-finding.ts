@@ -1,4 +1,5 @@
 import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
+import { formatPercent } from '@/lib/units'
 import { advice } from './advice'
 import { finding, type Finding } from './finding'
 import { reasonTitle } from './reason-sentence'
@@ -16,7 +17,9 @@ export function titleFinding(result: AnalysisResult, recipe: Recipe): Finding {
   const swing = `The worm swings the axis ${arcsec(worm.peakToPeakArcsec.value)} each turn`
   if (advice(result, recipe).verdict === 'leave') return finding`${swing}, little enough to leave alone`
   if (!turn || turn.heldOutReduction === null) return finding`${swing}; more turns would show how well that repeats`
-  return turn.heldOutReduction >= 0.5
-    ? finding`${swing}, and repeats well enough to correct`
-    : finding`${swing}, but repeats too poorly to correct`
+  if (turn.heldOutReduction >= 0.5) return finding`${swing}, and repeats well enough to correct`
+  // Noise keeps a table's share down as much as a swing that does not repeat: the share is all that is known.
+  return turn.heldOutReduction > 0
+    ? finding`${swing}, but a table would take only ${formatPercent(turn.heldOutReduction)} off the RMS`
+    : finding`${swing}, but a table would take nothing off the RMS`
 }

@@ -54,7 +54,8 @@ describe('title', () => {
   })
 
   test.each([
-    [0.3, 'The worm swings the axis 16.0″ each turn, but repeats too poorly to correct'],
+    [0.3, 'The worm swings the axis 16.0″ each turn, but a table would take only 30\u202f% off the RMS'],
+    [-0.1, 'The worm swings the axis 16.0″ each turn, but a table would take nothing off the RMS'],
     [null, 'The worm swings the axis 16.0″ each turn; more turns would show how well that repeats'],
   ])('with a held-out reduction of %s', (heldOutReduction, sentence) => {
     const result = changed(({ turn }) => {
@@ -65,7 +66,7 @@ describe('title', () => {
 
   test('without a worm tells why, or what the record allows', () => {
     expect(findingText(titleFinding(withoutWorm, recipe))).toBe(
-      'The run is too short: it does not cover one whole turn of the worm',
+      'The run is too short: a worm figure takes one whole turn where the teeth are known, three where they are not',
     )
     const interval = { ...withoutWorm, wormPeriodIntervalSeconds: [427.5, 543.8] as [number, number] }
     expect(findingText(titleFinding(interval, recipe))).toBe(
@@ -186,6 +187,13 @@ describe('turn and spans', () => {
       '99.0\u202f% of the variance repeats each turn; a perfect table leaves 10\u202f% of the RMS.',
     )
     expect(findingText(turnFinding(withoutWorm))).toContain('too short')
+    const single = changed((result) => {
+      result.run.turns = 1.4
+      if (result.turn) result.turn.completeTurns = 1
+    })
+    expect(findingText(turnFinding(single))).toBe(
+      'With 1.4 turns there is nothing to compare a turn with; two or more would show what repeats.',
+    )
   })
 
   test('a raw span that is mostly drift says so', () => {
