@@ -1,6 +1,6 @@
 'use client'
 
-import { useCallback, useState } from 'react'
+import { useCallback, useRef, useState } from 'react'
 import { startDraft, withPreview, type ImportChoices, type ImportDraft } from '@/components/import/import-draft'
 import type { IntakeFile } from '@/components/import/file-intake'
 import type { BenchAnalysis } from '@/lib/client/use-analysis'
@@ -13,8 +13,6 @@ export type FileReading =
       kind: 'mapping'
       file: IntakeFile
       preview: TablePreview
-      /** What the user has said about the layout; the rest is guessed anew from it. */
-      corrections: Partial<TextLayout>
       draft: ImportDraft
       fault: ImportFault | null
     }
@@ -41,7 +39,7 @@ export function useFileReading({ analysis, earlier, onRead }: FileReadingOptions
         else {
           const { preview } = outcome
           const draft = startDraft(preview, earlier)
-          setReading({ kind: 'mapping', file, preview, corrections: {}, draft, fault: null })
+          setReading({ kind: 'mapping', file, preview, draft, fault: null })
         }
       } finally {
         setBusy(false)
@@ -54,16 +52,25 @@ export function useFileReading({ analysis, earlier, onRead }: FileReadingOptions
     setReading((now) => (now.kind === 'mapping' ? { ...now, draft } : now))
   }, [])
 
+  // What has been corrected so far, also by changes whose preview is not there yet: two quick ones must add up.
+  const corrected = useRef<{ file: IntakeFile; layout: Partial<TextLayout> } | null>(null)
+
   const correctLayout = useCallback(
     async (changes: Partial<TextLayout>) => {
       if (reading.kind !== 'mapping') return
-      const corrections = { ...reading.corrections, ...changes }
-      const outcome = await previewBytes(reading.file.bytes, corrections)
+      const { file } = reading
+      const earlier = corrected.current?.file === file ? corrected.current.layout : {}
+      const newest = { file, layout: { ...earlier, ...changes } }
+      corrected.current = newest
+      const outcome = await previewBytes(file.bytes, newest.layout)
+      // A correction that leads nowhere is not shown, so it must not weigh on the next one.
+      if (!outcome.ok && corrected.current === newest) corrected.current = { file, layout: earlier }
+      else if (corrected.current !== newest) return
       setReading((now) => {
-        if (now.kind !== 'mapping') return now
+        if (now.kind !== 'mapping' || now.file !== file) return now
         if (!outcome.ok) return { ...now, fault: outcome.fault }
         const { preview } = outcome
-        return { ...now, preview, corrections, draft: withPreview(now.draft, now.preview, preview), fault: null }
+        return { ...now, preview, draft: withPreview(now.draft, now.preview, preview), fault: null }
       })
     },
     [previewBytes, reading],
@@ -75,7 +82,7 @@ export function useFileReading({ analysis, earlier, onRead }: FileReadingOptions
       setBusy(true)
       try {
         const loaded = await loadFile(reading.file.bytes, choices.settings)
-        if (!loaded.ok) setReading({ ...reading, fault: loaded.fault })
+        if (!loaded.ok) setReading((now) => (now.kind === 'mapping' ? { ...now, fault: loaded.fault } : now))
         else {
           // The file's own absolute time is a fact of the run unless the form says otherwise.
           const { startedAtMs } = loaded
