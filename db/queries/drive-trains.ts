@@ -1,4 +1,4 @@
-import { sql, type Kysely, type Transaction } from 'kysely'
+import { sql, type Transaction } from 'kysely'
 import type { DriveTrain } from '@/lib/analysis/types'
 import type { Database } from '../schema'
 import type { ProjectAccess } from './access'
@@ -21,25 +21,5 @@ export async function insertDriveTrain(
       stages: JSON.stringify(stages),
       createdBy: access.userId,
     })
-    .execute()
-}
-
-/** Every version, newest first. */
-export function listDriveTrains(db: Kysely<Database>, access: ProjectAccess) {
-  return db
-    .selectFrom('driveTrains')
-    .innerJoin('users', 'users.id', 'driveTrains.createdBy')
-    .select([
-      'driveTrains.id',
-      'driveTrains.number',
-      'driveTrains.axisKind',
-      'driveTrains.wheelTeeth',
-      'driveTrains.wormStarts',
-      'driveTrains.stages',
-      'driveTrains.createdAt',
-      'users.displayName as createdBy',
-    ])
-    .where('driveTrains.projectId', '=', access.projectId)
-    .orderBy('driveTrains.number', 'desc')
     .execute()
 }
