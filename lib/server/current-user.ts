@@ -28,9 +28,14 @@ export interface ProjectPage {
 /** For every page below a project: sign-in for visitors, "not found" for strangers. */
 export async function requireProjectPage(projectId: string, returnTo = `/projects/${projectId}`): Promise<ProjectPage> {
   const user = await requirePageUser(returnTo)
-  if (!z.uuid().safeParse(projectId).success) notFound()
+  assertAddressId(projectId)
   const access = await orNotFound(accessProject(database(), { userId: user.id, projectId, right: 'read' }))
   return { user, access }
+}
+
+/** The "not found" page for an address whose part can name nothing; PostgreSQL would take it for a fault. */
+export function assertAddressId(id: string): void {
+  if (!z.uuid().safeParse(id).success) notFound()
 }
 
 /** What a query gives, or the "not found" page where it refuses because there is no such thing. */
