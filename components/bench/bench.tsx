@@ -4,6 +4,7 @@ import { useCallback, useMemo, useState, type ReactNode } from 'react'
 import { FindingText } from '@/components/findings/finding-text'
 import { Button } from '@/components/ui/button'
 import { Card } from '@/components/ui/card'
+import { classNames } from '@/components/ui/class-names'
 import { FigureStrip, type KeyFigure } from '@/components/ui/figure-strip'
 import { Notice } from '@/components/ui/notice'
 import { ProgressBar } from '@/components/ui/progress-bar'
@@ -192,7 +193,10 @@ function WholeNotes({ notes, actions }: { notes: readonly Note[]; actions: NoteA
   const whole = notes.filter(({ anchor }) => anchor.kind === 'whole').map((note) => ({ number: null, note }))
   if (whole.length === 0 && !actions.onAdd) return null
   return (
-    <Card aria-label="Notes on the whole analysis" className="flex flex-col gap-3 p-5 max-sm:px-4">
+    <Card
+      aria-label="Notes on the whole analysis"
+      className={classNames('flex flex-col gap-3 p-5 max-sm:px-4', whole.length === 0 && 'no-print')}
+    >
       <h2 className="text-finding font-semibold">Notes on the whole analysis</h2>
       <NoteList notes={whole} actions={actions} />
       {actions.onAdd ? (

@@ -59,7 +59,7 @@ export function HarmonicsStage({ result, recipe, change, isLocked }: StageInput)
         )}
       </div>
       {result?.worm ? (
-        <p className="mt-2 max-w-[85ch] text-sm text-soft">
+        <p className="mt-2 max-w-[85ch] text-sm text-pretty text-soft">
           {harmonicCountSentence(result.modelChoice, recipe)} {errorModelSentence(result.errorModel)}
         </p>
       ) : null}

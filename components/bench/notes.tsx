@@ -69,7 +69,7 @@ function NoteItem({ number, note, actions }: { number: number | null; note: Note
         <>
           <p className="text-sm whitespace-pre-wrap">
             {number === null ? null : (
-              <span className="figures mr-1.5 inline-block rounded-[3px] bg-plum px-1.5 text-xs text-card">
+              <span className="figures mr-1.5 inline-block rounded-[3px] border border-plum px-1.5 text-xs leading-4 text-ink">
                 {number}
               </span>
             )}

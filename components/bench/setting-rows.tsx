@@ -143,7 +143,7 @@ export function FactSetting({ label, children }: { label: string; children: Reac
 /** Settings that are seldom touched, folded below the others. */
 export function MoreSettings({ children }: { children: ReactNode }) {
   return (
-    <details className="mt-1">
+    <details className="no-print mt-1">
       <summary className="py-1 text-sm text-soft pointer-coarse:py-3.5">More settings</summary>
       {children}
     </details>

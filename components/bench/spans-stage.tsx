@@ -100,7 +100,7 @@ export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
           <SpanChart spans={result.spans} summary={findingText(finding)} />
           {given ? (
             <div className="mt-5 border-t border-rule pt-3">
-              <p className="max-w-[72ch] font-semibold">
+              <p className="max-w-[72ch] font-semibold text-pretty">
                 <FindingText finding={given.sentence} />
               </p>
               <p className="mt-0.5 max-w-[72ch] text-sm text-soft">The rule: {lowerFirst(given.rule)}</p>

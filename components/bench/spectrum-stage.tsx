@@ -144,7 +144,7 @@ function LinesTable({ result, recipe }: { result: AnalysisResult; recipe: Recipe
           ])}
         />
       )}
-      <p className="text-sm text-soft">
+      <p className="text-sm text-pretty text-soft">
         {lines.some(({ order }) => order !== null && Math.abs(order.value - Math.round(order.value)) > 0.01)
           ? 'A line of no whole order does not repeat with the worm, so no table can take it out. '
           : ''}

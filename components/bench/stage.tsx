@@ -20,9 +20,9 @@ export function Stage({ number, title, question, settings, isLocked, finding, as
   return (
     <section
       aria-labelledby={headingId}
-      className="grid grid-cols-1 rounded-card border border-rule bg-card lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.75rem]"
+      className="grid grid-cols-1 print:block rounded-card border border-rule bg-card lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.75rem]"
     >
-      <div className="min-w-0 px-5 pt-5 max-sm:px-4 lg:border-r lg:border-rule lg:pb-5">
+      <div className="min-w-0 px-5 pt-5 max-sm:px-4 print:break-inside-avoid print:break-after-avoid lg:border-r lg:border-rule lg:pb-5">
         <p className="figures text-sm text-brass" aria-hidden="true">
           {number}
         </p>
@@ -42,7 +42,7 @@ export function Stage({ number, title, question, settings, isLocked, finding, as
       </div>
       <div className="min-w-0 px-5 py-4 max-sm:px-4">
         {finding ? (
-          <p className="mb-3 max-w-[72ch] text-finding font-semibold text-pretty">
+          <p className="mb-3 max-w-[72ch] text-finding font-semibold text-pretty print:break-after-avoid">
             <FindingText finding={finding} />
           </p>
         ) : null}

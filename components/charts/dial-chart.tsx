@@ -144,8 +144,16 @@ function NoteMark({ number, angleDegrees }: { number: number; angleDegrees: numb
   return (
     <g>
       <line x1={from.x} y1={from.y} x2={to.x} y2={to.y} className="stroke-plum" strokeWidth="1.5" />
-      <rect x={to.x - 8} y={to.y - 8} width="16" height="16" rx="3" className="fill-plum" />
-      <text x={to.x} y={to.y + 4} textAnchor="middle" fontSize="11" className="figures fill-card">
+      <rect
+        x={to.x - 8}
+        y={to.y - 8}
+        width="16"
+        height="16"
+        rx="3"
+        className="fill-card stroke-plum"
+        strokeWidth="1.5"
+      />
+      <text x={to.x} y={to.y + 4} textAnchor="middle" fontSize="11" className="figures fill-ink">
         {number}
       </text>
     </g>

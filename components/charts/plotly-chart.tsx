@@ -1,6 +1,6 @@
 'use client'
 
-import { useEffect, useMemo, useRef, useState, type ReactNode } from 'react'
+import { useEffect, useMemo, useRef, useState, type CSSProperties, type ReactNode } from 'react'
 import type { ChartColors } from '@/lib/figures/chart-colors'
 import type { Figure, FigureFrame } from '@/lib/figures/figure'
 import { loadedPlotly, loadPlotly, type PlotlyParts } from './load-plotly'
@@ -70,12 +70,19 @@ export function PlotlyChart({ name, summary, makeFigure, legend, onSelect, onPic
         aria-label={summary}
         aria-busy={parts === null}
         className="plotly-chart relative touch-pan-y select-none"
-        style={{ height: figure.layout.height }}
+        style={{ height: figure.layout.height, '--shape': `${widthPx} / ${figure.layout.height}` } as CSSProperties}
         onDoubleClick={() => setZoom(null)}
         {...drag.handlers}
       >
         {parts && widthPx > 0 ? (
-          <parts.Plot data={figure.data} layout={figure.layout} config={CONFIG} style={{ width: widthPx }} />
+          <parts.Plot
+            data={figure.data}
+            layout={figure.layout}
+            config={CONFIG}
+            style={{ width: widthPx }}
+            onInitialized={(_, plot) => makeScalable(plot)}
+            onUpdate={(_, plot) => makeScalable(plot)}
+          />
         ) : null}
         {fault ? (
           <p className="pt-8 text-soft">The drawing could not be loaded. Reload the page to try again.</p>
@@ -90,6 +97,13 @@ export function PlotlyChart({ name, summary, makeFigure, legend, onSelect, onPic
       {children}
     </Picture>
   )
+}
+
+/** On paper the drawing is scaled to the column (plotly-chart.css); for that it must say what its own size is. */
+function makeScalable(plot: Readonly<HTMLElement>) {
+  for (const svg of plot.querySelectorAll('.main-svg')) {
+    svg.setAttribute('viewBox', `0 0 ${svg.getAttribute('width')} ${svg.getAttribute('height')}`)
+  }
 }
 
 function usePlotly(): { parts: PlotlyParts | null; fault: boolean } {

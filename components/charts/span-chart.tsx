@@ -19,7 +19,7 @@ export function SpanChart({ spans, summary }: { spans: SpanResult; summary: stri
   return (
     <dl
       aria-label={summary}
-      className="grid grid-cols-[max-content_minmax(0,1fr)] items-center gap-x-6 gap-y-2.5 max-sm:gap-x-3"
+      className="grid grid-cols-[max-content_minmax(0,1fr)] items-center gap-x-6 gap-y-2.5 break-inside-avoid max-sm:gap-x-3"
     >
       {rows.map((row) => (
         <div key={row.name} className="col-span-2 grid grid-cols-subgrid items-center">

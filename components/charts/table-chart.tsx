@@ -28,7 +28,8 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
   // Drawn at about the size it is seen at, so that the letters keep theirs.
   const width = isNarrow ? 336 : 870
   const titleLines = wrapped(axisTitle, width - 24)
-  const extra = LINE_HEIGHT * (titleLines.length - 1)
+  // The numbers of the notes stand between the title and the bars.
+  const extra = LINE_HEIGHT * (titleLines.length - 1) + (notes.length > 0 ? 14 : 0)
   const height = 238 + extra
   const [low, high] = extent(
     bars.map(({ value }) => value),
@@ -94,17 +95,25 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
         </g>
       ))}
       <g className="opacity-80">
-        {bars.map((bar) => (
-          <rect
-            key={bar.index}
-            x={x(bar.left) + gap}
-            // Bars that touch overlap a little, else the ground shines through between them.
-            width={gap === 0 ? 1.2 * barWidth : Math.max(barWidth - 2 * gap, 0.5)}
-            y={Math.min(y(bar.value), y(0))}
-            height={Math.max(Math.abs(y(bar.value) - y(0)), 0.5)}
-            className={bar === hit ? 'fill-brass' : 'fill-brass-fill'}
+        {gap === 0 ? (
+          // Bars that touch are drawn as one shape, which has no seams.
+          <path
+            d={`M${plot.left} ${y(0)}${bars.map((bar) => `V${y(bar.value)}H${x(bar.left) + barWidth}`).join('')}V${y(0)}Z`}
+            className="fill-brass-fill"
           />
-        ))}
+        ) : null}
+        {bars.map((bar) =>
+          gap === 0 && bar !== hit ? null : (
+            <rect
+              key={bar.index}
+              x={x(bar.left) + gap}
+              width={Math.max(barWidth - 2 * gap, 0.5)}
+              y={Math.min(y(bar.value), y(0))}
+              height={Math.max(Math.abs(y(bar.value) - y(0)), 0.5)}
+              className={bar === hit ? 'fill-brass' : 'fill-brass-fill'}
+            />
+          ),
+        )}
       </g>
       <line x1={plot.left} x2={plot.right} y1={y(0)} y2={y(0)} className="stroke-soft" />
       <polyline
@@ -126,8 +135,16 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
             className="stroke-plum"
             strokeWidth="1.5"
           />
-          <rect x={x(angleDegrees) - 8} y={plot.top - 8} width="16" height="16" rx="3" className="fill-plum" />
-          <text x={x(angleDegrees)} y={plot.top + 4} textAnchor="middle" fontSize="11" className="figures fill-card">
+          <rect
+            x={x(angleDegrees) - 8}
+            y={plot.top - 8}
+            width="16"
+            height="16"
+            rx="3"
+            className="fill-card stroke-plum"
+            strokeWidth="1.5"
+          />
+          <text x={x(angleDegrees)} y={plot.top + 4} textAnchor="middle" fontSize="11" className="figures fill-ink">
             {number}
           </text>
         </g>

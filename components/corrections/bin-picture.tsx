@@ -1,4 +1,4 @@
-import { binBars } from '@/lib/figures/bin-bars'
+import { binBars, type BinBars } from '@/lib/figures/bin-bars'
 import { formatNumber } from '@/lib/units'
 
 interface BinPictureProps {
@@ -9,12 +9,15 @@ interface BinPictureProps {
   summary: string
 }
 
+/** With more bars than this there is no room for gaps; they are then drawn as one shape, which has no seams. */
+const MOST_GAPS = 120
+/** Between two bars, as a share of a bar's place. */
+const GAP = 0.08
 const angles = [0, 90, 180, 270, 360]
 
 /** One bar for each bin, round the worm. The words stay at their size however wide the picture is. */
 export function BinPicture({ values, axisTitle, summary }: BinPictureProps) {
   const { bars, zeroTop, ticks } = binBars(values)
-  const gap = values.length > 120 ? 0 : 0.08
   const decimals = decimalsFor(ticks.map(({ value }) => value))
   return (
     <figure role="img" aria-label={summary} className="figures text-xs text-soft">
@@ -41,17 +44,20 @@ export function BinPicture({ values, axisTitle, summary }: BinPictureProps) {
               vectorEffect="non-scaling-stroke"
             />
           ))}
-          {bars.map(({ left, width, top, height }, index) => (
-            <rect
-              key={index}
-              x={left + (gap / 2) * width}
-              // Bars that touch overlap a little, else the ground shines through between them.
-              width={width * (gap === 0 ? 1.2 : 1 - gap)}
-              y={top}
-              height={height}
-              className="fill-brass-fill"
-            />
-          ))}
+          {values.length > MOST_GAPS ? (
+            <path d={outline(bars, zeroTop)} className="fill-brass-fill" />
+          ) : (
+            bars.map(({ left, width, top, height }, index) => (
+              <rect
+                key={index}
+                x={left + (GAP / 2) * width}
+                width={width * (1 - GAP)}
+                y={top}
+                height={height}
+                className="fill-brass-fill"
+              />
+            ))
+          )}
           <line x1="0" x2="1" y1={zeroTop} y2={zeroTop} className="stroke-soft" vectorEffect="non-scaling-stroke" />
         </svg>
       </div>
@@ -71,6 +77,13 @@ export function BinPicture({ values, axisTitle, summary }: BinPictureProps) {
       </p>
     </figure>
   )
+}
+
+function outline(bars: BinBars['bars'], zeroTop: number): string {
+  const steps = bars.map(
+    ({ left, width, top, height, isNegative }) => `V${isNegative ? top + height : top}H${left + width}`,
+  )
+  return `M0 ${zeroTop}${steps.join('')}V${zeroTop}Z`
 }
 
 function decimalsFor(ticks: readonly number[]): number {

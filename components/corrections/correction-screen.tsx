@@ -119,9 +119,10 @@ function CorrectionPage({ correction, projectName }: { correction: Correction; p
         />
       </SheetSection>
       <SheetSection number={3} title="Bins" question="The numbers themselves, as the files hold them.">
-        <div className="max-w-2xl">
+        <div className="no-print max-w-2xl">
           <BinTable bins={table.bins} unit={unit} />
         </div>
+        <PrintedBins bins={table.bins} unit={unit} />
       </SheetSection>
     </>
   )
@@ -152,6 +153,24 @@ function Origin({ correction }: { correction: Correction }) {
         </FactRow>
       </dl>
     </>
+  )
+}
+
+/** All bins at once: paper has no pages to turn within a table. */
+function PrintedBins({ bins, unit }: { bins: readonly Bin[]; unit: string }) {
+  return (
+    <div className="hidden print:block">
+      <p className="mb-2 text-sm text-soft">Bin, worm angle, value in {unit}</p>
+      <ol className="figures columns-3 gap-8 text-xs">
+        {bins.map(({ index, angleDegrees, value }) => (
+          <li key={index} className="grid grid-cols-3 border-b border-rule py-0.5 text-right">
+            <span>{index}</span>
+            <span>{formatNumber(angleDegrees, 2, { unit: '°' })}</span>
+            <span>{formatNumber(value, 4, { isSigned: true })}</span>
+          </li>
+        ))}
+      </ol>
+    </div>
   )
 }
 

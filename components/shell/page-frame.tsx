@@ -6,7 +6,7 @@ export function PageFrame({ children, isNarrow = false }: { children: ReactNode;
   return (
     <div
       className={classNames(
-        'mx-auto flex w-full flex-col gap-5 px-8 pt-7 pb-16 max-sm:px-4 max-sm:pt-5',
+        'mx-auto flex w-full flex-col gap-5 px-8 pt-7 pb-16 max-sm:px-4 max-sm:pt-5 print:p-0',
         isNarrow ? 'max-w-xl' : 'max-w-[1680px]',
       )}
     >

@@ -144,7 +144,7 @@ export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
       {pageCount > 1 ? (
         <nav
           aria-label={`Pages of ${caption}`}
-          className="flex items-center justify-between gap-3 border-t border-rule px-5 py-3 max-sm:px-4"
+          className="no-print flex items-center justify-between gap-3 border-t border-rule px-5 py-3 max-sm:px-4"
         >
           <p className="text-sm text-soft" aria-live="polite">
             Page <span className="figures">{pageIndex + 1}</span> of <span className="figures">{pageCount}</span>,{' '}

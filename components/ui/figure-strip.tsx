@@ -19,11 +19,11 @@ export interface KeyFigure {
 export function FigureStrip({ figures, label = 'Key figures' }: { figures: readonly KeyFigure[]; label?: string }) {
   return (
     <Card aria-label={label} className="overflow-hidden">
-      <dl className="-mt-px -ml-px grid grid-cols-2 md:grid-flow-col md:auto-cols-fr md:grid-cols-none">
+      <dl className="-mt-px -ml-px grid grid-cols-2 md:not-print:grid-flow-col md:not-print:auto-cols-fr md:not-print:grid-cols-none print:grid-cols-3">
         {figures.map((figure, index) => (
           <div
             key={index}
-            className="flex min-w-0 flex-col border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:last:odd:col-span-2"
+            className="flex min-w-0 flex-col border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:not-print:last:odd:col-span-2"
           >
             <dt className="text-sm text-soft">{figure.label}</dt>
             <dd className="mt-auto pt-0.5">

@@ -25,7 +25,8 @@ export function Select({ options, className, ...rest }: SelectProps) {
       <svg
         aria-hidden="true"
         viewBox="0 0 12 12"
-        className="pointer-events-none absolute top-1/2 right-2.5 size-3 -translate-y-1/2 text-soft"
+        // A long choice runs out below the arrow, not through it.
+        className="pointer-events-none absolute top-1/2 right-1 box-content size-3 -translate-y-1/2 rounded-control bg-card px-1.5 text-soft"
       >
         <path d="M2 4.5 6 8.5 10 4.5" fill="none" stroke="currentColor" strokeWidth="1.6" />
       </svg>

@@ -23,13 +23,13 @@ export function SheetSection({ number, title, question, settings, finding, aside
     <Card
       aria-labelledby={headingId}
       className={classNames(
-        'grid grid-cols-1',
+        'grid grid-cols-1 print:block',
         aside
           ? 'lg:grid-cols-[13rem_minmax(0,1fr)_17rem] xl:grid-cols-[13rem_minmax(0,1fr)_18.75rem]'
           : 'lg:grid-cols-[13rem_minmax(0,1fr)]',
       )}
     >
-      <div className="border-rule p-5 max-lg:pb-0 max-sm:px-4 lg:border-r">
+      <div className="border-rule p-5 print:break-inside-avoid print:break-after-avoid max-lg:pb-0 max-sm:px-4 lg:border-r">
         {number === undefined ? null : <p className="figures text-sm text-brass">{number}</p>}
         <h2 id={headingId} className="text-finding font-semibold">
           {title}
@@ -46,7 +46,9 @@ export function SheetSection({ number, title, question, settings, finding, aside
         ) : null}
       </div>
       <div className="min-w-0 p-5 max-sm:px-4">
-        {finding ? <p className="mb-3 text-finding font-semibold text-pretty">{finding}</p> : null}
+        {finding ? (
+          <p className="mb-3 text-finding font-semibold text-pretty print:break-after-avoid">{finding}</p>
+        ) : null}
         {children}
       </div>
       {aside ? <div className="min-w-0 border-rule p-5 max-lg:border-t max-sm:px-4 lg:border-l">{aside}</div> : null}

@@ -125,10 +125,11 @@ export function noteMark(
       yref: 'paper',
       yanchor: 'bottom',
       showarrow: false,
-      bgcolor: colors.plum,
+      bgcolor: colors.card,
       bordercolor: colors.plum,
+      borderwidth: 1.5,
       borderpad: 2,
-      font: { family: MONO, size: 11, color: colors.card },
+      font: { family: MONO, size: 11, color: colors.ink },
     },
     shape: {
       type: 'line',

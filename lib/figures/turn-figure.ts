@@ -23,7 +23,9 @@ export interface TurnFigureInput {
 /** Every turn over the worm angle, thin, and the fitted curve, thick. */
 export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): Figure {
   const { colors } = frame
-  const margin = { l: 40, r: 22, t: 34, b: 44 }
+  // The numbers of the notes stand between the title and the picture.
+  const noteRoom = notes.length > 0 ? 12 : 0
+  const margin = { l: 40, r: 22, t: 34 + noteRoom, b: 44 }
   const range = frame.zoom ?? ([0, 360] as [number, number])
   const yRange = padded(extent(turn.curveArcsec, ...turn.turns.map(({ arcsec }) => arcsec)))
   const yTicks = niceTicks(yRange, 6, { isSigned: true })
@@ -44,7 +46,13 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
     yaxis: { ...baseAxis(frame), range: yRange, tickvals: yTicks.values, ticktext: yTicks.labels, showgrid: true },
     shapes: marks.map(({ shape }) => shape),
     annotations: [
-      axisNote(`arcsec, ahead is up${senseMark}`, frame, { x: 0, y: 1, xanchor: 'left', xshift: -34, yshift: 14 }),
+      axisNote(`arcsec, ahead is up${senseMark}`, frame, {
+        x: 0,
+        y: 1,
+        xanchor: 'left',
+        xshift: -34,
+        yshift: 14 + noteRoom,
+      }),
       axisNote('worm angle from run start', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
       ...marks.map(({ annotation }) => annotation),
     ],
