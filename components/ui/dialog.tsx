@@ -27,7 +27,8 @@ export function Dialog({ isOpen, onClose, title, children, className }: DialogPr
     <dialog
       ref={dialog}
       aria-labelledby={titleId}
-      onClose={onClose}
+      // Told also when we closed it ourselves, and by then another dialog may stand in its place.
+      onClose={() => isOpen && onClose()}
       className={classNames(
         'm-auto w-full max-w-lg rounded-card border border-steel bg-card p-6 text-ink max-sm:max-w-[calc(100vw-1.5rem)] max-sm:p-4',
         className,
