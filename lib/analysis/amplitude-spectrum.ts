@@ -1,5 +1,6 @@
 import type { EvenGrid } from './even-grid'
 import { nextPowerOfTwo, realFft } from './fft'
+import { nonuniformFft } from './nonuniform-fft'
 import type { WindowName } from './types'
 import { windowWeights } from './window'
 
@@ -50,6 +51,56 @@ export function amplitudeSpectrum(grid: EvenGrid, options: SpectrumOptions): Amp
     amplitude[j] = factor * Math.sqrt(bins[2 * j] ** 2 + bins[2 * j + 1] ** 2)
   }
   return { stepHz: 1 / (length * grid.cadenceSeconds), amplitude }
+}
+
+/**
+ * Two amplitude spectra of one grid up to a limit, in one transform: for uneven times the cells are so fine that most of a
+ * whole transform would lie beyond the limit. Equal to amplitudeSpectrum to 1e-9 of the largest amplitude.
+ */
+export function amplitudeSpectraUpTo(
+  before: EvenGrid,
+  after: EvenGrid,
+  options: { window: WindowName; highestHz: number },
+): [AmplitudeSpectrum, AmplitudeSpectrum] {
+  const { window, highestHz } = options
+  const count = before.values.length
+  const length = Math.max(nextPowerOfTwo(count), Math.min(nextPowerOfTwo(PADDING_FACTOR * count), LARGEST_LENGTH))
+  const stepHz = 1 / (length * before.cadenceSeconds)
+  const wanted = Math.floor(highestHz / stepHz + 1e-9)
+  // The transform's own length is the next power of two; a bin or two at the limit are not worth twice the work.
+  const roomy = 2 ** Math.floor(Math.log2(wanted + 1)) - 1
+  const largestIndex = wanted - roomy <= 0.002 * wanted ? roomy : wanted
+  if (8 * largestIndex >= length) return [amplitudeSpectrum(before, { window }), amplitudeSpectrum(after, { window })]
+  const weights = windowWeights(window, count)
+  const present = before.isPresent.reduce((sum, flag) => sum + flag, 0)
+  const [time, whole, left] = [new Float64Array(present), new Float64Array(present), new Float64Array(present)]
+  let weightSum = 0
+  let at = 0
+  for (let n = 0; n < count; n++) {
+    if (before.isPresent[n] === 0) continue
+    time[at] = n * before.cadenceSeconds
+    whole[at] = weights[n] * before.values[n]
+    left[at] = weights[n] * after.values[n]
+    weightSum += weights[n]
+    at++
+  }
+  const { first, second } = nonuniformFft({
+    time,
+    first: whole,
+    second: left,
+    stepHz,
+    firstIndex: 0,
+    count: largestIndex + 1,
+  })
+  const scale = weightSum > 1e-9 * count ? 1 / weightSum : 0
+  const sizes = (bins: Float64Array): AmplitudeSpectrum => {
+    const amplitude = new Float64Array(largestIndex + 1)
+    for (let j = 0; j <= largestIndex; j++) {
+      amplitude[j] = (j === 0 ? scale : 2 * scale) * Math.sqrt(bins[2 * j] ** 2 + bins[2 * j + 1] ** 2)
+    }
+    return { stepHz, amplitude }
+  }
+  return [sizes(first), sizes(second)]
 }
 
 export interface SpectrumColumns {

@@ -1,4 +1,4 @@
-import { amplitudeSpectrum, spectrumColumns } from './amplitude-spectrum'
+import { amplitudeSpectraUpTo, spectrumColumns } from './amplitude-spectrum'
 import type { CleanedTrack } from './clean'
 import { decimate } from './decimate'
 import { toEvenGrid } from './even-grid'
@@ -101,13 +101,14 @@ function spectrumView(input: {
   )
   const after = toEvenGrid(timeSeconds, fitted.fit.residual)
   const highestHz = Math.min(1 / result.run.shortestPeriodSeconds, 0.5 / before.cadenceSeconds)
-  const columns = spectrumColumns(amplitudeSpectrum(before, { window }), amplitudeSpectrum(after, { window }), {
+  const [whole, left] = amplitudeSpectraUpTo(before, after, { window, highestHz })
+  const columns = spectrumColumns(whole, left, {
     lowestHz: Math.min(0.5 / result.run.durationSeconds, highestHz / 2),
     highestHz,
     columnCount: SPECTRUM_COLUMNS,
   })
-  // A tapered spectrum of noise stands higher than an untapered one by the root of the window's noise bandwidth.
-  const { noiseBandwidthBins } = windowFigures(windowWeights(window, before.values.length))
+  // A tapered spectrum of noise stands higher by the root of the window’s noise bandwidth, which hangs on no length.
+  const { noiseBandwidthBins } = windowFigures(windowWeights(window, Math.min(before.values.length, 1024)))
   const taper = Math.sqrt(noiseBandwidthBins)
   return { ...columns, chanceArcsec: columns.frequencyHz.map((f) => taper * chance(f)) }
 }

@@ -1,5 +1,5 @@
 import { drain } from './drain'
-import { factorQr, inverseGram, multiplyQ, multiplyQTransposed, solveUpper } from './least-squares'
+import { dot, factorQr, inverseGram, solveUpper, solveUpperTransposed } from './least-squares'
 import type { QrFactors } from './least-squares'
 import { lineBlock, wormBlock } from './fit-columns'
 import type { FrequencyBlock } from './fit-columns'
@@ -58,14 +58,23 @@ export function autoregressiveCovariance(options: {
   for (let i = 1; i < decay.length; i++) {
     decay[i] = lagOne > 0 ? lagOne ** ((timeSeconds[i] - timeSeconds[i - 1]) / cadenceSeconds) : 0
   }
+  // JᵀSJ by its columns; QᵀSQ = R^{−T} JᵀSJ R^{−1} follows on p × p alone.
+  const inner: Float64Array[] = Array.from({ length: count }, () => new Float64Array(count))
+  for (let j = 0; j < count; j++) {
+    const smoothed = multiplyByCorrelation(fit.jacobian[j], decay)
+    for (let i = 0; i <= j; i++) inner[i][j] = inner[j][i] = dot(fit.jacobian[i], smoothed)
+  }
+  const left = inner.map((column) => solveUpperTransposed(qr, column))
   const middle: Float64Array[] = []
   let trace = 0
-  for (let j = 0; j < count; j++) {
-    const unit = new Float64Array(count)
-    unit[j] = 1
-    const smoothed = multiplyByCorrelation(multiplyQ(qr, unit), decay)
-    middle.push(multiplyQTransposed(qr, smoothed).slice(0, count))
-    trace += middle[j][j]
+  for (let i = 0; i < count; i++) {
+    middle.push(
+      solveUpperTransposed(
+        qr,
+        Float64Array.from(left, (column) => column[i]),
+      ),
+    )
+    trace += middle[i][i]
   }
   const variance = fit.rss / (fit.residual.length - trace)
   // R^{−1} M R^{−T}: solve for the columns of M, then for the rows of what came out.

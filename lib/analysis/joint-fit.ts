@@ -10,14 +10,16 @@ import {
 } from './fit-columns'
 import type { CentredTime, FitFrequencies, FitShape, FrequencyBlock } from './fit-columns'
 import {
+  dot,
   factorQr,
   multiplyQ,
   multiplyQTransposed,
   solveLeastSquares,
+  solveUpper,
   solveUpperTransposed,
   solveWithFactors,
 } from './least-squares'
-import type { LeastSquaresSolution } from './least-squares'
+import type { LeastSquaresSolution, QrFactors } from './least-squares'
 import { drain } from './drain'
 import type { Failure, Track } from './types'
 
@@ -71,6 +73,8 @@ interface Projection {
 
 const LARGEST_ITERATION_COUNT = 200
 const LARGEST_POLISH_COUNT = 60
+/** A step this small against the largest scaled coefficient changes nothing but last digits. */
+const ROUNDING = 2 ** -50
 /** Relative step of the frequencies below which the damped iteration hands over to the polish, or ends without one. */
 const STEP_TOLERANCE = 1e-6
 /** Fits that only choose among models compare sums of squares, so they may stop where that no longer falls. */
@@ -309,7 +313,13 @@ interface PolishOptions {
   columnsAt: (scaled: Float64Array) => Float64Array[]
 }
 
-/** Undamped Gauss–Newton on the full parameter set by QR, without a test on RSS, while the largest scaled step shrinks. */
+/**
+ * Undamped Gauss–Newton on the full parameter set, without a test on RSS, while the largest scaled step shrinks and is not
+ * yet rounding. R is that of the first step; the gradient Jᵀr is always the current one, so that what is reached is the
+ * minimum itself.
+ *
+ * @see Björck (1987), Linear Algebra Appl. 88/89, 31 for steps from R and Jᵀr
+ */
 function* polish(options: PolishOptions): Generator<void, Float64Array> {
   const { scaled, current, unknowns, time, track, columnsAt } = options
   let q = scaled
@@ -317,16 +327,29 @@ function* polish(options: PolishOptions): Generator<void, Float64Array> {
   let coefficients = current.solution.coefficients
   let residual = current.solution.residual
   let previous = Infinity
+  let qr: QrFactors | null = null
   for (let count = 0; count < LARGEST_POLISH_COUNT; count++) {
     yield
-    const derivatives = unknowns.map(({ block, startHz }) =>
-      derivativeColumn(time, linear, coefficients, block).map((value) => value * startHz),
-    )
-    const qr = factorQr([...linear, ...derivatives])
-    if (!qr.ok) return q
-    const step = solveWithFactors(qr, residual).coefficients
-    const size = step.reduce((most, value, j) => Math.max(most, Math.abs(value) * qr.scale[j]), 0)
+    const derivatives = unknowns.map(({ block, startHz }) => {
+      const column = derivativeColumn(time, linear, coefficients, block)
+      for (let i = 0; i < column.length; i++) column[i] *= startHz
+      return column
+    })
+    const columns = [...linear, ...derivatives]
+    let step: Float64Array
+    if (qr === null) {
+      const factors = factorQr(columns)
+      if (!factors.ok) return q
+      qr = factors
+      step = solveWithFactors(qr, residual).coefficients
+    } else {
+      const gradient = Float64Array.from(columns, (column) => dot(column, residual))
+      step = solveUpper(qr, solveUpperTransposed(qr, gradient))
+    }
+    const { scale } = qr
+    const size = step.reduce((most, value, j) => Math.max(most, Math.abs(value) * scale[j]), 0)
     if (!(size < previous)) return q
+    const rounding = ROUNDING * coefficients.reduce((most, value, j) => Math.max(most, Math.abs(value) * scale[j]), 0)
     previous = size
     const next = q.map((value, m) => value + step[linear.length + m])
     if (outside(next, unknowns).length > 0) return q
@@ -339,7 +362,7 @@ function* polish(options: PolishOptions): Generator<void, Float64Array> {
       const coefficient = coefficients[j]
       for (let i = 0; i < residual.length; i++) residual[i] -= coefficient * column[i]
     }
-    if (size === 0) return q
+    if (size <= rounding) return q
   }
   return q
 }

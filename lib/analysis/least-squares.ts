@@ -190,6 +190,23 @@ export function euclideanNorm(values: Float64Array, start = 0): number {
   return largest * Math.sqrt(scaled)
 }
 
+/** Σ u_i v_i over columns of equal length, in four sums at once. */
+export function dot(u: Float64Array, v: Float64Array): number {
+  let sum0 = 0
+  let sum1 = 0
+  let sum2 = 0
+  let sum3 = 0
+  let i = 0
+  for (; i + 3 < u.length; i += 4) {
+    sum0 += u[i] * v[i]
+    sum1 += u[i + 1] * v[i + 1]
+    sum2 += u[i + 2] * v[i + 2]
+    sum3 += u[i + 3] * v[i + 3]
+  }
+  for (; i < u.length; i++) sum0 += u[i] * v[i]
+  return sum0 + sum1 + (sum2 + sum3)
+}
+
 /** H = 1 − 2vvᵀ applied to target. Four sums at once, since a single running sum waits for each addition. */
 function reflectInPlace(reflector: Float64Array, start: number, target: Float64Array): void {
   const length = target.length

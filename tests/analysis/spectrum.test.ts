@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest'
-import { amplitudeSpectrum, spectrumColumns } from '@/lib/analysis/amplitude-spectrum'
+import { amplitudeSpectraUpTo, amplitudeSpectrum, spectrumColumns } from '@/lib/analysis/amplitude-spectrum'
 import { toEvenGrid, type EvenGrid } from '@/lib/analysis/even-grid'
 import { complexFft, nextPowerOfTwo, realFft } from '@/lib/analysis/fft'
 import { createRandom } from '@/lib/analysis/random'
@@ -146,6 +146,30 @@ describe('amplitudeSpectrum', () => {
     expect(periodSeconds).toBeCloseTo(checks.values['5.padded_hann_period'], 3)
     expect(Math.exp(parabolaHeight(...logs))).toBeCloseTo(checks.values['5.padded_hann_amplitude'], 5)
   })
+})
+
+test.each(['hann', 'flat-top'] as const)('%s: two spectra up to a limit are the whole ones', (window) => {
+  const random = createRandom(4)
+  const time = Float64Array.from({ length: 700 }, (_, i) => 2.5 * i + (i === 0 ? 0 : 0.3 * random.uniform()))
+  const before = toEvenGrid(
+    time,
+    time.map((t) => 7 * Math.cos((2 * Math.PI * t) / 480) + random.normal()),
+  )
+  const after = toEvenGrid(
+    time,
+    time.map(() => random.normal()),
+  )
+  expect(before.method).toBe('fine')
+  const pair = amplitudeSpectraUpTo(before, after, { window, highestHz: 0.2 })
+  for (const [k, grid] of [before, after].entries()) {
+    const whole = amplitudeSpectrum(grid, { window })
+    expect(pair[k].stepHz).toBe(whole.stepHz)
+    const last = pair[k].amplitude.length - 1
+    expect(last * whole.stepHz).toBeGreaterThan(0.2 * 0.997)
+    expect(last * whole.stepHz).toBeLessThanOrEqual(0.2)
+    // The transform promises 1e-8 of Σ|w x|, of which 7″ is the largest amplitude.
+    pair[k].amplitude.forEach((value, j) => expect(Math.abs(value - whole.amplitude[j])).toBeLessThan(2e-7))
+  }
 })
 
 describe('peak between bins: a line at 20.3 bins, N = 256, phase 0.4', () => {
