@@ -26,7 +26,7 @@ export function Select({ options, className, ...rest }: SelectProps) {
         aria-hidden="true"
         viewBox="0 0 12 12"
         // A long choice runs out below the arrow, not through it.
-        className="pointer-events-none absolute top-1/2 right-1 box-content size-3 -translate-y-1/2 rounded-control bg-card px-1.5 text-soft"
+        className="pointer-events-none absolute top-1/2 right-px box-content size-3 -translate-y-1/2 rounded-control bg-card pr-2.25 pl-1 text-soft"
       >
         <path d="M2 4.5 6 8.5 10 4.5" fill="none" stroke="currentColor" strokeWidth="1.6" />
       </svg>
