@@ -3,13 +3,11 @@
 import { useState } from 'react'
 import { PageHeading } from '@/components/shell/page-heading'
 import { Button } from '@/components/ui/button'
-import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { DataState } from '@/components/ui/data-state'
 import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
 import { Notice } from '@/components/ui/notice'
 import { SheetSection } from '@/components/ui/sheet-section'
 import type { DriveTrain } from '@/lib/analysis/types'
-import { formatMinute } from '@/lib/client/dates'
 import { sendJson } from '@/lib/client/fetcher'
 import { useProject } from '@/lib/client/project-data'
 import { findingText } from '@/lib/findings/finding'
@@ -17,6 +15,7 @@ import { driveFinding } from '@/lib/findings/drive-finding'
 import { projectSchema, type Project } from '@/lib/schemas/api'
 import { DriveTrainEditor } from './drive-train-editor'
 import { PredictedOrdersTable } from './predicted-orders-table'
+import { SaveTroubles } from './save-troubles'
 import { useSave } from './use-save'
 
 export function DriveScreen({ projectId }: { projectId: string }) {
@@ -65,25 +64,18 @@ function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: 
         >
           <DriveTrainEditor value={typed} onValue={setTyped} isReadOnly={isReadOnly} key={version} />
           <div className="mt-5 flex flex-col gap-3">
-            {conflict ? (
-              <ConflictNotice
-                thing="this project"
-                changedBy={conflict.changedBy}
-                changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
-                onKeepMine={() => void send(conflict.current.version)}
-                onTakeTheirs={() => {
-                  setTyped(conflict.current.driveTrain)
-                  setVersion(conflict.current.version)
-                  dropConflict()
-                  onSaved(conflict.current)
-                }}
-              />
-            ) : null}
-            {fault ? (
-              <Notice tone="error" title="Not saved" isLive>
-                {fault}
-              </Notice>
-            ) : null}
+            <SaveTroubles
+              thing="this project"
+              fault={fault}
+              conflict={conflict}
+              onKeepMine={({ version: newest }) => void send(newest)}
+              onTakeTheirs={(theirs) => {
+                setTyped(theirs.driveTrain)
+                setVersion(theirs.version)
+                dropConflict()
+                onSaved(theirs)
+              }}
+            />
             {isSaved && !isChanged ? (
               <Notice tone="good" isLive>
                 Saved. Runs analysed from now on use it; saved analyses keep the drive train that they were made with.

@@ -1,13 +1,11 @@
 'use client'
 
 import { useState } from 'react'
+import { SaveTroubles } from '@/components/projects/save-troubles'
 import { useSave } from '@/components/projects/use-save'
 import { Button } from '@/components/ui/button'
-import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { Field } from '@/components/ui/field'
-import { Notice } from '@/components/ui/notice'
 import { TextInput } from '@/components/ui/text-input'
-import { formatMinute } from '@/lib/client/dates'
 import { sendJson } from '@/lib/client/fetcher'
 import { projectChangeSchema, projectSchema, type Project } from '@/lib/schemas/api'
 
@@ -41,23 +39,16 @@ export function NameForm({ project, onSaved }: { project: Project; onSaved: (pro
           <TextInput {...control} value={name} autoComplete="off" onChange={(event) => setName(event.target.value)} />
         )}
       </Field>
-      {conflict ? (
-        <ConflictNotice
-          thing="this project"
-          changedBy={conflict.changedBy}
-          changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
-          onKeepMine={() => void send(conflict.current.version)}
-          onTakeTheirs={() => {
-            dropConflict()
-            onSaved(conflict.current)
-          }}
-        />
-      ) : null}
-      {fault && !fields.name ? (
-        <Notice tone="error" title="Not saved" isLive>
-          {fault}
-        </Notice>
-      ) : null}
+      <SaveTroubles
+        thing="this project"
+        fault={fields.name ? null : fault}
+        conflict={conflict}
+        onKeepMine={({ version: newest }) => void send(newest)}
+        onTakeTheirs={(theirs) => {
+          dropConflict()
+          onSaved(theirs)
+        }}
+      />
       <div>
         <Button type="submit" disabled={isBusy || name === project.name}>
           Save the name

@@ -1,16 +1,14 @@
 'use client'
 
 import { useState } from 'react'
+import { SaveTroubles } from '@/components/projects/save-troubles'
 import { useSave } from '@/components/projects/use-save'
 import { Button } from '@/components/ui/button'
-import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { Actions } from '@/components/ui/dialog'
 import { Field } from '@/components/ui/field'
 import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
-import { Notice } from '@/components/ui/notice'
 import { NumberField } from '@/components/ui/number-input'
 import { TextInput } from '@/components/ui/text-input'
-import { formatMinute } from '@/lib/client/dates'
 import { sendJson } from '@/lib/client/fetcher'
 import type { OpticsPreset } from '@/lib/client/project-data'
 import { opticsFieldsSchema, opticsPresetSchema } from '@/lib/schemas/api'
@@ -138,23 +136,16 @@ export function OpticsForm({ url, preset, onSaved, onClose }: OpticsFormProps) {
           max={100}
         />
       </div>
-      {conflict ? (
-        <ConflictNotice
-          thing="these optics"
-          changedBy={conflict.changedBy}
-          changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
-          onKeepMine={() => void send(conflict.current.version)}
-          onTakeTheirs={() => {
-            dropConflict()
-            onSaved()
-          }}
-        />
-      ) : null}
-      {fault ? (
-        <Notice tone="error" title="Not saved" isLive>
-          {fault}
-        </Notice>
-      ) : null}
+      <SaveTroubles
+        thing="these optics"
+        fault={fault}
+        conflict={conflict}
+        onKeepMine={({ version: newest }) => void send(newest)}
+        onTakeTheirs={() => {
+          dropConflict()
+          onSaved()
+        }}
+      />
       <Actions className="mt-2">
         <Button onClick={onClose}>Cancel</Button>
         <Button type="submit" variant="primary" disabled={isBusy}>

@@ -2,18 +2,17 @@
 
 import { useRouter } from 'next/navigation'
 import { useState, type ReactNode } from 'react'
+import { SaveTroubles } from '@/components/projects/save-troubles'
 import { useSave } from '@/components/projects/use-save'
 import { Button, ButtonAnchor } from '@/components/ui/button'
 import { TitledCard } from '@/components/ui/card'
-import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { Actions, Dialog } from '@/components/ui/dialog'
 import { Field } from '@/components/ui/field'
 import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
-import { Notice } from '@/components/ui/notice'
 import { NumberField } from '@/components/ui/number-input'
 import { Select, type SelectOption } from '@/components/ui/select'
 import { TextInput } from '@/components/ui/text-input'
-import { formatDayAndTime, formatMinute } from '@/lib/client/dates'
+import { formatDayAndTime } from '@/lib/client/dates'
 import { sendJson } from '@/lib/client/fetcher'
 import { runSchema, type Run } from '@/lib/schemas/api'
 import type { RunFacts } from '@/lib/schemas/run-facts'
@@ -200,25 +199,18 @@ function FactsForm({ run, onClose }: { run: Run; onClose: () => void }) {
         value={facts.loadAndBalance}
         onValue={(loadAndBalance) => change({ loadAndBalance })}
       />
-      {conflict ? (
-        <ConflictNotice
-          thing="this run"
-          changedBy={conflict.changedBy}
-          changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
-          onKeepMine={() => void send(conflict.current.version)}
-          onTakeTheirs={() => {
-            setName(conflict.current.name)
-            setFacts(conflict.current.facts)
-            dropConflict()
-            router.refresh()
-          }}
-        />
-      ) : null}
-      {fault ? (
-        <Notice tone="error" title="Not saved" isLive>
-          {fault}
-        </Notice>
-      ) : null}
+      <SaveTroubles
+        thing="this run"
+        fault={fault}
+        conflict={conflict}
+        onKeepMine={({ version: newest }) => void send(newest)}
+        onTakeTheirs={(theirs) => {
+          setName(theirs.name)
+          setFacts(theirs.facts)
+          dropConflict()
+          router.refresh()
+        }}
+      />
       <Actions className="mt-0">
         <Button onClick={onClose}>Not now</Button>
         <Button type="submit" variant="primary" disabled={isBusy}>

@@ -1,0 +1,36 @@
+import { ConflictNotice } from '@/components/ui/conflict-notice'
+import { Notice } from '@/components/ui/notice'
+import { formatMinute } from '@/lib/client/dates'
+import type { SaveConflict } from './use-save'
+
+interface SaveTroublesProps<Thing> {
+  /** What was to be saved: “the drive train”. */
+  thing: string
+  fault: string | null
+  conflict: SaveConflict<Thing> | null
+  onKeepMine: (current: Thing) => void
+  onTakeTheirs: (current: Thing) => void
+}
+
+/** What stands in the way of saving, as useSave tells it; nothing when all is well. */
+export function SaveTroubles<Thing>(props: SaveTroublesProps<Thing>) {
+  const { thing, fault, conflict, onKeepMine, onTakeTheirs } = props
+  return (
+    <>
+      {conflict ? (
+        <ConflictNotice
+          thing={thing}
+          changedBy={conflict.changedBy}
+          changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
+          onKeepMine={() => onKeepMine(conflict.current)}
+          onTakeTheirs={() => onTakeTheirs(conflict.current)}
+        />
+      ) : null}
+      {fault ? (
+        <Notice tone="error" title="Not saved" isLive>
+          {fault}
+        </Notice>
+      ) : null}
+    </>
+  )
+}
