@@ -19,14 +19,14 @@ export interface KeyFigure {
 export function FigureStrip({ figures, label = 'Key figures' }: { figures: readonly KeyFigure[]; label?: string }) {
   return (
     <Card aria-label={label} className="overflow-hidden">
-      <dl className="-mt-px -ml-px grid grid-cols-2 md:not-print:grid-flow-col md:not-print:auto-cols-fr md:not-print:grid-cols-none print:grid-cols-3">
+      <dl className="-mt-px -ml-px grid grid-cols-2 md:not-print:grid-flow-col md:not-print:auto-cols-fr md:not-print:grid-cols-none md:not-print:grid-rows-[auto_auto] print:grid-cols-3">
         {figures.map((figure, index) => (
           <div
             key={index}
-            className="flex min-w-0 flex-col border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:not-print:last:odd:col-span-2"
+            className="row-span-2 grid min-w-0 grid-rows-subgrid border-t border-l border-rule px-5 py-4 max-sm:px-4 max-sm:py-3 max-md:not-print:last:odd:col-span-2"
           >
             <dt className="text-sm text-soft">{figure.label}</dt>
-            <dd className="mt-auto pt-0.5">
+            <dd className="pt-0.5">
               <Figure {...figure} />
             </dd>
           </div>
@@ -45,8 +45,8 @@ export function Figure({ value, uncertainty, unit, remark }: Omit<KeyFigure, 'la
       <span
         className={classNames(
           'inline-block text-base whitespace-nowrap text-soft max-xl:text-sm',
-          // On a phone some would fit beside their figure and some not; below it they line up.
-          uncertainty !== undefined && 'max-sm:block',
+          // In narrow columns some would fit beside their figure and some not; below it they line up.
+          uncertainty !== undefined && 'max-xl:block',
         )}
       >
         {uncertainty === undefined ? null : (
