@@ -63,6 +63,8 @@ function printSignIns() {
 async function main() {
   checkNodeVersion()
   const settings = readSettings(root)
+  // Asked again below, but a port that is taken should not be told after minutes of building.
+  await choosePort(settings.PORT)
   await ensureDependencies(root)
   const database = await openDatabase(settings)
   if (isStopping) return
