@@ -44,8 +44,8 @@ export function residualChance(fitted: FittedRun, context: FitRunContext, chance
   }
 }
 
-/** Everything that is drawn but the table, which changes with settings of its own. */
-export function buildViews(input: {
+/** Everything that is drawn but the table, which changes with settings of its own; pauses between the pictures. */
+export function* buildViews(input: {
   cleaned: CleanedTrack
   recipe: Recipe
   fitted: FittedRun
@@ -53,7 +53,7 @@ export function buildViews(input: {
   chance: Chance
   result: AnalysisResult
   foldInput: FoldInput | null
-}): AnalysisViews {
+}): Generator<void, AnalysisViews> {
   const { cleaned, recipe, fitted, parts, chance, result, foldInput } = input
   const { track, segmentStarts, strays } = cleaned
   const { timeSeconds, raArcsec } = track
@@ -67,6 +67,9 @@ export function buildViews(input: {
   const period = result.worm?.periodSeconds.value ?? 0
   const turnCount = turns === null ? 0 : Math.floor(turns) + 1
   const strayCurve = decimate({ timeSeconds: strays.timeSeconds, values: strays.raArcsec, segmentStarts: [0] })
+  yield
+  const spectrum = yield* spectrumView({ timeSeconds, raArcsec, parts, recipe, fitted, chance, result })
+  yield
   return {
     track: {
       timeSeconds: recorded.timeSeconds,
@@ -78,13 +81,13 @@ export function buildViews(input: {
       strayArcsec: strayCurve.values,
       turnStartSeconds: Array.from({ length: turnCount }, (_, n) => firstUsedTimeSeconds + n * period),
     },
-    spectrum: spectrumView({ timeSeconds, raArcsec, parts, recipe, fitted, chance, result }),
+    spectrum,
     turn: foldInput === null ? null : turnView(result, foldInput),
     slip: null,
   }
 }
 
-function spectrumView(input: {
+function* spectrumView(input: {
   timeSeconds: Float64Array
   raArcsec: Float64Array
   parts: ModelParts
@@ -92,7 +95,7 @@ function spectrumView(input: {
   fitted: FittedRun
   chance: Chance
   result: AnalysisResult
-}): AnalysisViews['spectrum'] {
+}): Generator<void, AnalysisViews['spectrum']> {
   const { timeSeconds, raArcsec, parts, recipe, fitted, chance, result } = input
   const window = recipe.spectrumWindow
   const before = toEvenGrid(
@@ -101,7 +104,9 @@ function spectrumView(input: {
   )
   const after = toEvenGrid(timeSeconds, fitted.fit.residual)
   const highestHz = Math.min(1 / result.run.shortestPeriodSeconds, 0.5 / before.cadenceSeconds)
+  yield
   const [whole, left] = amplitudeSpectraUpTo(before, after, { window, highestHz })
+  yield
   const columns = spectrumColumns(whole, left, {
     lowestHz: Math.min(0.5 / result.run.durationSeconds, highestHz / 2),
     highestHz,

@@ -7,7 +7,7 @@ import { makeTable } from './analyse-table'
 import { buildViews, residualChance } from './analyse-views'
 import { describeDrift, describeLines, describeWorm } from './describe-fit'
 import { drain } from './drain'
-import { chooseWormModel, findLines, findWormStart, fitFinally, withoutFreePeriod } from './fit-run'
+import { chooseWormModel, during, findLines, findWormStart, fitFinally, withoutFreePeriod } from './fit-run'
 import type { FitRunContext, FittedRun, WormModel } from './fit-run'
 import { foldTurns, ordersUsefulOnLeftOutTurns } from './fold'
 import type { FoldInput } from './fold'
@@ -24,6 +24,7 @@ import { rootMeanSquare, span } from './statistics'
 import type {
   AnalysisOutcome,
   AnalysisResult,
+  AnalysisViews,
   AnalysisWarning,
   Failure,
   PredictedOrder,
@@ -88,7 +89,7 @@ export function createAnalyser(columns: RunColumns): Analyser {
   const choose = remember<Progress, Modelled | Failure>()
   const fit = remember<Progress, Fitted | Failure>()
   const fold = remember<Progress, Folded>()
-  const views = remember<Progress, ReturnType<typeof buildViews>>()
+  const views = remember<Progress, AnalysisViews>()
 
   return {
     *run(recipe) {
@@ -113,6 +114,7 @@ export function createAnalyser(columns: RunColumns): Analyser {
       const folded = yield* fold(fitKey, () => foldRun(modelled, fitted))
       yield { stage: 'correcting', fraction: 0.92 }
       const result = describe({ columns, recipe, prepared, modelled, fitted, folded })
+      yield { stage: 'correcting', fraction: 0.94 }
       const table = makeTable({ columns, recipe, prepared, result, folded })
       result.table = table.table
       result.tableReason = table.reason
@@ -122,15 +124,18 @@ export function createAnalyser(columns: RunColumns): Analyser {
         yield { stage: 'correcting', fraction: 0.97 }
         const { cleaned } = prepared
         const chance = residualChance(fitted.fitted, modelled.context, recipe.chanceLevel)
-        return buildViews({
-          cleaned,
-          recipe,
-          fitted: fitted.fitted,
-          parts: fitted.parts,
-          chance,
-          result,
-          foldInput: folded.foldInput,
-        })
+        return yield* during(
+          { stage: 'correcting', fraction: 0.98 },
+          buildViews({
+            cleaned,
+            recipe,
+            fitted: fitted.fitted,
+            parts: fitted.parts,
+            chance,
+            result,
+            foldInput: folded.foldInput,
+          }),
+        )
       })
       const turn = base.turn === null ? null : { ...base.turn, tableArcsec: table.playedArcsec(base.turn.angleDegrees) }
       return { ok: true, result, views: { ...base, turn, slip: table.slip } }
@@ -201,6 +206,7 @@ function* foldRun({ context }: Modelled, { fitted, parts }: Fitted): Generator<P
     periodSeconds: 1 / fit.frequencies.wormHz,
     originSeconds: timeSeconds[0],
   }
+  yield { stage: 'folding', fraction: 0.86 }
   const turn = foldTurns(foldInput, orders)
   yield { stage: 'folding', fraction: 0.88 }
   const usefulOrders = ordersUsefulOnLeftOutTurns(foldInput, orders)

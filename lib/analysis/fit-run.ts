@@ -70,7 +70,7 @@ const LARGEST_LOCK_TOLERANCE = 0.2
 const report = (stage: Progress['stage'], fraction: number): Progress => ({ stage, fraction })
 
 /** Hands a part's steps on as progress of one stage. */
-function* during<Result>(progress: Progress, steps: Generator<unknown, Result>): Generator<Progress, Result> {
+export function* during<Result>(progress: Progress, steps: Generator<unknown, Result>): Generator<Progress, Result> {
   for (;;) {
     const step = steps.next()
     if (step.done) return step.value
