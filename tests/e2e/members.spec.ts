@@ -111,5 +111,5 @@ test('a recording is stored in the project and opens on its bench', async ({ bro
   const dialog = editor.getByRole('dialog')
   await dialog.getByLabel('Temperature').fill('-3.5')
   await dialog.getByRole('button', { name: 'Save' }).click()
-  await expect(editor.getByText('-3.5 °C')).toBeVisible()
+  await expect(editor.getByText(/^−3\.5\s°C$/)).toBeVisible()
 })
