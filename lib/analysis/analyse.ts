@@ -8,7 +8,7 @@ import { buildViews, residualChance } from './analyse-views'
 import { describeDrift, describeLines, describeWorm } from './describe-fit'
 import { drain } from './drain'
 import { chooseWormModel, during, findLines, findWormStart, fitFinally, withoutFreePeriod } from './fit-run'
-import type { FitRunContext, FittedRun, WormModel } from './fit-run'
+import type { FitRunContext, FittedRun, WormModel, WormStart } from './fit-run'
 import { foldTurns, ordersUsefulOnLeftOutTurns } from './fold'
 import type { FoldInput } from './fold'
 import { predictedOrders, wormPeriod } from './gear-train'
@@ -18,7 +18,7 @@ import type { ModelParts } from './model-parts'
 import { rateDemand } from './rate-demand'
 import { remember } from './remember'
 import { aliasFrequency, exposureAttenuation, highestFrequency } from './sampling'
-import { differenceNoise, LOWER_BOUND_CORRELATION } from './seeing-floor'
+import { differenceNoise, LOWER_BOUND_CORRELATION, secondDifferenceShareOfAr1 } from './seeing-floor'
 import { spanSplit } from './spans'
 import { rootMeanSquare, span } from './statistics'
 import type {
@@ -45,6 +45,11 @@ interface Prepared {
   ok: true
   converted: ConvertedRun
   cleaned: CleanedTrack
+}
+
+interface Started {
+  context: FitRunContext
+  start: WormStart
 }
 
 interface Modelled {
@@ -86,6 +91,7 @@ export function analyseAtOnce(columns: RunColumns, recipe: Recipe): AnalysisOutc
 
 export function createAnalyser(columns: RunColumns): Analyser {
   const prepare = remember<Progress, Prepared | Failure>()
+  const begin = remember<Progress, Started>()
   const choose = remember<Progress, Modelled | Failure>()
   const fit = remember<Progress, Fitted | Failure>()
   const fold = remember<Progress, Folded>()
@@ -102,9 +108,12 @@ export function createAnalyser(columns: RunColumns): Analyser {
 
       const { wheelTeeth, wormStarts, stages } = driveTrain
       const { driftDegree, wormPeriod: period, typedPeriodSeconds, harmonicCount } = recipe
-      const chooseKey =
-        prepareKey + JSON.stringify([wheelTeeth, wormStarts, driftDegree, period, typedPeriodSeconds, harmonicCount])
-      const modelled = yield* choose(chooseKey, () => chooseModelFor(prepared, recipe))
+      // With a gear the search for the period is made on a straight drift, whatever is fitted later.
+      const searchDegree = wheelTeeth === null ? driftDegree : null
+      const beginKey = prepareKey + JSON.stringify([wheelTeeth, wormStarts, searchDegree, period, typedPeriodSeconds])
+      const started = yield* begin(beginKey, () => findStart(prepared, recipe))
+      const chooseKey = beginKey + JSON.stringify([driftDegree, harmonicCount])
+      const modelled = yield* choose(chooseKey, () => chooseModelFor(started, recipe))
       if (!modelled.ok) return modelled
 
       const fitKey = chooseKey + JSON.stringify([stages, recipe.isLineSearchOn, recipe.chanceLevel])
@@ -154,7 +163,7 @@ function* prepareRun(columns: RunColumns, recipe: Recipe): Generator<Progress, P
   return { ok: true, converted, cleaned }
 }
 
-function* chooseModelFor(prepared: Prepared, recipe: Recipe): Generator<Progress, Modelled | Failure> {
+function* findStart(prepared: Prepared, recipe: Recipe): Generator<Progress, Started> {
   const { track, medianCadenceSeconds } = prepared.cleaned
   const gear = wormPeriod(recipe.driveTrain)
   const context: FitRunContext = {
@@ -164,7 +173,10 @@ function* chooseModelFor(prepared: Prepared, recipe: Recipe): Generator<Progress
     gearPeriodSeconds: gear.ok ? gear.seconds : null,
   }
   yield { stage: 'searching', fraction: 0.06 }
-  const start = findWormStart(context, recipe)
+  return { context, start: findWormStart(context, recipe) }
+}
+
+function* chooseModelFor({ context, start }: Started, recipe: Recipe): Generator<Progress, Modelled | Failure> {
   yield { stage: 'fitting', fraction: 0.15 }
   const chosen = yield* chooseWormModel(context, recipe, start)
   if (!chosen.ok) return chosen
@@ -364,7 +376,11 @@ function collectWarnings(input: {
   if (turns !== null && (turns < 2 || (turns < 4 && isNoiseSlow))) {
     warnings.push(warning('errors-may-be-small', { turns }))
   }
-  if (fastRatio > 1.2 && Number.isFinite(fastRatio)) warnings.push(warning('fast-motion', { ratio: fastRatio }))
+  // Seeing that lingers as AR(1) noise alone has the ratio √(3/(3 − r)), up to 1.22.
+  const r = result.residual.correctedLagOneCorrelation
+  const ofSeeing = Math.sqrt(1 - r) / secondDifferenceShareOfAr1(r)
+  if (fastRatio > 1.2 * ofSeeing && Number.isFinite(fastRatio))
+    warnings.push(warning('fast-motion', { ratio: fastRatio }))
   const shortest = result.run.shortestPeriodSeconds
   for (const { name, order, periodSeconds } of result.predictedOrders) {
     if (periodSeconds >= shortest) continue

@@ -100,6 +100,24 @@ describe('a bent drift', { timeout: 60_000 }, () => {
   })
 })
 
+describe('fast motion', { timeout: 60_000 }, () => {
+  const harmonics = [{ order: 1, amplitudeArcsec: 6, phaseDegrees: 35 }]
+  // AR(1) with r = 0.9 at 2.5 s: correlation time −2.5 s/ln 0.9.
+  const seeing = { whiteSkyArcsec: 0, correlatedSkyArcsec: 0.4, correlationSeconds: -2.5 / Math.log(0.9) }
+
+  test.each([300, 301, 302, 303, 304, 305, 306, 307])('is not seen in seeing that lingers, seed %i', (seed) => {
+    expect(codes(analysed({ harmonics, seeing, durationSeconds: 5 * WORM_180, seed }, 180))).not.toContain(
+      'fast-motion',
+    )
+  })
+
+  test('is seen where a gear swings within a dozen frames and no line is looked for', () => {
+    const gears = [{ name: 'x', order: WORM_180 / 30, amplitudeArcsec: 3, phaseDegrees: 20 }]
+    const given = { harmonics, gears, durationSeconds: 5 * WORM_180, seed: 3 }
+    expect(codes(analysed(given, 180, { isLineSearchOn: false }))).toContain('fast-motion')
+  })
+})
+
 describe('lines', { timeout: 60_000 }, () => {
   test('a line that the others explain once all are in the fit is not told', () => {
     // Three turns with a cloud of 181 s and two further gears: a line of 402 s was found on the way, and was 0.06 ± 0.06″ at last.
