@@ -1,28 +1,21 @@
 import { useId, type ComponentProps, type ReactNode } from 'react'
 import { classNames } from './class-names'
 
-interface ChoiceProps extends Omit<ComponentProps<'input'>, 'type'> {
+interface CheckboxProps extends Omit<ComponentProps<'input'>, 'type'> {
   label: ReactNode
   hint?: ReactNode
   error?: string | null
 }
 
-export function Checkbox(props: ChoiceProps) {
-  return <Choice type="checkbox" {...props} />
-}
-
-export function Radio(props: ChoiceProps) {
-  return <Choice type="radio" {...props} />
-}
-
-function Choice({ label, hint, error, className, type, ...rest }: ChoiceProps & { type: 'checkbox' | 'radio' }) {
+/** A box to tick with its label beside it. */
+export function Checkbox({ label, hint, error, className, ...rest }: CheckboxProps) {
   const noteId = useId()
   const note = error ?? hint
   return (
     <div className={classNames('flex flex-col gap-0.5', className)}>
       <label className="flex items-start gap-2.5 pointer-coarse:min-h-11 pointer-coarse:items-center">
         <input
-          type={type}
+          type="checkbox"
           className="mt-0.5"
           aria-describedby={note ? noteId : undefined}
           aria-invalid={error ? true : undefined}
