@@ -21,11 +21,14 @@ import { loadSample } from './load-sample'
 import { ReadingScreen } from './reading-screen'
 import { SaveDialog, type SaveChoice } from './save-dialog'
 import { useFileReading } from './use-file-reading'
+import { WorkerFault } from './worker-fault'
 
 /** Asks for the save dialog once the work is back after signing in. */
 const SAVE_PARAMETER = 'save'
 /** Opens the sample run at once. */
 const SAMPLE_PARAMETER = 'sample'
+
+const KEPT_ON_RELOAD = 'your file and settings are kept'
 
 /** The bench for everyone: a file of one's own or the sample, wholly in this browser until it is saved. */
 export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
@@ -133,7 +136,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         submitLabel="Show the worm"
       >
         {fault ? <Notice tone="error">{fault}</Notice> : null}
-        {analysis.fault ? <WorkerFault message={analysis.fault} /> : null}
+        <WorkerFault message={analysis.fault} kept={KEPT_ON_RELOAD} />
       </ReadingScreen>
     )
   }
@@ -173,11 +176,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         mountCorrection={work.facts.mountCorrection}
         isReadOnly={false}
       />
-      {analysis.fault ? (
-        <div>
-          <WorkerFault message={analysis.fault} />
-        </div>
-      ) : null}
+      <WorkerFault message={analysis.fault} kept={KEPT_ON_RELOAD} />
       <AccountDialog isOpen={dialog === 'account'} onClose={() => setDialog('none')} isKept={isKept} />
       <SaveDialog
         isOpen={dialog === 'save'}
@@ -209,14 +208,6 @@ function AccountDialog({ isOpen, onClose, isKept }: { isOpen: boolean; onClose: 
         </ButtonLink>
       </Actions>
     </Dialog>
-  )
-}
-
-function WorkerFault({ message }: { message: string }) {
-  return (
-    <Notice tone="error" title="The computation broke off" isLive>
-      Reload the page; your file and settings are kept. ({message})
-    </Notice>
   )
 }
 

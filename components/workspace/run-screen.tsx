@@ -12,6 +12,7 @@ import { ReadingScreen } from './reading-screen'
 import { RunBench } from './run-bench'
 import { RunFactsPanel } from './run-facts-panel'
 import { useFileReading } from './use-file-reading'
+import { WorkerFault } from './worker-fault'
 
 /** A stored run: its bench once its columns are known, before that the form that names them. */
 export function RunScreen({ project, run }: { project: Project; run: Run }) {
@@ -73,6 +74,7 @@ function UnreadRun({ project, run }: { project: Project; run: Run }) {
       file={file}
       submitLabel="Read this run"
     >
+      <WorkerFault message={analysis.fault} />
       {fault ? (
         <Notice tone="error" isLive>
           {fault}

@@ -13,6 +13,7 @@ import type { OpticsPreset } from '@/lib/client/project-data'
 import type { Project, Run } from '@/lib/schemas/api'
 import { ReadingScreen } from './reading-screen'
 import { useFileReading } from './use-file-reading'
+import { WorkerFault } from './worker-fault'
 
 interface RunUploadProps {
   project: Project
@@ -86,6 +87,7 @@ export function RunUpload({ project, presets }: RunUploadProps) {
           {step}
         </p>
       ) : null}
+      <WorkerFault message={analysis.fault} />
       {fault ? (
         <Notice tone="error" title="The run was not stored" isLive>
           {fault}
