@@ -1,3 +1,4 @@
+import { GUIDING_OPTIONS, SIDE_OF_PIER_OPTIONS, TRACKING_RATE_OPTIONS } from '@/components/runs/fact-options'
 import { Field } from '@/components/ui/field'
 import { NumberField } from '@/components/ui/number-input'
 import { Select } from '@/components/ui/select'
@@ -8,23 +9,6 @@ interface NightFieldsProps {
   facts: RunFacts
   onFacts: (facts: RunFacts) => void
 }
-
-const guidings = [
-  { value: 'unknown', label: 'not known' },
-  { value: 'off', label: 'off' },
-  { value: 'logged', label: 'on, with its corrections logged' },
-] as const
-const sides = [
-  { value: 'unknown', label: 'not known' },
-  { value: 'east', label: 'east' },
-  { value: 'west', label: 'west' },
-] as const
-const rates = [
-  { value: 'unknown', label: 'not known' },
-  { value: 'sidereal', label: 'sidereal' },
-  { value: 'solar', label: 'solar' },
-  { value: 'lunar', label: 'lunar' },
-] as const
 
 /** Facts that help to compare runs later; none is needed to read the file. */
 export function NightFields({ facts, onFacts }: NightFieldsProps) {
@@ -37,7 +21,7 @@ export function NightFields({ facts, onFacts }: NightFieldsProps) {
           {(control) => (
             <Select
               {...control}
-              options={guidings}
+              options={GUIDING_OPTIONS}
               value={facts.guiding}
               onChange={(event) => change({ guiding: runFactsSchema.shape.guiding.parse(event.target.value) })}
             />
@@ -47,7 +31,7 @@ export function NightFields({ facts, onFacts }: NightFieldsProps) {
           {(control) => (
             <Select
               {...control}
-              options={rates}
+              options={TRACKING_RATE_OPTIONS}
               value={facts.trackingRate}
               onChange={(event) =>
                 change({ trackingRate: runFactsSchema.shape.trackingRate.parse(event.target.value) })
@@ -59,7 +43,7 @@ export function NightFields({ facts, onFacts }: NightFieldsProps) {
           {(control) => (
             <Select
               {...control}
-              options={sides}
+              options={SIDE_OF_PIER_OPTIONS}
               value={facts.sideOfPier}
               onChange={(event) => change({ sideOfPier: runFactsSchema.shape.sideOfPier.parse(event.target.value) })}
             />

@@ -1,4 +1,5 @@
 import { wormPeriodText } from '@/components/projects/teeth'
+import { MOUNT_CORRECTION_OPTIONS } from '@/components/runs/fact-options'
 import { Field, FieldGroup } from '@/components/ui/field'
 import { NumberField } from '@/components/ui/number-input'
 import { Select } from '@/components/ui/select'
@@ -11,11 +12,6 @@ interface RecordingFieldsProps {
   onDraft: (draft: ImportDraft) => void
 }
 
-const mountCorrections = [
-  { value: 'unknown', label: 'not known' },
-  { value: 'off', label: 'off' },
-  { value: 'on', label: 'on: a table was playing' },
-] as const
 const stamps = [
   { value: 'mid', label: 'middle of the exposure' },
   { value: 'start', label: 'start of the exposure' },
@@ -46,10 +42,10 @@ export function RecordingFields({ draft, onDraft }: RecordingFieldsProps) {
           {(control) => (
             <Select
               {...control}
-              options={mountCorrections}
+              options={MOUNT_CORRECTION_OPTIONS}
               value={facts.mountCorrection}
               onChange={(event) => {
-                const chosen = mountCorrections.find(({ value }) => value === event.target.value)
+                const chosen = MOUNT_CORRECTION_OPTIONS.find(({ value }) => value === event.target.value)
                 if (chosen) changeFacts({ mountCorrection: chosen.value })
               }}
             />

@@ -4,6 +4,12 @@ import { useRouter } from 'next/navigation'
 import { useState, type ReactNode } from 'react'
 import { SaveTroubles } from '@/components/projects/save-troubles'
 import { useSave } from '@/components/projects/use-save'
+import {
+  GUIDING_OPTIONS,
+  MOUNT_CORRECTION_OPTIONS,
+  SIDE_OF_PIER_OPTIONS,
+  TRACKING_RATE_OPTIONS,
+} from '@/components/runs/fact-options'
 import { Button, ButtonAnchor } from '@/components/ui/button'
 import { TitledCard } from '@/components/ui/card'
 import { Actions, Dialog } from '@/components/ui/dialog'
@@ -21,39 +27,10 @@ import { formatBytes, formatCount, formatNumber } from '@/lib/units'
 type Choice = 'sideOfPier' | 'trackingRate' | 'mountCorrection' | 'guiding'
 
 const CHOICES: Record<Choice, { label: string; options: readonly SelectOption[] }> = {
-  sideOfPier: {
-    label: 'Side of pier',
-    options: [
-      { value: 'unknown', label: 'not known' },
-      { value: 'east', label: 'east' },
-      { value: 'west', label: 'west' },
-    ],
-  },
-  trackingRate: {
-    label: 'Tracking rate',
-    options: [
-      { value: 'unknown', label: 'not known' },
-      { value: 'sidereal', label: 'sidereal' },
-      { value: 'solar', label: 'solar' },
-      { value: 'lunar', label: 'lunar' },
-    ],
-  },
-  mountCorrection: {
-    label: 'Correction in the mount',
-    options: [
-      { value: 'unknown', label: 'not known' },
-      { value: 'off', label: 'off' },
-      { value: 'on', label: 'on' },
-    ],
-  },
-  guiding: {
-    label: 'Guiding',
-    options: [
-      { value: 'unknown', label: 'not known' },
-      { value: 'off', label: 'off' },
-      { value: 'logged', label: 'on, corrections logged' },
-    ],
-  },
+  sideOfPier: { label: 'Side of the pier', options: SIDE_OF_PIER_OPTIONS },
+  trackingRate: { label: 'Tracking rate', options: TRACKING_RATE_OPTIONS },
+  mountCorrection: { label: 'Correction in the mount', options: MOUNT_CORRECTION_OPTIONS },
+  guiding: { label: 'Guiding', options: GUIDING_OPTIONS },
 }
 
 /** What is known of a stored run beside its numbers, and its original file. */
