@@ -1,4 +1,5 @@
 import { pathToFileURL } from 'node:url'
+import { Logger, runMigrations } from 'graphile-worker'
 import { Migrator, NO_MIGRATIONS, type Kysely, type MigrationResultSet } from 'kysely'
 import { createDatabase } from './create-db'
 import { migrations } from './migrations'
@@ -33,6 +34,13 @@ export async function migrateTo(db: Kysely<Database>, name?: string): Promise<st
   return finished(await migrator(db).migrateTo(name ?? NO_MIGRATIONS))
 }
 
+/** Makes or updates the queue's own schema, `graphile_worker`, which its package looks after. */
+export async function prepareQueue(connectionString: string): Promise<void> {
+  await runMigrations({ connectionString, logger: silent })
+}
+
+const silent = new Logger(() => () => {})
+
 /** `node --import tsx db/migrate.ts [name]`: to the latest, or up or down to the named one. */
 async function main(): Promise<void> {
   const connectionString = process.env.DATABASE_URL
@@ -40,6 +48,7 @@ async function main(): Promise<void> {
   const { db } = createDatabase({ connectionString, poolSize: 1 })
   try {
     const target = process.argv[2]
+    await prepareQueue(connectionString)
     const applied = target ? await migrateTo(db, target) : await migrateToLatest(db)
     console.log(applied.length > 0 ? `Migrated: ${applied.join(', ')}` : 'The database is up to date')
   } finally {

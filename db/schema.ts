@@ -1,8 +1,16 @@
-import type { EmailTokensTable, RateLimitsTable, SessionsTable, UsersTable } from './tables/accounts'
-import type { AnalysesTable, CorrectionsTable, NotesTable } from './tables/analyses'
+import type { EmailTokensTable, RateLimitsTable, SessionsTable, SignUpsTable, UsersTable } from './tables/accounts'
+import type {
+  AnalysesTable,
+  CorrectionsTable,
+  NoteMentionsTable,
+  NotesTable,
+  ShareLinkNotesTable,
+  ShareLinksTable,
+} from './tables/analyses'
 import type {
   AuditEventsTable,
   DriveTrainsTable,
+  InvitationsTable,
   MembershipsTable,
   OpticsPresetsTable,
   ProjectsTable,
@@ -13,10 +21,12 @@ import type { RunColumnsTable, RunFileChunksTable, RunsTable } from './tables/ru
 export interface Database {
   users: UsersTable
   sessions: SessionsTable
+  signUps: SignUpsTable
   emailTokens: EmailTokensTable
   rateLimits: RateLimitsTable
   projects: ProjectsTable
   memberships: MembershipsTable
+  invitations: InvitationsTable
   driveTrains: DriveTrainsTable
   opticsPresets: OpticsPresetsTable
   auditEvents: AuditEventsTable
@@ -25,5 +35,8 @@ export interface Database {
   runColumns: RunColumnsTable
   analyses: AnalysesTable
   notes: NotesTable
+  noteMentions: NoteMentionsTable
   corrections: CorrectionsTable
+  shareLinks: ShareLinksTable
+  shareLinkNotes: ShareLinkNotesTable
 }

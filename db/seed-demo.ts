@@ -61,7 +61,10 @@ export async function seedDemo(db: Kysely<Database>, users: DemoUserIds): Promis
       const { analysisId, result } = stored.get(note.runKey)!
       const anchor = note.anchor(result)
       if (!anchor) continue
-      const { id } = await insertNote(trx, access[note.author], { analysisId, note: { anchor, text: note.text } })
+      const { id } = await insertNote(trx, access[note.author], {
+        analysisId,
+        note: { anchor, text: note.text, mentions: [] },
+      })
       await trx
         .updateTable('notes')
         .set({ createdAt: momentOf(index) })

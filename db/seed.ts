@@ -27,7 +27,7 @@ async function upsertPerson(db: Kysely<Database>, person: { displayName: string;
   const { displayName, email } = person
   const { id } = await db
     .insertInto('users')
-    .values({ displayName, email, passwordHash })
+    .values({ displayName, email, passwordHash, emailVerifiedAt: new Date() })
     .onConflict((conflict) => conflict.expression(sql`lower(email)`).doUpdateSet({ passwordHash }))
     .returning('id')
     .executeTakeFirstOrThrow()

@@ -11,8 +11,8 @@ export const RIGHTS = {
 } as const satisfies Record<Role, Record<string, boolean>>
 
 /**
- * 'read': see everything, download. 'edit': runs, analyses, notes, correction tables, optics, the drive train.
- * 'manage': the project itself, and other people's notes.
+ * 'read': see everything, download. 'edit': runs, analyses, notes, share links, correction tables, optics, the drive train;
+ * nobody while the project is archived. 'manage': the project itself, its people, and other people's notes.
  */
 export type Right = keyof (typeof RIGHTS)[Role]
 
@@ -35,21 +35,31 @@ export interface AccessRequest<R extends Right> {
   right: R
 }
 
-/** @throws {Refusal} 'unknown' to everyone who is no member, 'forbidden' to a member without the right */
+/**
+ * @throws {Refusal} 'unknown' to everyone who is no member, 'forbidden' to a member without the right, 'archived' to whoever
+ *   may edit but not in a project that is put away
+ */
 export async function accessProject<R extends Right>(
   db: Kysely<Database>,
   { userId, projectId, right }: AccessRequest<R>,
 ): Promise<ProjectAccess<R>> {
   const membership = await db
     .selectFrom('memberships')
-    .select('role')
+    .innerJoin('projects', 'projects.id', 'memberships.projectId')
+    .select(['role', 'archivedAt'])
     .where('projectId', '=', projectId)
     .where('userId', '=', userId)
     .executeTakeFirst()
   if (!membership) throw unknownThing('project')
-  const { role } = membership
+  const { role, archivedAt } = membership
   if (!RIGHTS[role][right]) {
     throw new Refusal({ kind: 'forbidden' }, `As ${role} of this project you may look but not do this`)
+  }
+  if (archivedAt && right === 'edit') {
+    throw new Refusal(
+      { kind: 'archived' },
+      'This project is archived: nothing in it can be changed until an owner opens it again',
+    )
   }
   return { projectId, userId, role } as ProjectAccess<R>
 }

@@ -24,11 +24,14 @@ function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
       'analyses.engineVersion',
       'analyses.samplesSha256',
       'analyses.wormPeriodSeconds',
+      'analyses.wormPeriodStderrSeconds',
       'analyses.wormAmplitudeArcsec',
+      'analyses.wormAmplitudeStderrArcsec',
       'analyses.peakToPeakArcsec',
+      'analyses.peakToPeakStderrArcsec',
       'analyses.createdAt',
       'analyses.updatedAt',
-      'users.displayName as createdBy',
+      sql<string>`coalesce(analyses.author_name, users.display_name)`.as('createdBy'),
     ])
 }
 
@@ -75,6 +78,7 @@ export interface NewAnalysis {
 /** Keeps the analysis; the very same one, saved again by the same person, is kept once (an answer may have been lost). */
 export async function insertAnalysis(trx: Transaction<Database>, access: ProjectAccess<'edit'>, fields: NewAnalysis) {
   const { runId, name, recipe, result, samplesSha256, worm } = fields
+  const fundamental = worm?.harmonics.find(({ order }) => order === 1)?.amplitudeArcsec
   const recipeText = JSON.stringify(recipe)
   const resultText = JSON.stringify(result)
   const twin = await trx
@@ -101,8 +105,11 @@ export async function insertAnalysis(trx: Transaction<Database>, access: Project
       recipe: recipeText,
       result: resultText,
       wormPeriodSeconds: worm?.periodSeconds.value ?? null,
-      wormAmplitudeArcsec: worm?.harmonics.find(({ order }) => order === 1)?.amplitudeArcsec.value ?? null,
+      wormPeriodStderrSeconds: worm?.periodSeconds.stderr ?? null,
+      wormAmplitudeArcsec: fundamental?.value ?? null,
+      wormAmplitudeStderrArcsec: fundamental?.stderr ?? null,
       peakToPeakArcsec: worm?.peakToPeakArcsec.value ?? null,
+      peakToPeakStderrArcsec: worm?.peakToPeakArcsec.stderr ?? null,
       createdBy: access.userId,
       updatedBy: access.userId,
     })

@@ -1,4 +1,4 @@
-import type { Kysely } from 'kysely'
+import { sql, type Kysely } from 'kysely'
 import type { z } from 'zod'
 import type { TableResult } from '@/lib/analysis/types'
 import type { newCorrectionSchema } from '@/lib/schemas/api'
@@ -24,7 +24,7 @@ function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
       'corrections.settings',
       'corrections.senseBasis',
       'corrections.createdAt',
-      'users.displayName as createdBy',
+      sql<string>`coalesce(corrections.author_name, users.display_name)`.as('createdBy'),
     ])
 }
 

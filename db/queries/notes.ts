@@ -1,4 +1,5 @@
 import { sql, type Kysely } from 'kysely'
+import { jsonArrayFrom } from 'kysely/helpers/postgres'
 import type { z } from 'zod'
 import type { newNoteSchema } from '@/lib/schemas/api'
 import type { Database } from '../schema'
@@ -34,8 +35,10 @@ function notesOf(db: Kysely<Database>, access: ProjectAccess) {
     .selectFrom('notes')
     .innerJoin('analyses', 'analyses.id', 'notes.analysisId')
     .innerJoin('users', 'users.id', 'notes.authorId')
+    .innerJoin('users as updaters', 'updaters.id', 'notes.updatedBy')
+    .leftJoin('users as resolvers', 'resolvers.id', 'notes.resolvedBy')
     .where('analyses.projectId', '=', access.projectId)
-    .select([
+    .select((eb) => [
       'notes.id',
       'notes.version',
       'notes.analysisId',
@@ -43,9 +46,21 @@ function notesOf(db: Kysely<Database>, access: ProjectAccess) {
       'notes.anchorValue',
       'notes.text',
       'notes.authorId',
-      'users.displayName as authorName',
+      sql<string>`coalesce(notes.author_name, users.display_name)`.as('authorName'),
       'notes.createdAt',
       'notes.updatedAt',
+      'updaters.displayName as updatedByName',
+      'notes.resolvedAt',
+      'resolvers.displayName as resolvedByName',
+      jsonArrayFrom(
+        eb
+          .selectFrom('noteMentions')
+          .innerJoin('users as named', 'named.id', 'noteMentions.userId')
+          .select(['named.id as userId', 'named.displayName'])
+          .whereRef('noteMentions.noteId', '=', 'notes.id')
+          .orderBy('named.displayName')
+          .orderBy('named.id'),
+      ).as('mentions'),
     ])
 }
 

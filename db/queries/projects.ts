@@ -33,6 +33,7 @@ function projectsOfMember(db: Kysely<Database>, userId: string) {
       'projects.name',
       'memberships.role',
       'projects.lastImport',
+      'projects.archivedAt',
       'projects.createdAt',
       'projects.updatedAt',
       'train.id as driveTrainId',

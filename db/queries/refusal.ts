@@ -12,6 +12,7 @@ export type RefusalReason =
   | { kind: 'forbidden' }
   | { kind: 'changed'; change: Change; current: unknown }
   | { kind: 'in-use' }
+  | { kind: 'archived' }
 
 /** Thrown by queries; lib/server/errors.ts turns it into an answer. */
 export class Refusal extends Error {

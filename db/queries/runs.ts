@@ -30,7 +30,7 @@ function runsOf(db: Kysely<Database>, access: ProjectAccess) {
       'runs.samplesSha256',
       'runs.createdAt',
       'runs.updatedAt',
-      'users.displayName as createdBy',
+      sql<string>`coalesce(runs.author_name, users.display_name)`.as('createdBy'),
       sql<number>`(select count(*)::int from analyses where run_id = runs.id)`.as('analysisCount'),
     ])
 }

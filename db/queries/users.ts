@@ -1,7 +1,6 @@
 import { sql, type Kysely } from 'kysely'
+import { DEFAULT_PREFERENCES, type Preferences } from '@/lib/schemas/preferences'
 import type { Database } from '../schema'
-
-const PUBLIC_COLUMNS = ['id', 'displayName', 'email'] as const
 
 export interface NewUser {
   displayName: string
@@ -9,21 +8,32 @@ export interface NewUser {
   passwordHash: string
 }
 
-/** The new account, or undefined when the address belongs to one already (in whatever case). */
+/** The new account, whose address has been proven, or undefined when the address belongs to one already (in whatever case). */
 export function insertUser(db: Kysely<Database>, user: NewUser) {
   return db
     .insertInto('users')
-    .values(user)
+    .values({ ...user, emailVerifiedAt: sql<Date>`now()` })
     .onConflict((conflict) => conflict.expression(sql`lower(email)`).doNothing())
-    .returning(PUBLIC_COLUMNS)
+    .returning(['id', 'displayName', sql<string>`email`.as('email')])
     .executeTakeFirst()
 }
 
-/** With the password's hash: for signing in only, never on the way to a browser. */
-export function findUserForSignIn(db: Kysely<Database>, email: string) {
-  return db
+/** With the password's hash: for signing in only, never on the way to a browser. A deleted account has no address. */
+export async function findUserForSignIn(db: Kysely<Database>, email: string) {
+  const row = await db
     .selectFrom('users')
-    .select([...PUBLIC_COLUMNS, 'passwordHash'])
+    .select(['id', 'displayName', 'email', 'passwordHash'])
     .where(sql<string>`lower(email)`, '=', email.toLowerCase())
     .executeTakeFirst()
+  if (!row?.email || !row.passwordHash) return undefined
+  return { ...row, email: row.email, passwordHash: row.passwordHash }
+}
+
+export async function findPreferences(db: Kysely<Database>, userId: string): Promise<Preferences> {
+  const row = await db
+    .selectFrom('users')
+    .select(['theme', 'swingMeasure', 'displacementUnit', 'timeZone'])
+    .where('id', '=', userId)
+    .executeTakeFirst()
+  return row ?? DEFAULT_PREFERENCES
 }

@@ -19,7 +19,12 @@ export interface AnalysesTable {
   /** Taken out of the result for lists; null where it holds no worm figure. */
   wormPeriodSeconds: number | null
   wormAmplitudeArcsec: number | null
+  wormPeriodStderrSeconds: number | null
+  wormAmplitudeStderrArcsec: number | null
   peakToPeakArcsec: number | null
+  peakToPeakStderrArcsec: number | null
+  /** Who made it where it was brought in from, if not here. */
+  authorName: string | null
   createdAt: Generated<Date>
   createdBy: string
   updatedAt: Generated<Date>
@@ -35,9 +40,18 @@ export interface NotesTable {
   anchorValue: number | null
   text: string
   authorId: string
+  /** Who wrote it where it was brought in from, if not here. */
+  authorName: string | null
   createdAt: Generated<Date>
   updatedAt: Generated<Date>
   updatedBy: string
+  resolvedAt: Date | null
+  resolvedBy: string | null
+}
+
+export interface NoteMentionsTable {
+  noteId: string
+  userId: string
 }
 
 export interface CorrectionsTable {
@@ -52,4 +66,30 @@ export interface CorrectionsTable {
   senseBasis: 'proven' | 'assumed'
   createdAt: Generated<Date>
   createdBy: string
+  authorName: string | null
+}
+
+/** A read-only report of one analysis for whoever holds the link. */
+export interface ShareLinksTable {
+  id: Generated<string>
+  projectId: string
+  analysisId: string
+  /** 256 random bits, base64url. Readable: the table lies beside the analysis that it opens. */
+  token: string
+  /** What its maker tells the reader first. */
+  preface: string | null
+  createdAt: Generated<Date>
+  createdBy: string
+  /** Null: until it is revoked. */
+  expiresAt: Date | null
+  revokedAt: Date | null
+  revokedBy: string | null
+  openedCount: Generated<number>
+  lastOpenedAt: Date | null
+}
+
+/** The notes that a share link shows. */
+export interface ShareLinkNotesTable {
+  shareLinkId: string
+  noteId: string
 }

@@ -15,6 +15,9 @@ export interface ProjectsTable {
   createdBy: string
   updatedAt: Generated<Date>
   updatedBy: string
+  /** Since when nothing in it may be changed any more; null: it is in use. */
+  archivedAt: Date | null
+  archivedBy: string | null
 }
 
 export interface LastImport {
@@ -29,6 +32,26 @@ export interface MembershipsTable {
   joinedAt: Generated<Date>
 }
 
+/** A pending one has neither been accepted nor revoked; past `expiresAt` it opens nothing. */
+export interface InvitationsTable {
+  id: Generated<string>
+  projectId: string
+  email: string
+  role: Role
+  /** SHA-256 of the token in the mail; made anew each time it is sent. */
+  tokenSha256: string | null
+  invitedBy: string
+  createdAt: Generated<Date>
+  expiresAt: Date
+  sentAt: Date | null
+  /** Why the mail has not gone out yet. */
+  sendFault: string | null
+  acceptedAt: Date | null
+  acceptedBy: string | null
+  revokedAt: Date | null
+  revokedBy: string | null
+}
+
 /** One version of a project's drive train; the highest number is the present one. */
 export interface DriveTrainsTable {
   id: Generated<string>
@@ -40,6 +63,7 @@ export interface DriveTrainsTable {
   stages: Json<GearStage[]>
   createdAt: Generated<Date>
   createdBy: string
+  authorName: string | null
 }
 
 export interface OpticsPresetsTable {

@@ -21,6 +21,8 @@ export interface RunsTable {
   facts: Json<RunFacts>
   rowCount: number | null
   samplesSha256: string | null
+  /** Who brought it in where it comes from, if not here. */
+  authorName: string | null
   createdAt: Generated<Date>
   createdBy: string
   updatedAt: Generated<Date>

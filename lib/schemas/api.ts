@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { importSettingsSchema } from './import'
+import { preferencesSchema } from './preferences'
 import { conversionSchema, driveTrainSchema, recipeSchema, tableSettingsSchema } from './recipe'
 import { runFactsSchema } from './run-facts'
 
@@ -49,7 +50,7 @@ export const signInSchema = z.object({
 
 /** GET /api/me → 200; user is null without a session. */
 export const meSchema = z.object({
-  user: z.object({ id, displayName: z.string(), email: z.string() }).nullable(),
+  user: z.object({ id, displayName: z.string(), email: z.string(), preferences: preferencesSchema }).nullable(),
 })
 export type Me = z.infer<typeof meSchema>
 
@@ -69,6 +70,8 @@ export const projectSchema = z.object({
   runCount: z.number().int(),
   analysisCount: z.number().int(),
   memberCount: z.number().int(),
+  /** Since when nothing in it can be changed; null: it is in use. */
+  archivedAt: instant.nullable(),
   createdAt: instant,
   updatedAt: instant,
 })
@@ -160,8 +163,11 @@ export const analysisSummarySchema = z.object({
   samplesSha256: z.string(),
   /** For lists: null where there is no worm figure. */
   wormPeriodSeconds: z.number().nullable(),
+  wormPeriodStderrSeconds: z.number().nullable(),
   wormAmplitudeArcsec: z.number().nullable(),
+  wormAmplitudeStderrArcsec: z.number().nullable(),
   peakToPeakArcsec: z.number().nullable(),
+  peakToPeakStderrArcsec: z.number().nullable(),
   createdAt: instant,
   createdBy: z.string(),
   updatedAt: instant,
@@ -177,7 +183,10 @@ export const analysisChangeSchema = z.object({ version, name })
 
 // Notes ---------------------------------------------------------------------------------------------------------------
 
-/** GET, POST …/analyses/[analysisId]/notes (POST: editor); PATCH, DELETE …/notes/[noteId] (its author or an owner). */
+/**
+ * GET, POST …/analyses/[analysisId]/notes (POST: editor); PATCH, DELETE …/notes/[noteId] (its author or an owner);
+ * PUT …/notes/[noteId]/resolution (editor): anyone who may edit may settle a note or take it up again.
+ */
 export const noteAnchorSchema = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('whole') }),
   z.object({ kind: z.literal('time'), timeSeconds: z.number().finite() }),
@@ -185,19 +194,29 @@ export const noteAnchorSchema = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('worm-angle'), angleDegrees: z.number().min(0).lt(360) }),
 ])
 const noteText = z.string().trim().min(1, { error: 'Write something first' }).max(4000)
-export const newNoteSchema = z.object({ anchor: noteAnchorSchema, text: noteText })
-export const noteSchema = newNoteSchema.extend({
+/** Members whom the note names; each of them gets a mail the first time. Others are refused. */
+const mentions = z.array(id).max(20, { error: 'At most 20 people can be named in one note' })
+export const newNoteSchema = z.object({ anchor: noteAnchorSchema, text: noteText, mentions: mentions.default([]) })
+export const noteSchema = z.object({
   id,
   version,
   analysisId: id,
+  anchor: noteAnchorSchema,
+  text: z.string(),
+  mentions: z.array(z.object({ userId: id, displayName: z.string() })),
   authorId: id,
   authorName: z.string(),
   createdAt: instant,
+  /** Later than createdAt once the text was changed, and by whom. */
   updatedAt: instant,
+  updatedByName: z.string(),
+  resolvedAt: instant.nullable(),
+  resolvedByName: z.string().nullable(),
 })
 export type Note = z.infer<typeof noteSchema>
 export const noteListSchema = z.object({ notes: z.array(noteSchema) })
 export const noteChangeSchema = newNoteSchema.extend({ version })
+export const noteResolutionSchema = z.object({ version, isResolved: z.boolean() })
 
 // Correction tables ---------------------------------------------------------------------------------------------------
 

@@ -1,15 +1,23 @@
 import 'server-only'
-import { createHash, randomBytes } from 'node:crypto'
 import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql'
 import { Lucia, TimeSpan } from 'lucia'
 import { databasePool } from '@/db'
+import { newToken, sha256Of } from '@/db/tokens'
+import type { DisplacementUnit, Preferences, SwingMeasure, ThemeName } from '@/lib/schemas/preferences'
 import { environment } from './environment'
 import { notSignedIn } from './errors'
 
 declare module 'lucia' {
   interface Register {
     Lucia: ReturnType<typeof createLucia>
-    DatabaseUserAttributes: { display_name: string; email: string }
+    DatabaseUserAttributes: {
+      display_name: string
+      email: string
+      theme: ThemeName | null
+      swing_measure: SwingMeasure
+      displacement_unit: DisplacementUnit
+      time_zone: string | null
+    }
     DatabaseSessionAttributes: { user_agent: string | null }
   }
 }
@@ -18,6 +26,7 @@ export interface SignedInUser {
   id: string
   displayName: string
   email: string
+  preferences: Preferences
 }
 
 export const SESSION_COOKIE = 'turnwright_session'
@@ -35,7 +44,16 @@ function createLucia() {
       expires: false,
       attributes: { sameSite: 'lax', path: '/', secure: environment().baseOrigin?.startsWith('https:') ?? false },
     },
-    getUserAttributes: ({ display_name, email }) => ({ displayName: display_name, email }),
+    getUserAttributes: ({ display_name, email, theme, swing_measure, displacement_unit, time_zone }) => ({
+      displayName: display_name,
+      email,
+      preferences: {
+        theme,
+        swingMeasure: swing_measure,
+        displacementUnit: displacement_unit,
+        timeZone: time_zone,
+      },
+    }),
   })
 }
 
@@ -46,16 +64,11 @@ function lucia() {
   return cached
 }
 
-/** What the table keeps of a token: its SHA-256, so that a copy of the table opens no session. */
-function sessionIdOf(token: string): string {
-  return createHash('sha256').update(token).digest('hex')
-}
-
 /** The person whose session this token opens, or null. */
 export async function validateToken(token: string | null | undefined): Promise<SignedInUser | null> {
   if (!token) return null
-  const { user } = await lucia().validateSession(sessionIdOf(token))
-  return user && { id: user.id, displayName: user.displayName, email: user.email }
+  const { user } = await lucia().validateSession(sha256Of(token))
+  return user && { id: user.id, displayName: user.displayName, email: user.email, preferences: user.preferences }
 }
 
 function tokenOf(request: Request): string | null {
@@ -75,16 +88,16 @@ export async function requireUser(request: Request): Promise<SignedInUser> {
 
 /** Opens a session, and sweeps out the expired ones; the answer is the Set-Cookie header that carries its token. */
 export async function openSession(request: Request, userId: string): Promise<string> {
-  const token = randomBytes(32).toString('base64url')
+  const token = newToken()
   await lucia().deleteExpiredSessions()
   const userAgent = request.headers.get('user-agent')?.slice(0, 300) ?? null
-  await lucia().createSession(userId, { user_agent: userAgent }, { sessionId: sessionIdOf(token) })
+  await lucia().createSession(userId, { user_agent: userAgent }, { sessionId: sha256Of(token) })
   return lucia().createSessionCookie(token).serialize()
 }
 
 /** Ends the request's session, if it has one; the answer is the Set-Cookie header that removes the cookie. */
 export async function closeSession(request: Request): Promise<string> {
   const token = tokenOf(request)
-  if (token) await lucia().invalidateSession(sessionIdOf(token))
+  if (token) await lucia().invalidateSession(sha256Of(token))
   return lucia().createBlankSessionCookie().serialize()
 }

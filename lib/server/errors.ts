@@ -28,6 +28,11 @@ export const STATUS = {
   'upload-stalled': 408,
   'changed-meanwhile': 409,
   'in-use': 409,
+  archived: 409,
+  'last-owner': 409,
+  'already-member': 409,
+  'already-invited': 409,
+  'link-ended': 410,
   'run-not-ready': 409,
   'correction-was-on': 409,
   'upload-incomplete': 400,
@@ -93,7 +98,8 @@ export function toAppError(error: unknown): AppError | undefined {
     case 'forbidden':
       return new AppError('forbidden', message)
     case 'in-use':
-      return new AppError('in-use', message)
+    case 'archived':
+      return new AppError(reason.kind, message)
     case 'changed': {
       const { change, current } = reason
       return new AppError('changed-meanwhile', message, {

@@ -3,8 +3,9 @@ import type { z } from 'zod'
 import { database } from '@/db'
 import { insertAccountEvent } from '@/db/queries/audit'
 import { deleteExpiredLimits, forgetAttempts, returnAttempt } from '@/db/queries/rate-limits'
-import { findUserForSignIn, insertUser } from '@/db/queries/users'
+import { findPreferences, findUserForSignIn, insertUser } from '@/db/queries/users'
 import type { signInSchema, signUpSchema } from '@/lib/schemas/api'
+import { DEFAULT_PREFERENCES } from '@/lib/schemas/preferences'
 import type { SignedInUser } from './auth'
 import { AppError } from './errors'
 import { hashPassword, isPasswordRight } from './passwords'
@@ -24,7 +25,7 @@ export async function signUp(request: Request, form: z.output<typeof signUpSchem
         throw new AppError('not-valid', taken, { fields: { email: taken } })
       }
       await insertAccountEvent(trx, user.id, { action: 'account.sign-up', subject: email })
-      return user
+      return { ...user, preferences: DEFAULT_PREFERENCES }
     })
 }
 
@@ -45,5 +46,6 @@ export async function signIn(request: Request, form: z.output<typeof signInSchem
   await returnAttempt(database(), ofAddress.key)
   await deleteExpiredLimits(database())
   await insertAccountEvent(database(), found.id, { action: 'account.sign-in', subject: found.email })
-  return { id: found.id, displayName: found.displayName, email: found.email }
+  const preferences = await findPreferences(database(), found.id)
+  return { id: found.id, displayName: found.displayName, email: found.email, preferences }
 }

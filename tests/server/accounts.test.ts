@@ -5,6 +5,7 @@ import { POST as signUp } from '@/app/api/auth/sign-up/route'
 import { GET as health } from '@/app/api/health/route'
 import { GET as me } from '@/app/api/me/route'
 import { POST as createProject } from '@/app/api/projects/route'
+import { DEFAULT_PREFERENCES } from '@/lib/schemas/preferences'
 import { openTestDatabase } from '../support/test-database'
 import { DRIVE_TRAIN } from '../support/test-project'
 import { call, cookieOf, PASSWORD, signUpPerson } from '../support/test-server'
@@ -24,7 +25,12 @@ test('signing up opens a session in a cookie that scripts and other sites do not
   const response = await post(signUp, person)
   expect(response.status).toBe(201)
   expect(await response.json()).toEqual({
-    user: { id: expect.any(String), displayName: person.displayName, email: person.email },
+    user: {
+      id: expect.any(String),
+      displayName: person.displayName,
+      email: person.email,
+      preferences: DEFAULT_PREFERENCES,
+    },
   })
   const setCookie = response.headers.get('set-cookie') ?? ''
   expect(setCookie).toMatch(/HttpOnly/i)

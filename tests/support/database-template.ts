@@ -2,7 +2,7 @@ import pg from 'pg'
 import type { TestProject } from 'vitest/node'
 import { createDatabase } from '@/db/create-db'
 import { startThrowawayCluster } from '@/db/local/throwaway-cluster.mjs'
-import { migrateToLatest } from '@/db/migrate'
+import { migrateToLatest, prepareQueue } from '@/db/migrate'
 
 declare module 'vitest' {
   export interface ProvidedContext {
@@ -37,6 +37,7 @@ export default async function setup(project: TestProject) {
     const { db } = createDatabase({ connectionString: urlOfDatabase(cluster.url, template), poolSize: 1 })
     try {
       await migrateToLatest(db)
+      await prepareQueue(urlOfDatabase(cluster.url, template))
     } finally {
       await db.destroy()
     }

@@ -312,6 +312,10 @@ export function exampleNotes(): Note[] {
     authorName: 'Mira',
     createdAt: '2031-11-15T19:20:00.000Z',
     updatedAt: '2031-11-15T19:20:00.000Z',
+    updatedByName: 'Mira',
+    mentions: [],
+    resolvedAt: null,
+    resolvedByName: null,
   }
   return [
     {

@@ -1,6 +1,8 @@
 import { expect } from 'vitest'
-import { SESSION_COOKIE } from '@/lib/server/auth'
-import { POST as signUpHandler } from '@/app/api/auth/sign-up/route'
+import { database } from '@/db'
+import { insertUser } from '@/db/queries/users'
+import { openSession, SESSION_COOKIE } from '@/lib/server/auth'
+import { hashPassword } from '@/lib/server/passwords'
 
 // Vitest sets it to '/' for its own purposes; the tests stand for a server without a fixed address.
 process.env.BASE_URL = ''
@@ -57,6 +59,7 @@ export interface Person extends Asker {
   id: string
   cookie: string
   displayName: string
+  email: string
 }
 
 let counter = 0
@@ -65,9 +68,8 @@ let counter = 0
 export async function signUpPerson(displayName: string): Promise<Person> {
   counter += 1
   const email = `${displayName.toLowerCase().replaceAll(' ', '.')}.${counter}@example.org`
-  const body = { displayName, email, password: PASSWORD }
-  const response = await call(signUpHandler, '/api/auth/sign-up', {}, { method: 'POST', body })
-  expect(response.status).toBe(201)
-  const { user } = await response.json()
-  return { id: user.id, cookie: cookieOf(response), displayName }
+  const user = await insertUser(database(), { displayName, email, passwordHash: await hashPassword(PASSWORD) })
+  if (!user) throw new Error(`There is an account for ${email} already`)
+  const [cookie] = (await openSession(makeRequest('/'), user.id)).split(';')
+  return { id: user.id, cookie, displayName, email }
 }

@@ -1,0 +1,39 @@
+import { z } from 'zod'
+
+export const themeNameSchema = z.enum(['day', 'dusk', 'night'])
+export type ThemeName = z.infer<typeof themeNameSchema>
+
+/** How the size of a swing is told: from its middle, or from one end to the other. */
+export const swingMeasureSchema = z.enum(['amplitude', 'peak-to-peak'])
+export type SwingMeasure = z.infer<typeof swingMeasureSchema>
+
+/** Pixels only where the run's image scale is known; arc seconds of the axis everywhere else. */
+export const displacementUnitSchema = z.enum(['arcsec', 'px'])
+export type DisplacementUnit = z.infer<typeof displacementUnitSchema>
+
+export function isTimeZone(name: string): boolean {
+  try {
+    new Intl.DateTimeFormat('en', { timeZone: name })
+    return true
+  } catch {
+    return false
+  }
+}
+
+/** How one person wants to see things; what is computed and saved never depends on it. */
+export const preferencesSchema = z.object({
+  /** Null: as the system is set. */
+  theme: themeNameSchema.nullable(),
+  swingMeasure: swingMeasureSchema,
+  displacementUnit: displacementUnitSchema,
+  /** IANA name; null: the browser's own. */
+  timeZone: z.string().min(1).max(64).refine(isTimeZone, { error: 'There is no time zone of this name' }).nullable(),
+})
+export type Preferences = z.infer<typeof preferencesSchema>
+
+export const DEFAULT_PREFERENCES: Preferences = {
+  theme: null,
+  swingMeasure: 'amplitude',
+  displacementUnit: 'arcsec',
+  timeZone: null,
+}
