@@ -13,6 +13,7 @@ import type {
   InvitationsTable,
   MembershipsTable,
   OpticsPresetsTable,
+  PastInvitationLinksTable,
   ProjectsTable,
 } from './tables/projects'
 import type { RunColumnsTable, RunFileChunksTable, RunsTable } from './tables/runs'
@@ -27,6 +28,7 @@ export interface Database {
   projects: ProjectsTable
   memberships: MembershipsTable
   invitations: InvitationsTable
+  pastInvitationLinks: PastInvitationLinksTable
   driveTrains: DriveTrainsTable
   opticsPresets: OpticsPresetsTable
   auditEvents: AuditEventsTable

@@ -7,17 +7,12 @@ import type { DataColumn } from '@/components/ui/data-table-model'
 import { formatDay } from '@/lib/client/dates'
 import { useMembers, useProject, type Member } from '@/lib/client/project-data'
 import { capitalised, counted } from '@/lib/findings/words'
-
-const mayDo: Record<Member['role'], string> = {
-  owner: 'do everything, and decide who else is here',
-  editor: 'bring in runs, analyse, write notes, make correction tables',
-  viewer: 'read and download',
-}
+import { aRole, mayDo } from '@/lib/schemas/rights'
 
 const columns: readonly DataColumn<Member>[] = [
   { id: 'name', header: 'Name', value: ({ displayName }) => displayName },
   { id: 'role', header: 'Role', value: ({ role }) => role },
-  { id: 'may', header: 'May', isSecondary: true, value: ({ role }) => mayDo[role] },
+  { id: 'may', header: 'May', isSecondary: true, value: ({ role }) => mayDo(role) },
   {
     id: 'since',
     header: 'Since',
@@ -40,17 +35,11 @@ export function PeopleScreen({ projectId }: { projectId: string }) {
                 ? 'One person works on this mount'
                 : `${capitalised(counted(members.length, 'person', 'people'))} share this mount`
             }
-            lead={
-              project.data ? `You are ${article(project.data.role)} and may ${mayDo[project.data.role]}.` : undefined
-            }
+            lead={project.data ? `You are ${aRole(project.data.role)} and may ${mayDo(project.data.role)}.` : undefined}
           />
           <DataTable caption="people" columns={columns} rows={members} rowId={({ userId }) => userId} />
         </>
       )}
     </DataState>
   )
-}
-
-function article(role: Member['role']): string {
-  return role === 'viewer' ? 'a viewer' : `an ${role}`
 }

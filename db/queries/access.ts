@@ -1,20 +1,10 @@
 import type { Kysely } from 'kysely'
 import type { Role } from '@/lib/schemas/api'
+import { RIGHTS, type Right } from '@/lib/schemas/rights'
 import type { Database } from '../schema'
 import { Refusal, unknownThing } from './refusal'
 
-/** What each role may do in a project; the one place that says so. */
-export const RIGHTS = {
-  viewer: { read: true, edit: false, manage: false },
-  editor: { read: true, edit: true, manage: false },
-  owner: { read: true, edit: true, manage: true },
-} as const satisfies Record<Role, Record<string, boolean>>
-
-/**
- * 'read': see everything, download. 'edit': runs, analyses, notes, share links, correction tables, optics, the drive train;
- * nobody while the project is archived. 'manage': the project itself, its people, and other people's notes.
- */
-export type Right = keyof (typeof RIGHTS)[Role]
+export type { Right } from '@/lib/schemas/rights'
 
 declare const granted: unique symbol
 

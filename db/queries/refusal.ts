@@ -5,14 +5,18 @@ export interface Change {
 
 /**
  * Why the data layer refuses. 'unknown' also stands for what the asker may not know to exist; 'changed' carries who
- * changed the thing, when, and the thing as it is now.
+ * changed the thing, when, and the thing as it is now; `current` of 'already-invited' is the invitation that waits.
  */
 export type RefusalReason =
   | { kind: 'unknown' }
   | { kind: 'forbidden' }
-  | { kind: 'changed'; change: Change; current: unknown }
+  | { kind: 'changed'; change: Change | null; current: unknown }
   | { kind: 'in-use' }
   | { kind: 'archived' }
+  | { kind: 'last-owner' }
+  | { kind: 'already-member' }
+  | { kind: 'already-invited'; current: unknown }
+  | { kind: 'link-ended' }
 
 /** Thrown by queries; lib/server/errors.ts turns it into an answer. */
 export class Refusal extends Error {

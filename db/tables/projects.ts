@@ -52,6 +52,17 @@ export interface InvitationsTable {
   revokedBy: string | null
 }
 
+/**
+ * Links that a newer mail has replaced, or whose invitation went with its project; kept by a trigger, so that each such link
+ * can say what became of it.
+ */
+export interface PastInvitationLinksTable {
+  tokenSha256: string
+  /** No longer there once its project was deleted. */
+  invitationId: string
+  endedAt: Generated<Date>
+}
+
 /** One version of a project's drive train; the highest number is the present one. */
 export interface DriveTrainsTable {
   id: Generated<string>

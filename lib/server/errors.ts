@@ -99,15 +99,20 @@ export function toAppError(error: unknown): AppError | undefined {
       return new AppError('forbidden', message)
     case 'in-use':
     case 'archived':
+    case 'last-owner':
+    case 'already-member':
+    case 'link-ended':
       return new AppError(reason.kind, message)
     case 'changed': {
       const { change, current } = reason
       return new AppError('changed-meanwhile', message, {
-        changedBy: change.by,
-        changedAt: change.at.toISOString(),
+        changedBy: change?.by,
+        changedAt: change?.at.toISOString(),
         current,
       })
     }
+    case 'already-invited':
+      return new AppError('already-invited', message, { current: reason.current })
   }
 }
 

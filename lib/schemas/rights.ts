@@ -1,0 +1,60 @@
+import type { Role } from './api'
+
+/** What each role may do in a project; the one place that says so, to the server and in words to people. */
+export const RIGHTS = {
+  viewer: { read: true, edit: false, manage: false },
+  editor: { read: true, edit: true, manage: false },
+  owner: { read: true, edit: true, manage: true },
+} as const satisfies Record<Role, Record<string, boolean>>
+
+/**
+ * 'read': see everything, download. 'edit': runs, analyses, notes, share links, correction tables, optics, the drive train;
+ * nobody while the project is archived. 'manage': the project itself, its people, and other people's notes.
+ */
+export type Right = keyof (typeof RIGHTS)[Role]
+
+const RIGHT_NAMES = ['read', 'edit', 'manage'] as const satisfies readonly Right[]
+
+/** Each right in words that follow “may”. */
+const RIGHT_WORDS: Record<Right, string> = {
+  read: 'read and download everything',
+  edit: 'bring in runs, analyse, write notes, share analyses and make correction tables',
+  manage: 'decide who is here, and rename, archive or delete the project',
+}
+
+function rightsOf(role: Role): Right[] {
+  return RIGHT_NAMES.filter((right) => RIGHTS[role][right])
+}
+
+/** What a role may do, in words that follow “may”. */
+export function mayDo(role: Role): string {
+  return rightsOf(role)
+    .map((right) => RIGHT_WORDS[right])
+    .join('; ')
+}
+
+export interface RightsChange {
+  /** What the person may do from now on, in words that follow “may”; null: nothing new. */
+  gained: string | null
+  /** What the person may do no longer. */
+  lost: string | null
+}
+
+export function rightsChange(before: Role, after: Role): RightsChange {
+  const words = (rights: Right[]) => rights.map((right) => RIGHT_WORDS[right]).join('; ') || null
+  const [had, has] = [rightsOf(before), rightsOf(after)]
+  return {
+    gained: words(has.filter((right) => !had.includes(right))),
+    lost: words(had.filter((right) => !has.includes(right))),
+  }
+}
+
+/** Whether the first role may do more than the second. */
+export function isHigherRole(role: Role, than: Role): boolean {
+  return rightsOf(role).length > rightsOf(than).length
+}
+
+/** “an editor”, “a viewer”. */
+export function aRole(role: Role): string {
+  return role === 'viewer' ? 'a viewer' : `an ${role}`
+}
