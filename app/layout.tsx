@@ -3,7 +3,9 @@ import { cookies, headers } from 'next/headers'
 import type { ReactNode } from 'react'
 import { Providers } from '@/components/shell/providers'
 import { SiteHeader } from '@/components/shell/site-header'
+import { DisplayProvider } from '@/lib/client/display'
 import { isTheme, themeCookieName } from '@/lib/client/theme-names'
+import { DEFAULT_PREFERENCES } from '@/lib/schemas/preferences'
 import { currentUser } from '@/lib/server/current-user'
 import './globals.css'
 
@@ -38,10 +40,12 @@ export default async function RootLayout({ children }: { children: ReactNode }) 
           Skip to the page
         </a>
         <Providers>
-          <SiteHeader user={user} serverTheme={theme} />
-          <main id="main" tabIndex={-1} className="outline-none">
-            {children}
-          </main>
+          <DisplayProvider preferences={user?.preferences ?? DEFAULT_PREFERENCES}>
+            <SiteHeader user={user} serverTheme={theme} />
+            <main id="main" tabIndex={-1} className="outline-none">
+              {children}
+            </main>
+          </DisplayProvider>
         </Providers>
       </body>
     </html>
