@@ -13,6 +13,10 @@ const LIMITS = {
   'sign-in account': { most: 10, windowSeconds: QUARTER_HOUR },
   'sign-in address': { most: 50, windowSeconds: QUARTER_HOUR },
   'sign-up address': { most: 20, windowSeconds: HOUR },
+  'invite account': { most: 40, windowSeconds: HOUR },
+  'invite address': { most: 80, windowSeconds: HOUR },
+  'invite project': { most: 60, windowSeconds: HOUR },
+  'invitation link address': { most: 30, windowSeconds: QUARTER_HOUR },
   'upload account': { most: 300, windowSeconds: HOUR },
   'upload address': { most: 600, windowSeconds: HOUR },
 } as const

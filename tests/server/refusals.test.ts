@@ -3,6 +3,10 @@ import * as projects from '@/app/api/projects/route'
 import * as project from '@/app/api/projects/[projectId]/route'
 import * as driveTrain from '@/app/api/projects/[projectId]/drive-train/route'
 import * as members from '@/app/api/projects/[projectId]/members/route'
+import * as member from '@/app/api/projects/[projectId]/members/[userId]/route'
+import * as invitations from '@/app/api/projects/[projectId]/invitations/route'
+import * as invitation from '@/app/api/projects/[projectId]/invitations/[invitationId]/route'
+import * as resend from '@/app/api/projects/[projectId]/invitations/[invitationId]/resend/route'
 import * as auditEvents from '@/app/api/projects/[projectId]/audit-events/route'
 import * as presets from '@/app/api/projects/[projectId]/optics-presets/route'
 import * as preset from '@/app/api/projects/[projectId]/optics-presets/[presetId]/route'
@@ -37,6 +41,7 @@ import {
   type Role,
   type TestProject,
 } from '../support/test-project'
+import { insertPendingInvitation, newAddress } from '../support/test-invitation'
 import { call, signUpPerson } from '../support/test-server'
 
 const database = openTestDatabase()
@@ -56,6 +61,9 @@ interface Fresh {
   analysisId: () => Promise<string>
   noteId: () => Promise<string>
   correctionId: () => Promise<string>
+  /** An editor beside the shared ones. */
+  userId: () => Promise<string>
+  invitationId: () => Promise<string>
 }
 
 let fresh: Fresh
@@ -71,6 +79,12 @@ beforeAll(async () => {
     presetId: async () => (await makePreset(owner)).id,
     noteId: async () => (await makeNote(owner, await analysisId())).id,
     correctionId: async () => (await makeTable(owner, await analysisId())).id,
+    userId: async () => {
+      const { id } = await signUpPerson('Emil Editor')
+      await database.db.insertInto('memberships').values({ projectId: shared.id, userId: id, role: 'editor' }).execute()
+      return id
+    },
+    invitationId: async () => (await insertPendingInvitation(database.db, shared)).id,
   }
   ids = {}
   for (const [name, make] of Object.entries(fresh)) ids[name] = await make()
@@ -109,6 +123,31 @@ const cases: [string, Case][] = [
     },
   ],
   ['GET members', { method: 'GET', module: members, may: READ, status: 200 }],
+  [
+    'PATCH members/…',
+    {
+      method: 'PATCH',
+      module: member,
+      may: MANAGE,
+      status: 200,
+      fresh: 'userId',
+      body: () => ({ from: 'editor', role: 'viewer' }),
+    },
+  ],
+  ['DELETE members/… (somebody else)', { method: 'DELETE', module: member, may: MANAGE, status: 204, fresh: 'userId' }],
+  ['GET invitations', { method: 'GET', module: invitations, may: MANAGE, status: 200 }],
+  [
+    'POST invitations',
+    {
+      method: 'POST',
+      module: invitations,
+      may: MANAGE,
+      status: 201,
+      body: () => ({ email: newAddress(), role: 'viewer' }),
+    },
+  ],
+  ['DELETE invitations/…', { method: 'DELETE', module: invitation, may: MANAGE, status: 204, fresh: 'invitationId' }],
+  ['POST invitations/…/resend', { method: 'POST', module: resend, may: MANAGE, status: 200, fresh: 'invitationId' }],
   ['GET audit-events', { method: 'GET', module: auditEvents, may: READ, status: 200 }],
   ['GET optics-presets', { method: 'GET', module: presets, may: READ, status: 200 }],
   ['POST optics-presets', { method: 'POST', module: presets, may: EDIT, status: 201, body: () => OPTICS }],

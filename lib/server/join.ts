@@ -1,0 +1,51 @@
+import 'server-only'
+import type { z } from 'zod'
+import { database } from '@/db'
+import { insertAccountEvent } from '@/db/queries/audit'
+import { acceptInvitation, findInvitationLink, lockInvitation, openInvitation } from '@/db/queries/invitation-links'
+import { returnAttempt } from '@/db/queries/rate-limits'
+import { insertUser } from '@/db/queries/users'
+import { sha256Of } from '@/db/tokens'
+import type { invitationSignUpSchema } from '@/lib/schemas/people'
+import { AppError } from './errors'
+import { hashPassword } from './passwords'
+import { addressLimit, takeAttempt } from './rate-limit'
+
+/** Counts what is tried with tokens before it is looked at; what worked was no guess and is taken back. */
+async function unlessGuessing<T>(request: Request, work: () => Promise<T>): Promise<T> {
+  const limit = addressLimit('invitation link address', request)
+  await takeAttempt(limit)
+  const done = await work()
+  await returnAttempt(database(), limit.key)
+  return done
+}
+
+/** Takes the invitation for a person who is signed in, with whichever address: it is the holder's link. */
+export function joinWithLink(request: Request, userId: string, token: string) {
+  return unlessGuessing(request, () =>
+    database()
+      .transaction()
+      .execute(async (trx) => acceptInvitation(trx, await lockInvitation(trx, sha256Of(token)), userId)),
+  )
+}
+
+/** Makes the account for the invited address, which the mail has proven, and joins. @throws {AppError} in-use */
+export function signUpWithLink(request: Request, form: z.output<typeof invitationSignUpSchema>) {
+  const { token, displayName, password } = form
+  const tokenSha256 = sha256Of(token)
+  return unlessGuessing(request, async () => {
+    openInvitation(await findInvitationLink(database(), tokenSha256))
+    const passwordHash = await hashPassword(password)
+    return database()
+      .transaction()
+      .execute(async (trx) => {
+        const invitation = await lockInvitation(trx, tokenSha256)
+        const user = await insertUser(trx, { displayName, email: invitation.email, passwordHash })
+        if (!user) {
+          throw new AppError('in-use', `${invitation.email} has an account by now. Sign in with it, then join.`)
+        }
+        await insertAccountEvent(trx, user.id, { action: 'account.sign-up', subject: user.email })
+        return { userId: user.id, ...(await acceptInvitation(trx, invitation, user.id)) }
+      })
+  })
+}
