@@ -37,6 +37,9 @@ function contentSecurityPolicy(nonce: string, isDevelopment: boolean): string {
 }
 
 export const config = {
-  // Uploads stay outside: where the proxy matches, a handler gets only the first 10 MB of a body.
-  matcher: ['/((?!api/projects/[^/]+/runs|_next/static|_next/image|icon.svg|favicon.ico|sample-run.csv).*)'],
+  // Uploads stay outside: where the proxy matches, a handler gets only the first 10 MB of a body. The HTML part of a local
+  // mail brings a policy of its own.
+  matcher: [
+    '/((?!api/projects/[^/]+/runs|api/local-mail/[^/]+/html|_next/static|_next/image|icon.svg|favicon.ico|sample-run.csv).*)',
+  ],
 }

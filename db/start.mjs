@@ -3,10 +3,11 @@ import { dirname, join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { checkDatabase } from './local/check-database.mjs'
 import { checkNodeVersion, ensureDependencies } from './local/dependencies.mjs'
+import { startLocalMail, startMailWorker } from './local/mail.mjs'
 import { openOwnCluster } from './local/own-cluster.mjs'
 import { freePortFrom, isPortFree } from './local/ports.mjs'
 import { endChildren, run, SetUpError, whenNpmIsGone } from './local/processes.mjs'
-import { readSettings } from './local/settings.mjs'
+import { linkOriginOf, readSettings } from './local/settings.mjs'
 import { ensureBuild } from './local/sources.mjs'
 import { startWebServer } from './local/web-server.mjs'
 
@@ -53,6 +54,21 @@ async function openDatabase(settings) {
   return { url: cluster.url, isOwn: true }
 }
 
+/** Mail goes to SMTP_URL; without one to a server of our own, whose messages are read on a page. */
+async function openMail(settings, env, port) {
+  const linkOrigin = linkOriginOf(settings, port)
+  if (settings.SMTP_URL && !settings.BASE_URL) {
+    console.warn(
+      `\nSMTP_URL is set and BASE_URL is not: the links in mails lead to ${linkOrigin}, which only this machine can open.`,
+    )
+  }
+  const common = { ...env, LINK_ORIGIN: linkOrigin }
+  if (settings.SMTP_URL) return common
+  const local = await startLocalMail({ root, env: common, folder: join(root, '.data', 'mail') })
+  started.push(local.stop)
+  return { ...common, ...local.env }
+}
+
 function printSignIns() {
   console.log('\nSign-ins of the demo (kept in .data/demo-sign-ins.json):')
   for (const { email, password, role } of JSON.parse(readFileSync(signInsFile, 'utf8'))) {
@@ -69,6 +85,8 @@ async function main() {
   const database = await openDatabase(settings)
   if (isStopping) return
   const env = { ...process.env, ...settings, DATABASE_URL: database.url, NEXT_TELEMETRY_DISABLED: '1' }
+  // The page with the local mails exists only while we run their server ourselves.
+  delete env.LOCAL_MAIL_FOLDER
   for (const name of Object.keys(env)) if (env[name] === undefined) delete env[name]
   await runScript('db/migrate.ts', env)
   if (database.isOwn && !existsSync(signInsFile)) {
@@ -77,10 +95,14 @@ async function main() {
   if (!isDevelopment) await ensureBuild(root, env)
   if (isStopping) return
   const port = await choosePort(settings.PORT)
-  const server = await startWebServer({ root, port, env: { ...env, PORT: String(port) }, isDevelopment })
+  const mailEnv = await openMail(settings, env, port)
+  started.push(startMailWorker({ root, env: mailEnv }).stop)
+  const server = await startWebServer({ root, port, env: { ...mailEnv, PORT: String(port) }, isDevelopment })
   started.push(server.stop)
   await server.whenReady()
-  console.log(`\nTurnwright is at ${settings.BASE_URL ?? `http://localhost:${port}`}   (Ctrl-C stops it)`)
+  const address = linkOriginOf(settings, port)
+  console.log(`\nTurnwright is at ${address}   (Ctrl-C stops it)`)
+  if (!settings.SMTP_URL) console.log(`Its mails stay on this machine; read them at ${address}/local-mail`)
   if (database.isOwn) printSignIns()
   const code = await server.ended
   if (!isStopping) process.exitCode = code || 1

@@ -5,6 +5,7 @@ import { fileURLToPath } from 'node:url'
 import { ensureChromium } from './local/chromium.mjs'
 import { createDatabaseIfMissing } from './local/create-database.mjs'
 import { checkNodeVersion, ensureDependencies } from './local/dependencies.mjs'
+import { startLocalMail, startMailWorker } from './local/mail.mjs'
 import { freePort } from './local/ports.mjs'
 import { endChildren, run, SetUpError, whenNpmIsGone } from './local/processes.mjs'
 import { ensureBuild, nextProgram } from './local/sources.mjs'
@@ -29,6 +30,8 @@ const env = {
   ...process.env,
   DATABASE_URL: '',
   SMTP_URL: '',
+  MAIL_FROM: '',
+  LOCAL_MAIL_FOLDER: '',
   BASE_URL: '',
   TRUST_PROXY: '',
   NEXT_TELEMETRY_DISABLED: '1',
@@ -91,7 +94,13 @@ async function runPlaywright(clusterUrl) {
     if ((await node(['--import', 'tsx', script], database)) !== 0) throw new SetUpError(`${script} failed`)
   }
   const port = await freePort()
-  const server = await startWebServer({ root, port, env: { ...env, DATABASE_URL: url.href } })
+  const serverEnv = { ...env, DATABASE_URL: url.href, LINK_ORIGIN: `http://localhost:${port}` }
+  const mail = await startLocalMail({ root, env: serverEnv, folder: join(scratch, 'mail') })
+  started.push(mail.stop)
+  const mailEnv = { ...serverEnv, ...mail.env }
+  const worker = startMailWorker({ root, env: mailEnv })
+  started.push(worker.stop)
+  const server = await startWebServer({ root, port, env: mailEnv })
   started.push(server.stop)
   await server.whenReady()
   const report = join(scratch, 'playwright.json')
@@ -100,7 +109,7 @@ async function runPlaywright(clusterUrl) {
     E2E_REPORT: report,
     SIGN_INS_FILE: signInsFile,
   })
-  await server.stop()
+  for (const each of [server, worker, mail]) await each.stop()
   return playwrightCounts(report, code)
 }
 

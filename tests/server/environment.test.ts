@@ -32,8 +32,14 @@ test('each fault has its own line', () => {
 })
 
 test('what is left empty is not given', () => {
-  const given = { DATABASE_URL, SMTP_URL: '', BASE_URL: '', TRUST_PROXY: '' }
-  const nothing = { databaseUrl: DATABASE_URL, baseOrigin: null, smtpUrl: null, isProxyTrusted: false }
+  const given = { DATABASE_URL, SMTP_URL: '', MAIL_FROM: '', BASE_URL: '', LOCAL_MAIL_FOLDER: '', TRUST_PROXY: '' }
+  const nothing = {
+    databaseUrl: DATABASE_URL,
+    baseOrigin: null,
+    smtpUrl: null,
+    localMailFolder: null,
+    isProxyTrusted: false,
+  }
   expect(parseEnvironment(given)).toEqual(nothing)
   expect(settingFaults(given)).toEqual([])
 })
