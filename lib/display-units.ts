@@ -37,6 +37,11 @@ export function displayOf(
   }
 }
 
+/** The display of a displacement in declination, which is measured on the sky. */
+export function acrossTheAxis(display: Display): Display {
+  return { ...display, arcsecPerPx: display.declinationArcsecPerPx }
+}
+
 /** Whether someone who prefers pixels is shown arc seconds, because this run has no pixels of a known size. */
 export function isWithoutPixels(preferences: DisplayPreferences, display: Display): boolean {
   return preferences.displacementUnit === 'px' && display.arcsecPerPx === null

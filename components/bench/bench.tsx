@@ -9,6 +9,7 @@ import { FigureStrip, type KeyFigure } from '@/components/ui/figure-strip'
 import { Notice } from '@/components/ui/notice'
 import { ProgressBar } from '@/components/ui/progress-bar'
 import type { AnalysisOutcome, AnalysisResult, Progress, Recipe } from '@/lib/analysis/types'
+import { useDisplay } from '@/lib/client/display'
 import { keyFigures, type KeyFigureText } from '@/lib/findings/key-figures'
 import { reasonSentence, reasonTitle } from '@/lib/findings/reason-sentence'
 import { titleFinding } from '@/lib/findings/title-finding'
@@ -16,6 +17,7 @@ import type { Note } from '@/lib/schemas/api'
 import type { RunFacts } from '@/lib/schemas/run-facts'
 import { CorrectionStage } from './correction-stage'
 import { HarmonicsStage } from './harmonics-stage'
+import { DisplayNote } from './display-note'
 import type { TableRequest } from './make-table'
 import { AddNote, NoteList, numberNotes, type NoteActions, type NoteAnchor } from './notes'
 import { SpansStage } from './spans-stage'
@@ -71,10 +73,12 @@ export function Bench(props: BenchProps) {
     () => (isReadOnly ? {} : { onAdd: props.onAddNote, onChange: props.onChangeNote, onDelete: props.onDeleteNote }),
     [isReadOnly, props.onAddNote, props.onChangeNote, props.onDeleteNote],
   )
+  const display = useDisplay(recipe.conversion)
   const stage: StageInput = {
     result,
     views: outcome?.ok ? outcome.views : null,
     recipe,
+    display,
     change: editing.change,
     notes: useMemo(() => numberNotes(notes), [notes]),
     noteActions,
@@ -88,7 +92,7 @@ export function Bench(props: BenchProps) {
         <div className="flex items-end justify-between gap-x-6 gap-y-3 max-lg:flex-col max-lg:items-start">
           <h1 className="min-w-0 flex-1 text-title font-semibold">
             {result ? (
-              <FindingText finding={titleFinding(result, recipe)} />
+              <FindingText finding={titleFinding(result, recipe, display)} />
             ) : failure ? (
               reasonTitle(failure.reason)
             ) : (
@@ -101,7 +105,8 @@ export function Bench(props: BenchProps) {
           </div>
         </div>
       </header>
-      {result ? <FigureStrip figures={keyFigures(result).map(small)} /> : null}
+      {result ? <FigureStrip figures={keyFigures(result, display).map(small)} /> : null}
+      {result ? <DisplayNote display={display} /> : null}
       {failure ? (
         <Card className="p-5">
           <Notice tone="error" title="There is nothing to show yet">

@@ -4,6 +4,7 @@ import { useRef } from 'react'
 import { PhasorChart } from '@/components/charts/phasor-chart'
 import { useWidth } from '@/components/charts/use-width'
 import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
+import { shownSwing, type Display } from '@/lib/display-units'
 import { findingText } from '@/lib/findings/finding'
 import {
   errorModelSentence,
@@ -15,14 +16,14 @@ import { ABSENT, formatEstimate, formatNumber } from '@/lib/units'
 import { AsideGroup, Facts, SmallTable, StageWarnings } from './aside'
 import { PictureSpace } from './picture-space'
 import { ChoiceSetting, FactSetting, NumberSetting } from './setting-rows'
-import { shortEstimate } from './spectrum-stage'
+import { shortEstimate, swingHead } from './spectrum-stage'
 import { Stage } from './stage'
 import type { StageInput } from './stage-props'
 
-export function HarmonicsStage({ result, recipe, change, isLocked }: StageInput) {
+export function HarmonicsStage({ result, recipe, display, change, isLocked }: StageInput) {
   const holder = useRef<HTMLDivElement>(null)
   const width = useWidth(holder)
-  const finding = result ? harmonicsFinding(result) : null
+  const finding = result ? harmonicsFinding(result, display) : null
   return (
     <Stage
       number={3}
@@ -34,7 +35,7 @@ export function HarmonicsStage({ result, recipe, change, isLocked }: StageInput)
       aside={
         result ? (
           <>
-            <HarmonicsTable result={result} />
+            <HarmonicsTable result={result} display={display} />
             <PeriodFacts result={result} />
             <StageWarnings warnings={result.warnings} stage="harmonics" />
           </>
@@ -47,6 +48,7 @@ export function HarmonicsStage({ result, recipe, change, isLocked }: StageInput)
             harmonics={result.worm.harmonics}
             summary={findingText(finding)}
             columns={width > 0 && width < 520 ? 2 : 4}
+            display={display}
           />
         ) : result?.wormPeriodIntervalSeconds ? (
           <PictureSpace heightPx={120}>
@@ -123,15 +125,15 @@ function withPeriod(recipe: Recipe, result: AnalysisResult | null): Recipe {
   return { ...recipe, typedPeriodSeconds: known === null ? 480 : Number(known.toFixed(2)) }
 }
 
-function HarmonicsTable({ result }: { result: AnalysisResult }) {
+function HarmonicsTable({ result, display }: { result: AnalysisResult; display: Display }) {
   if (!result.worm) return null
   return (
     <SmallTable
       caption="Worm harmonics"
-      head={['order', 'ampl. ″', 'phase °']}
+      head={['order', swingHead(display), 'phase °']}
       rows={result.worm.harmonics.map(({ order, amplitudeArcsec, phaseDegrees, isPhaseMeaningful }) => [
         order,
-        shortEstimate(amplitudeArcsec),
+        shortEstimate(shownSwing(amplitudeArcsec, display)),
         isPhaseMeaningful ? shortEstimate(phaseDegrees) : ABSENT,
       ])}
     />

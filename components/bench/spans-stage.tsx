@@ -3,9 +3,9 @@
 import { SpanChart } from '@/components/charts/span-chart'
 import { FindingText } from '@/components/findings/finding-text'
 import { advice } from '@/lib/findings/advice'
+import { sizedDisplacement } from '@/lib/display-units'
 import { findingText } from '@/lib/findings/finding'
 import { spansFinding } from '@/lib/findings/spans-finding'
-import { arcsec } from '@/lib/findings/words'
 import { formatDuration, formatPercent, formatSignificant } from '@/lib/units'
 import { AsideGroup, Facts, StageWarnings } from './aside'
 import { PictureSpace } from './picture-space'
@@ -13,16 +13,16 @@ import { NumberSetting } from './setting-rows'
 import { Stage } from './stage'
 import type { StageInput } from './stage-props'
 
-export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
-  const finding = result ? spansFinding(result) : null
-  const given = result ? advice(result, recipe) : null
+export function SpansStage({ result, recipe, display, change, isLocked }: StageInput) {
+  const finding = result ? spansFinding(result, display) : null
+  const given = result ? advice(result, recipe, display) : null
   return (
     <Stage
       number={5}
       title="Spans"
       question={
         result
-          ? `Where the ${arcsec(result.spans.rawArcsec)} of the raw track come from, one part taken away after another.`
+          ? `Where the ${sizedDisplacement(result.spans.rawArcsec, display)} of the raw track come from, one part taken away after another.`
           : 'Where the span of the raw track comes from, one part taken away after another.'
       }
       isLocked={isLocked}
@@ -76,7 +76,7 @@ export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
                   ],
                   [
                     'seeing floor',
-                    `${result.residual.isSeeingFloorLowerBound ? '≥ ' : ''}${arcsec(result.residual.seeingFloorArcsec)}`,
+                    `${result.residual.isSeeingFloorLowerBound ? '≥ ' : ''}${sizedDisplacement(result.residual.seeingFloorArcsec, display)}`,
                   ],
                 ]}
               />
@@ -84,9 +84,9 @@ export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
             <AsideGroup title="Spans of the parts alone">
               <Facts
                 rows={[
-                  ['drift', arcsec(result.spans.driftArcsec)],
-                  ['worm', result.worm ? arcsec(result.spans.wormArcsec) : '–'],
-                  ['raw without the worm', arcsec(result.spans.rawWithoutWormArcsec)],
+                  ['drift', sizedDisplacement(result.spans.driftArcsec, display)],
+                  ['worm', result.worm ? sizedDisplacement(result.spans.wormArcsec, display) : '–'],
+                  ['raw without the worm', sizedDisplacement(result.spans.rawWithoutWormArcsec, display)],
                 ]}
               />
             </AsideGroup>
@@ -97,7 +97,7 @@ export function SpansStage({ result, recipe, change, isLocked }: StageInput) {
     >
       {result && finding ? (
         <>
-          <SpanChart spans={result.spans} summary={findingText(finding)} />
+          <SpanChart spans={result.spans} summary={findingText(finding)} display={display} />
           {given ? (
             <div className="mt-5 border-t border-rule pt-3">
               <p className="max-w-[72ch] font-semibold text-pretty">

@@ -4,6 +4,7 @@ import { useMemo, useState } from 'react'
 import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
 import type { AnalysisResult, Recipe, WindowName } from '@/lib/analysis/types'
+import { displacementUnitOf, formatSwing, shortSwingWord, shownSwing, type Display } from '@/lib/display-units'
 import type { FigureFrame } from '@/lib/figures/figure'
 import { spectrumFigure } from '@/lib/figures/spectrum-figure'
 import { findingText } from '@/lib/findings/finding'
@@ -26,7 +27,7 @@ const WINDOWS: { value: WindowName; label: string }[] = [
 ]
 const CHANCE_LEVELS = [0.05, 0.01, 0.001, 0.0001]
 
-export function SpectrumStage({ result, views, recipe, change, notes, noteActions, isLocked }: StageInput) {
+export function SpectrumStage({ result, views, recipe, display, change, notes, noteActions, isLocked }: StageInput) {
   const [isBeforeShown, setBeforeShown] = useState(true)
   const { own, pick, pickBar, aside } = useStageNotes({
     kind: 'period',
@@ -43,8 +44,8 @@ export function SpectrumStage({ result, views, recipe, change, notes, noteAction
     if (!result || !views) return null
     const marks: typeof placed = JSON.parse(placedKey)
     return (frame: FigureFrame) =>
-      spectrumFigure({ result, spectrum: views.spectrum, chanceLevel, isBeforeShown, notes: marks, frame })
-  }, [result, views, chanceLevel, isBeforeShown, placedKey])
+      spectrumFigure({ result, spectrum: views.spectrum, chanceLevel, isBeforeShown, notes: marks, display, frame })
+  }, [result, views, chanceLevel, isBeforeShown, placedKey, display])
   const finding = result ? spectrumFinding(result, recipe) : null
 
   return (
@@ -57,7 +58,7 @@ export function SpectrumStage({ result, views, recipe, change, notes, noteAction
       finding={finding}
       aside={
         <>
-          {result ? <LinesTable result={result} recipe={recipe} /> : null}
+          {result ? <LinesTable result={result} recipe={recipe} display={display} /> : null}
           {result ? <StageWarnings warnings={result.warnings} stage="spectrum" /> : null}
           {aside}
         </>
@@ -66,7 +67,7 @@ export function SpectrumStage({ result, views, recipe, change, notes, noteAction
       {result && finding && makeFigure ? (
         <PlotlyChart
           name="spectrum"
-          summary={`${findingText(finding)} ${stemWords(result)}`}
+          summary={`${findingText(finding)} ${stemWords(result, display)}`}
           makeFigure={makeFigure}
           onPick={pick ? (periodSeconds) => pick({ kind: 'period', periodSeconds }) : undefined}
           legend={
@@ -121,7 +122,7 @@ function SpectrumSettings({ result, recipe, change }: Pick<StageInput, 'result' 
   )
 }
 
-function LinesTable({ result, recipe }: { result: AnalysisResult; recipe: Recipe }) {
+function LinesTable({ result, recipe, display }: { result: AnalysisResult; recipe: Recipe; display: Display }) {
   const { lines, predictedOrders, run } = result
   const tooFast = predictedOrders.filter(({ periodSeconds }) => periodSeconds < run.shortestPeriodSeconds)
   return (
@@ -135,12 +136,12 @@ function LinesTable({ result, recipe }: { result: AnalysisResult; recipe: Recipe
       ) : (
         <SmallTable
           caption="Lines beside the worm"
-          head={['source', 'order', 'per. s', 'ampl. ″']}
+          head={['source', 'order', 'per. s', swingHead(display)]}
           rows={lines.map(({ source, order, periodSeconds, amplitudeArcsec }) => [
             source ?? 'unexplained',
             order ? formatNumber(order.value, 3) : '–',
             formatNumber(periodSeconds.value, periodSeconds.value >= 100 ? 1 : 2),
-            shortEstimate(amplitudeArcsec),
+            shortEstimate(shownSwing(amplitudeArcsec, display)),
           ])}
         />
       )}
@@ -155,17 +156,24 @@ function LinesTable({ result, recipe }: { result: AnalysisResult; recipe: Recipe
   )
 }
 
-function stemWords({ worm, lines }: AnalysisResult): string {
+function stemWords({ worm, lines }: AnalysisResult, display: Display): string {
   const parts = [
     ...(worm?.harmonics ?? []).map(
-      ({ order, amplitudeArcsec }) => `order ${order}: ${formatEstimate(amplitudeArcsec, { unit: '″' })}`,
+      ({ order, amplitudeArcsec }) => `order ${order}: ${formatSwing(amplitudeArcsec, display)}`,
     ),
     ...lines.map(
       ({ source, periodSeconds, amplitudeArcsec }) =>
-        `${source ?? 'unexplained'}, ${formatPeriod(periodSeconds.value)}: ${formatEstimate(amplitudeArcsec, { unit: '″' })}`,
+        `${source ?? 'unexplained'}, ${formatPeriod(periodSeconds.value)}: ${formatSwing(amplitudeArcsec, display)}`,
     ),
   ]
-  return parts.length === 0 ? '' : `Amplitudes: ${parts.join('; ')}.`
+  return parts.length === 0
+    ? ''
+    : `${display.swingMeasure === 'amplitude' ? 'Amplitudes' : 'Swings from peak to peak'}: ${parts.join('; ')}.`
+}
+
+/** “ampl. ″”, “peak-to-peak px”: the head over swings in narrow tables. */
+export function swingHead(display: Display): string {
+  return `${shortSwingWord(display)} ${displacementUnitOf(display)}`
 }
 
 /** Value ± error without the zero before the point of the error, for narrow tables: 7.35 ± .04. */

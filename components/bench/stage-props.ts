@@ -1,4 +1,5 @@
 import type { AnalysisResult, AnalysisViews, Recipe } from '@/lib/analysis/types'
+import type { Display } from '@/lib/display-units'
 import type { NoteActions, NumberedNote } from './notes'
 
 /** What every stage of the worksheet is given. */
@@ -8,6 +9,8 @@ export interface StageInput {
   /** Null where there are figures but no samples to draw. */
   views: AnalysisViews | null
   recipe: Recipe
+  /** How swings and displacements of this run are shown to the person. */
+  display: Display
   change: (key: string, next: Recipe) => void
   notes: readonly NumberedNote[]
   noteActions: NoteActions

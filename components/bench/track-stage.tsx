@@ -5,12 +5,13 @@ import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
 import { Button } from '@/components/ui/button'
 import type { AnalysisResult } from '@/lib/analysis/types'
+import { acrossTheAxis, sizedDisplacement, type Display } from '@/lib/display-units'
 import type { FigureFrame } from '@/lib/figures/figure'
 import { trackFigure } from '@/lib/figures/track-figure'
 import { findingText } from '@/lib/findings/finding'
 import { perMinute } from '@/lib/findings/key-figures'
 import { trackFinding } from '@/lib/findings/track-finding'
-import { arcsec, senseMark } from '@/lib/findings/words'
+import { senseMark } from '@/lib/findings/words'
 import { formatEstimate, formatNumber, formatSignificant } from '@/lib/units'
 import { AsideGroup, Facts, StageWarnings } from './aside'
 import { NO_VIEWS, PictureSpace } from './picture-space'
@@ -26,7 +27,7 @@ interface Selection {
   zoomIn: () => void
 }
 
-export function TrackStage({ result, views, recipe, change, notes, noteActions, isLocked }: StageInput) {
+export function TrackStage({ result, views, recipe, display, change, notes, noteActions, isLocked }: StageInput) {
   const [selection, setSelection] = useState<Selection | null>(null)
   const { own, pick, pickBar, aside } = useStageNotes({
     kind: 'time',
@@ -44,8 +45,8 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
     if (!result || !views) return null
     const marks: typeof placed = JSON.parse(placedKey)
     return (frame: FigureFrame) =>
-      trackFigure({ result, track: views.track, excludedSpans, notes: marks, senseMark: sense, frame })
-  }, [result, views, excludedSpans, placedKey, sense])
+      trackFigure({ result, track: views.track, excludedSpans, notes: marks, senseMark: sense, display, frame })
+  }, [result, views, excludedSpans, placedKey, sense, display])
   const finding = result ? trackFinding(result) : null
 
   function leaveOut(span: { startSeconds: number; endSeconds: number }) {
@@ -64,7 +65,7 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
       finding={finding}
       aside={
         <>
-          {result ? <DriftFacts result={result} /> : null}
+          {result ? <DriftFacts result={result} display={display} /> : null}
           <SpanList
             spans={excludedSpans}
             isLocked={isLocked}
@@ -125,19 +126,19 @@ export function TrackStage({ result, views, recipe, change, notes, noteActions, 
   )
 }
 
-function DriftFacts({ result }: { result: AnalysisResult }) {
+function DriftFacts({ result, display }: { result: AnalysisResult; display: Display }) {
   const { drift, spans, worm, declination } = result
   return (
     <AsideGroup title={worm ? 'Drift, fitted together with the gears' : 'Drift'}>
       <Facts
         rows={[
           ['rate, ″/min', formatEstimate(perMinute(drift.rateArcsecPerSecond), { isSigned: true })],
-          ['its own span', arcsec(spans.driftArcsec)],
+          ['its own span', sizedDisplacement(spans.driftArcsec, display)],
           ['of the sidereal rate', formatSignificant(drift.percentOfSidereal, 2, { unit: '%' })],
           ['degree of its curve', drift.degree],
           ...(declination
             ? ([
-                ['declination, RMS', arcsec(declination.rmsArcsec)],
+                ['declination, RMS', sizedDisplacement(declination.rmsArcsec, acrossTheAxis(display))],
                 [
                   'declination drift, ″/min',
                   formatSignificant(60 * declination.driftArcsecPerSecond, 2, { isSigned: true }),

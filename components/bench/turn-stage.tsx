@@ -5,11 +5,12 @@ import { DialChart } from '@/components/charts/dial-chart'
 import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
 import type { AnalysisResult } from '@/lib/analysis/types'
+import { displacementFactor, displacementUnitOf, sizedDisplacement, type Display } from '@/lib/display-units'
 import type { FigureFrame } from '@/lib/figures/figure'
 import { turnFigure } from '@/lib/figures/turn-figure'
 import { findingText } from '@/lib/findings/finding'
 import { turnFinding } from '@/lib/findings/turn-finding'
-import { arcsec, countWord, degrees, senseMark } from '@/lib/findings/words'
+import { countWord, degrees, senseMark } from '@/lib/findings/words'
 import { formatNumber, formatPercent } from '@/lib/units'
 import { AsideGroup, Facts, SmallTable, StageWarnings } from './aside'
 import { NO_VIEWS, PictureSpace } from './picture-space'
@@ -18,7 +19,7 @@ import { Stage } from './stage'
 import type { StageInput } from './stage-props'
 import { useStageNotes } from './use-stage-notes'
 
-export function TurnStage({ result, views, recipe, notes, noteActions, isLocked }: StageInput) {
+export function TurnStage({ result, views, recipe, display, notes, noteActions, isLocked }: StageInput) {
   const { own, pick, pickBar, aside } = useStageNotes({
     kind: 'worm-angle',
     notes,
@@ -34,11 +35,11 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
   const makeFigure = useMemo(() => {
     if (!turn) return null
     const marks: typeof placed = JSON.parse(placedKey)
-    return (frame: FigureFrame) => turnFigure({ turn, senseMark: sense, notes: marks, frame })
-  }, [turn, sense, placedKey])
+    return (frame: FigureFrame) => turnFigure({ turn, senseMark: sense, notes: marks, display, frame })
+  }, [turn, sense, placedKey, display])
   const finding = result ? turnFinding(result) : null
   const pickAngle = pick ? (angleDegrees: number) => pick({ kind: 'worm-angle', angleDegrees }) : undefined
-  const summary = finding && result ? `${findingText(finding)} ${extremaWords(result, sense)}` : ''
+  const summary = finding && result ? `${findingText(finding)} ${extremaWords(result, { sense, display })}` : ''
 
   return (
     <Stage
@@ -56,8 +57,8 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
       aside={
         result ? (
           <>
-            <Predictions result={result} />
-            <WormFacts result={result} sense={sense} />
+            <Predictions result={result} display={display} />
+            <WormFacts result={result} sense={sense} display={display} />
             <StageWarnings warnings={result.warnings} stage="turn" />
             {aside}
           </>
@@ -70,6 +71,7 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
             turn={turn}
             summary={`${summary} As a dial.`}
             senseMark={sense}
+            display={display}
             notes={placed}
             onPick={pickAngle}
           />
@@ -101,7 +103,8 @@ export function TurnStage({ result, views, recipe, notes, noteActions, isLocked 
   )
 }
 
-function Predictions({ result: { turn } }: { result: AnalysisResult }) {
+function Predictions({ result: { turn }, display }: { result: AnalysisResult; display: Display }) {
+  const [unit, factor] = [displacementUnitOf(display), displacementFactor(display)]
   if (!turn) return null
   if (turn.predictions.length === 0) {
     return <p className="text-sm text-soft">With fewer than three turns none can be foretold by the others.</p>
@@ -109,26 +112,38 @@ function Predictions({ result: { turn } }: { result: AnalysisResult }) {
   return (
     <SmallTable
       caption={`Each turn foretold by the other ${countWord(turn.predictions.length - 1)}`}
-      head={['turn', 'RMS ″', 'left ″', 'less']}
+      head={['turn', `RMS ${unit}`, `left ${unit}`, 'less']}
       rows={turn.predictions.map(({ turnNumber, rmsBeforeArcsec, rmsLeftArcsec }) => [
         turnNumber,
-        formatNumber(rmsBeforeArcsec, 2),
-        formatNumber(rmsLeftArcsec, 2),
+        formatNumber(factor * rmsBeforeArcsec, 2),
+        formatNumber(factor * rmsLeftArcsec, 2),
         formatPercent(rmsBeforeArcsec > 0 ? 1 - rmsLeftArcsec / rmsBeforeArcsec : null),
       ])}
     />
   )
 }
 
-function WormFacts({ result: { worm, turn }, sense }: { result: AnalysisResult; sense: string }) {
+interface WormFactsProps {
+  result: AnalysisResult
+  sense: string
+  display: Display
+}
+
+function WormFacts({ result: { worm, turn }, sense, display }: WormFactsProps) {
   if (!worm) return null
   return (
     <AsideGroup title="The worm’s swing">
       <Facts
         rows={[
-          [`furthest ahead${sense}`, `${arcsec(worm.furthestAheadArcsec)} at ${degrees(worm.furthestAheadDegrees)}`],
-          [`furthest behind${sense}`, `${arcsec(worm.furthestBehindArcsec)} at ${degrees(worm.furthestBehindDegrees)}`],
-          ['RMS', arcsec(worm.rmsArcsec)],
+          [
+            `furthest ahead${sense}`,
+            `${sizedDisplacement(worm.furthestAheadArcsec, display)} at ${degrees(worm.furthestAheadDegrees)}`,
+          ],
+          [
+            `furthest behind${sense}`,
+            `${sizedDisplacement(worm.furthestBehindArcsec, display)} at ${degrees(worm.furthestBehindDegrees)}`,
+          ],
+          ['RMS', sizedDisplacement(worm.rmsArcsec, display)],
           ...(turn?.scatter === null || turn?.scatter === undefined
             ? []
             : ([['worm, from turn to turn', `± ${formatPercent(turn.scatter, 1)}`]] as [string, string][])),
@@ -138,7 +153,7 @@ function WormFacts({ result: { worm, turn }, sense }: { result: AnalysisResult; 
   )
 }
 
-function extremaWords({ worm }: AnalysisResult, sense: string): string {
+function extremaWords({ worm }: AnalysisResult, { sense, display }: { sense: string; display: Display }): string {
   if (!worm) return ''
-  return `The axis is furthest ahead${sense} at ${degrees(worm.furthestAheadDegrees)} by ${arcsec(worm.furthestAheadArcsec)}, furthest behind at ${degrees(worm.furthestBehindDegrees)}.`
+  return `The axis is furthest ahead${sense} at ${degrees(worm.furthestAheadDegrees)} by ${sizedDisplacement(worm.furthestAheadArcsec, display)}, furthest behind at ${degrees(worm.furthestBehindDegrees)}.`
 }

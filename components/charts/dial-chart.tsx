@@ -3,6 +3,8 @@
 import { useState } from 'react'
 import type { AnalysisViews } from '@/lib/analysis/types'
 import { dialPath, freestAngle, dialPoint, dialRadius, dialScale } from '@/lib/figures/dial'
+import { shownTurn } from '@/lib/figures/turn-figure'
+import { displacementUnitOf, displacementUnitWord, PLAIN_DISPLAY, type Display } from '@/lib/display-units'
 import { formatNumber, wrapDegrees } from '@/lib/units'
 import { SvgPicture } from './svg-picture'
 
@@ -14,12 +16,14 @@ interface DialChartProps {
   turn: NonNullable<AnalysisViews['turn']>
   summary: string
   senseMark: string
+  display?: Display
   notes: readonly { number: number; angleDegrees: number }[]
   onPick?: (angleDegrees: number) => void
 }
 
 /** Every turn round one worm angle: outward is ahead, inward behind; zero is the dotted circle. */
-export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChartProps) {
+export function DialChart({ summary, senseMark, display = PLAIN_DISPLAY, notes, onPick, ...props }: DialChartProps) {
+  const turn = shownTurn(props.turn, display)
   const [pointed, setPointed] = useState<number | null>(null)
   const scale = dialScale(turn.curveArcsec, ...turn.turns.map(({ arcsec }) => arcsec))
   const radius = (arcsec: number) => RIM * dialRadius(arcsec, scale)
@@ -35,7 +39,7 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
         table={{
           columns: [
             { name: 'worm_angle_degrees', values: turn.angleDegrees },
-            { name: 'fitted_arcsec', values: turn.curveArcsec },
+            { name: `fitted_${displacementUnitWord(display)}`, values: turn.curveArcsec },
           ],
         }}
         width={SIZE}
@@ -47,7 +51,7 @@ export function DialChart({ turn, summary, senseMark, notes, onPick }: DialChart
           <span className="figures text-xs" aria-live="off">
             {index === null
               ? `outward is ahead${senseMark}`
-              : `at ${formatNumber(closed[index], 0)}° ${formatNumber(turn.curveArcsec[index], 2, { isSigned: true, unit: '″' })}`}
+              : `at ${formatNumber(closed[index], 0)}° ${formatNumber(turn.curveArcsec[index], 2, { isSigned: true, unit: displacementUnitOf(display) })}`}
           </span>
         }
       >

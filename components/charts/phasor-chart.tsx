@@ -1,6 +1,16 @@
 'use client'
 
 import type { HarmonicResult } from '@/lib/analysis/types'
+import {
+  displacementUnitOf,
+  displacementFactor,
+  displacementUnitWord,
+  formatSwing,
+  PLAIN_DISPLAY,
+  swingColumn,
+  swingFactor,
+  type Display,
+} from '@/lib/display-units'
 import { errorEllipse } from '@/lib/figures/error-ellipse'
 import { harmonicName } from '@/lib/findings/words'
 import { formatEstimate, formatNumber } from '@/lib/units'
@@ -16,11 +26,15 @@ export function PhasorChart({
   harmonics,
   summary,
   columns = COLUMNS,
+  display = PLAIN_DISPLAY,
 }: {
   harmonics: readonly HarmonicResult[]
   summary: string
   columns?: number
+  display?: Display
 }) {
+  const [swing, displacement] = [swingFactor(display), displacementFactor(display)]
+  const unit = displacementUnitWord(display)
   const across = Math.min(columns, Math.max(1, harmonics.length))
   const size = columns < COLUMNS ? SMALL : WIDE
   const down = Math.ceil(harmonics.length / across)
@@ -34,15 +48,19 @@ export function PhasorChart({
       table={{
         columns: [
           { name: 'order', values: harmonics.map(({ order }) => order) },
-          { name: 'amplitude_arcsec', values: harmonics.map(({ amplitudeArcsec }) => amplitudeArcsec.value) },
           {
-            name: 'amplitude_stderr_arcsec',
-            values: harmonics.map(({ amplitudeArcsec }) => amplitudeArcsec.stderr ?? NaN),
+            name: swingColumn(display),
+            values: harmonics.map(({ amplitudeArcsec }) => swing * amplitudeArcsec.value),
+          },
+          {
+            name: swingColumn(display, 'stderr'),
+            values: harmonics.map(({ amplitudeArcsec }) => swing * (amplitudeArcsec.stderr ?? NaN)),
           },
           { name: 'phase_degrees', values: harmonics.map(({ phaseDegrees }) => phaseDegrees.value) },
           { name: 'phase_stderr_degrees', values: harmonics.map(({ phaseDegrees }) => phaseDegrees.stderr ?? NaN) },
-          { name: 'cos_arcsec', values: harmonics.map(({ cosArcsec }) => cosArcsec) },
-          { name: 'sin_arcsec', values: harmonics.map(({ sinArcsec }) => sinArcsec) },
+          // Coefficients of cos and sin are what they are; only their unit is that of the display.
+          { name: `cos_${unit}`, values: harmonics.map(({ cosArcsec }) => displacement * cosArcsec) },
+          { name: `sin_${unit}`, values: harmonics.map(({ sinArcsec }) => displacement * sinArcsec) },
         ],
       }}
     >
@@ -51,14 +69,14 @@ export function PhasorChart({
           key={harmonic.order}
           transform={`translate(${((index % across) + 0.5) * size.cell} ${Math.floor(index / across) * size.height + size.rim + 30})`}
         >
-          <Phasor harmonic={harmonic} size={size} />
+          <Phasor harmonic={harmonic} size={size} display={display} />
         </g>
       ))}
     </SvgPicture>
   )
 }
 
-function Phasor({ harmonic, size }: { harmonic: HarmonicResult; size: typeof WIDE }) {
+function Phasor({ harmonic, size, display }: { harmonic: HarmonicResult; size: typeof WIDE; display: Display }) {
   const { cell, height, rim, reach } = size
   const { order, cosArcsec, sinArcsec, covarianceArcsec2, amplitudeArcsec, phaseDegrees, isPhaseMeaningful } = harmonic
   const amplitude = Math.hypot(cosArcsec, sinArcsec)
@@ -71,7 +89,7 @@ function Phasor({ harmonic, size }: { harmonic: HarmonicResult; size: typeof WID
   return (
     <>
       <title>
-        {`${harmonicName(order)}: ${formatEstimate(amplitudeArcsec, { unit: '″' })}, ${isPhaseMeaningful ? `at ${formatEstimate(phaseDegrees, { unit: '°' })}` : 'phase unknown'}`}
+        {`${harmonicName(order)}: ${formatSwing(amplitudeArcsec, display)}, ${isPhaseMeaningful ? `at ${formatEstimate(phaseDegrees, { unit: '°' })}` : 'phase unknown'}`}
       </title>
       <rect x={-cell / 2} y={-rim - 28} width={cell} height={height} className="fill-transparent" />
       <circle r={rim} fill="none" className="stroke-faint" />
@@ -109,8 +127,14 @@ function Phasor({ harmonic, size }: { harmonic: HarmonicResult; size: typeof WID
         {harmonicName(order)}
       </text>
       <text y={reach + 43} textAnchor="middle" fontSize="12.5" className="figures fill-soft">
-        {isPhaseMeaningful ? `rim ${formatNumber(rimArcsec, rimArcsec < 0.1 ? 3 : 2)}″` : 'not certain'}
+        {isPhaseMeaningful ? `rim ${rimText(rimArcsec, display)}` : 'not certain'}
       </text>
     </>
   )
+}
+
+/** What the outer circle stands for, as swings are measured. */
+function rimText(rimArcsec: number, display: Display): string {
+  const rim = rimArcsec * swingFactor(display)
+  return formatNumber(rim, rim < 0.1 ? 3 : 2, { unit: displacementUnitOf(display) })
 }

@@ -1,5 +1,5 @@
 import type { SpanResult } from '@/lib/analysis/types'
-import { arcsec } from '@/lib/findings/words'
+import { PLAIN_DISPLAY, sizedDisplacement, type Display } from '@/lib/display-units'
 
 interface SpanRow {
   name: string
@@ -7,8 +7,14 @@ interface SpanRow {
   look: string
 }
 
+interface SpanChartProps {
+  spans: SpanResult
+  summary: string
+  display?: Display
+}
+
 /** What the raw track spans, and what is left of it as one part after another is taken away. */
-export function SpanChart({ spans, summary }: { spans: SpanResult; summary: string }) {
+export function SpanChart({ spans, summary, display = PLAIN_DISPLAY }: SpanChartProps) {
   const rows: SpanRow[] = [
     { name: 'raw track', arcsec: spans.rawArcsec, look: 'bg-steel opacity-50' },
     { name: 'drift taken away', arcsec: spans.afterDriftArcsec, look: 'bg-steel opacity-50' },
@@ -29,7 +35,7 @@ export function SpanChart({ spans, summary }: { spans: SpanResult; summary: stri
               className={`block h-4.5 rounded-[2px] ${row.look}`}
               style={{ width: `${(82 * row.arcsec) / longest}%` }}
             />
-            <span className="figures">{arcsec(row.arcsec)}</span>
+            <span className="figures">{sizedDisplacement(row.arcsec, display)}</span>
           </dd>
         </div>
       ))}

@@ -1,6 +1,16 @@
 import type { Annotation, Layout, ScatterData, Shape } from 'plotly.js-dist-min'
 import type { AnalysisResult, AnalysisViews } from '@/lib/analysis/types'
-import { formatProbability } from '@/lib/units'
+import {
+  displacementUnitOf,
+  displacementUnitWord,
+  PLAIN_DISPLAY,
+  scaledValues,
+  swingColumn,
+  swingFactor,
+  swingWord,
+  type Display,
+} from '@/lib/display-units'
+import { formatProbability, withSpace } from '@/lib/units'
 import { withAlpha } from './chart-colors'
 import {
   axisNote,
@@ -22,17 +32,20 @@ export interface SpectrumFigureInput {
   chanceLevel: number
   isBeforeShown: boolean
   notes: readonly { number: number; periodSeconds: number }[]
+  /** How swings are shown; the amplitudes of the core unless given. */
+  display?: Display
   frame: FigureFrame
 }
 
 /** Log amplitude against log period, longest at the left: what the lines leave, what was before, lines as stems. */
 export function spectrumFigure(input: SpectrumFigureInput): Figure {
-  const { result, spectrum, frame, isBeforeShown } = input
+  const { result, frame, isBeforeShown, display = PLAIN_DISPLAY } = input
+  const spectrum = shownSpectrum(input.spectrum, display)
   const { colors } = frame
   const narrow = isNarrow(frame)
   const margin = { l: 52, r: 14, t: narrow ? 52 : 46, b: 44 }
   const heightPx = narrow ? 320 : 330
-  const stems = stemsOf(result)
+  const stems = stemsOf(result, display)
   const periods = spectrum.frequencyHz.map((frequency) => 1 / frequency)
   const [shortest, longest] = periodRange(periods, result.run.durationSeconds)
   const range = frame.zoom ?? ([longest, shortest] as [number, number])
@@ -52,7 +65,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
   const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.periodSeconds, isLog: true }, frame))
   const ruler = wormPeriod === null ? null : rulerOf({ wormPeriod, range, width, frame })
   const axes = { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b }
-  const chance = chanceLabel(input, axes)
+  const chance = chanceLabel({ ...input, spectrum }, axes)
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx, margin }),
     hovermode: 'closest',
@@ -76,7 +89,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
     },
     shapes: [...(ruler?.shapes ?? []), ...marks.map(({ shape }) => ({ ...shape }))],
     annotations: [
-      axisNote('arcsec amplitude', frame, {
+      axisNote(`${displacementUnitWord(display)} ${swingWord(display)}`, frame, {
         // On a phone the worm's own stem stands in the left corner.
         ...(narrow ? { x: 1, xanchor: 'right', xshift: -2 } : { x: 0, xanchor: 'left', xshift: 4 }),
         y: 1,
@@ -91,7 +104,9 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
     ],
   }
   const orders = wormPeriod === null ? null : spectrum.frequencyHz.map((frequency) => frequency * wormPeriod)
-  const hover = orders ? 'order %{customdata:.3f}<br>%{x:.4~r} s<br>%{y:.3~r}″' : '%{x:.4~r} s<br>%{y:.3~r}″'
+  const size = `%{x:.4~r} s<br>%{y:.3~r}${withSpace(displacementUnitOf(display))}`
+  const hover = orders ? `order %{customdata:.3f}<br>${size}` : size
+  const column = (curve: string) => `${curve}_${displacementUnitWord(display)}${endsOf(display)}`
   const curve = (name: string, y: Float64Array): Partial<ScatterData> => ({
     type: 'scatter',
     mode: 'lines',
@@ -130,16 +145,32 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
       columns: [
         { name: 'period_seconds', values: periods },
         ...(orders ? [{ name: 'order', values: orders }] : []),
-        { name: 'before_arcsec', values: spectrum.beforeArcsec },
-        { name: 'left_arcsec', values: spectrum.afterArcsec },
-        { name: 'chance_arcsec', values: spectrum.chanceArcsec },
+        { name: column('before'), values: spectrum.beforeArcsec },
+        { name: column('left'), values: spectrum.afterArcsec },
+        { name: column('chance'), values: spectrum.chanceArcsec },
         { name: 'line_name', values: stems.map(({ name }) => name) },
         { name: 'line_period_seconds', values: stems.map(({ periodSeconds }) => periodSeconds) },
-        { name: 'line_amplitude_arcsec', values: stems.map(({ amplitudeArcsec }) => amplitudeArcsec) },
+        { name: `line_${swingColumn(display)}`, values: stems.map(({ size }) => size) },
       ],
     },
     x: { range, isLog: true, marginLeftPx: margin.l, marginRightPx: margin.r },
   }
+}
+
+/** Every curve of a spectrum is a swing at each period, so all are shown by the same measure. */
+function shownSpectrum(spectrum: AnalysisViews['spectrum'], display: Display): AnalysisViews['spectrum'] {
+  const factor = swingFactor(display)
+  return {
+    frequencyHz: spectrum.frequencyHz,
+    beforeArcsec: scaledValues(spectrum.beforeArcsec, factor),
+    afterArcsec: scaledValues(spectrum.afterArcsec, factor),
+    chanceArcsec: scaledValues(spectrum.chanceArcsec, factor),
+  }
+}
+
+/** In heads of columns: amplitudes are meant unless said. */
+function endsOf({ swingMeasure }: Display): string {
+  return swingMeasure === 'peak-to-peak' ? '_peak_to_peak' : ''
 }
 
 /** The order ruler over the picture: swings per turn of the worm. */
@@ -238,7 +269,7 @@ function periodRange(periods: Float64Array, durationSeconds: number): [number, n
 
 /** From a third of a decade over the largest swing down to where the noise lies, at most four decades. */
 function amplitudeRange(spectrum: AnalysisViews['spectrum'], stems: readonly Stem[]): [number, number] {
-  const largest = Math.max(extent(spectrum.beforeArcsec)[1], ...stems.map(({ amplitudeArcsec }) => amplitudeArcsec))
+  const largest = Math.max(extent(spectrum.beforeArcsec)[1], ...stems.map(({ size }) => size))
   const chance = extent(spectrum.chanceArcsec)
   const high = Math.max(largest, chance[1]) * 2.2
   const noise = Math.max(chance[0] / 12, high / 1e4)

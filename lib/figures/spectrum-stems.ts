@@ -1,5 +1,6 @@
 import type { Annotation, ScatterData } from 'plotly.js-dist-min'
 import type { AnalysisResult } from '@/lib/analysis/types'
+import { displacementUnitOf, PLAIN_DISPLAY, swingFactor, type Display } from '@/lib/display-units'
 import { harmonicName, withinSentence } from '@/lib/findings/words'
 import { formatNumber, formatPeriod } from '@/lib/units'
 import { withAlpha } from './chart-colors'
@@ -9,29 +10,32 @@ import { placeLabels, type Box } from './place-labels'
 /** A swing that was found, as it stands in the spectrum. */
 export interface Stem {
   periodSeconds: number
-  amplitudeArcsec: number
+  /** As it is shown: amplitude or peak-to-peak, in arc seconds or pixels. */
+  size: number
   name: string
   isWorm: boolean
   hover: string
 }
 
 /** The worm's harmonics and the lines beside them; what has no amplitude cannot stand on a log axis. */
-export function stemsOf({ worm, lines }: AnalysisResult): Stem[] {
+export function stemsOf({ worm, lines }: AnalysisResult, display: Display = PLAIN_DISPLAY): Stem[] {
+  const factor = swingFactor(display)
+  const written = (size: number) => formatNumber(size, 3, { unit: displacementUnitOf(display) })
   const ofWorm = (worm?.harmonics ?? []).map(({ order, periodSeconds, amplitudeArcsec }): Stem => ({
     periodSeconds,
-    amplitudeArcsec: amplitudeArcsec.value,
+    size: amplitudeArcsec.value * factor,
     name: harmonicName(order),
     isWorm: true,
-    hover: `order ${order}<br>${formatPeriod(periodSeconds)}<br>${formatNumber(amplitudeArcsec.value, 3)}″`,
+    hover: `order ${order}<br>${formatPeriod(periodSeconds)}<br>${written(amplitudeArcsec.value * factor)}`,
   }))
   const others = lines.map(({ order, periodSeconds, amplitudeArcsec, source }): Stem => ({
     periodSeconds: periodSeconds.value,
-    amplitudeArcsec: amplitudeArcsec.value,
+    size: amplitudeArcsec.value * factor,
     name: source === null ? 'unexplained' : withinSentence(source),
     isWorm: false,
-    hover: `${order ? `order ${formatNumber(order.value, 3)}<br>` : ''}${formatPeriod(periodSeconds.value)}<br>${formatNumber(amplitudeArcsec.value, 3)}″`,
+    hover: `${order ? `order ${formatNumber(order.value, 3)}<br>` : ''}${formatPeriod(periodSeconds.value)}<br>${written(amplitudeArcsec.value * factor)}`,
   }))
-  return [...ofWorm, ...others].filter(({ amplitudeArcsec }) => amplitudeArcsec > 0)
+  return [...ofWorm, ...others].filter(({ size }) => size > 0)
 }
 
 /** The stems themselves, then their dots with what a pointer reads there. */
@@ -46,14 +50,14 @@ export function stemTraces(
       mode: 'lines',
       hoverinfo: 'skip',
       x: stems.flatMap(({ periodSeconds }) => [periodSeconds, periodSeconds, null]),
-      y: stems.flatMap(({ amplitudeArcsec }) => [look.floor, amplitudeArcsec, null]),
+      y: stems.flatMap(({ size }) => [look.floor, size, null]),
       line: { color: look.line, width: 2 },
     },
     {
       type: 'scatter',
       mode: 'markers',
       x: stems.map(({ periodSeconds }) => periodSeconds),
-      y: stems.map(({ amplitudeArcsec }) => amplitudeArcsec),
+      y: stems.map(({ size }) => size),
       text: stems.map(({ hover, name }) => `${hover} ${name}`),
       // The second box that Plotly would put the name into stands on white, whatever the theme.
       hovertemplate: '%{text}<extra></extra>',
@@ -82,10 +86,10 @@ export function stemLabels(
       // On a phone the colour says whose multiple it is.
       text: isNarrow(frame) ? stem.name.replace(/^worm ×/, '×') : stem.name,
       xPx: ((Math.log10(stem.periodSeconds) - xLog[0]) / (xLog[1] - xLog[0])) * width,
-      yPx: (1 - (Math.log10(stem.amplitudeArcsec) - yLog[0]) / (yLog[1] - yLog[0])) * heightPx,
+      yPx: (1 - (Math.log10(stem.size) - yLog[0]) / (yLog[1] - yLog[0])) * heightPx,
     }))
     .filter(({ xPx }) => xPx >= 0 && xPx <= width)
-    .sort((a, b) => b.stem.amplitudeArcsec - a.stem.amplitudeArcsec)
+    .sort((a, b) => b.stem.size - a.stem.size)
   // The name of the axis stands in the upper left corner, on a phone in the right one.
   const left = isNarrow(frame) ? width - 128 : 0
   const blocked = [{ left, right: left + 128, top: 0, bottom: 17 }, taken]

@@ -1,5 +1,14 @@
 import type { Annotation, Layout, Shape } from 'plotly.js-dist-min'
 import type { AnalysisResult, AnalysisViews, ExcludedSpan } from '@/lib/analysis/types'
+import {
+  displacementFactor,
+  displacementUnitOf,
+  displacementUnitWord,
+  PLAIN_DISPLAY,
+  scaledValues,
+  type Display,
+} from '@/lib/display-units'
+import { withSpace } from '@/lib/units'
 import { withAlpha } from './chart-colors'
 import {
   axisNote,
@@ -23,12 +32,16 @@ export interface TrackFigureInput {
   notes: readonly { number: number; timeSeconds: number }[]
   /** Said beside "ahead" while the sense is only assumed; else empty. */
   senseMark: string
+  /** The unit of the displacement; arc seconds unless given. */
+  display?: Display
   frame: FigureFrame
 }
 
 /** Displacement on the axis against minutes into the run: recorded thin, fit thick, drift dashed, gaps shaded. */
 export function trackFigure(input: TrackFigureInput): Figure {
-  const { result, track, frame, senseMark } = input
+  const { result, frame, senseMark, display = PLAIN_DISPLAY } = input
+  const track = shownTrack(input.track, display)
+  const unit = displacementUnitWord(display)
   const { colors } = frame
   const margin = { l: 52, r: 14, t: 44, b: 44 }
   const whole: [number, number] = [
@@ -73,7 +86,7 @@ export function trackFigure(input: TrackFigureInput): Figure {
     },
     shapes: [...shades(input), ...turns.shapes, ...marks.map(({ shape }) => shape)],
     annotations: [
-      axisNote(`arcsec on the axis, ahead is up${senseMark}`, frame, {
+      axisNote(`${unit} on the axis, ahead is up${senseMark}`, frame, {
         x: 0,
         y: 1,
         xanchor: 'left',
@@ -85,7 +98,8 @@ export function trackFigure(input: TrackFigureInput): Figure {
       ...marks.map(({ annotation }) => annotation),
     ],
   }
-  const value = '%{y:+.2f}″'
+  const mark = withSpace(displacementUnitOf(display))
+  const value = `%{y:+.2f}${mark}`
   return {
     layout,
     data: [
@@ -125,21 +139,32 @@ export function trackFigure(input: TrackFigureInput): Figure {
         y: track.strayArcsec.map((stray) => Math.min(Math.max(stray, yRange[0] + 0.02 * pad), yRange[1] - 0.02 * pad)),
         customdata: track.strayArcsec,
         marker: { symbol: 'x-thin', size: 8, color: colors.oxide, line: { color: colors.oxide, width: 1.5 } },
-        hovertemplate: '%{customdata:+.2f}″',
+        hovertemplate: `%{customdata:+.2f}${mark}`,
       },
     ],
     table: {
       columns: [
         { name: 'time_seconds', values: track.timeSeconds },
-        { name: 'recorded_arcsec', values: track.recordedArcsec },
+        { name: `recorded_${unit}`, values: track.recordedArcsec },
         { name: 'model_time_seconds', values: track.modelTimeSeconds },
-        { name: 'fitted_arcsec', values: track.fittedArcsec },
-        { name: 'drift_arcsec', values: track.driftArcsec },
+        { name: `fitted_${unit}`, values: track.fittedArcsec },
+        { name: `drift_${unit}`, values: track.driftArcsec },
         { name: 'stray_time_seconds', values: track.strayTimeSeconds },
-        { name: 'stray_arcsec', values: track.strayArcsec },
+        { name: `stray_${unit}`, values: track.strayArcsec },
       ],
     },
     x: { range, isLog: false, marginLeftPx: margin.l, marginRightPx: margin.r },
+  }
+}
+
+function shownTrack(track: AnalysisViews['track'], display: Display): AnalysisViews['track'] {
+  const factor = displacementFactor(display)
+  return {
+    ...track,
+    recordedArcsec: scaledValues(track.recordedArcsec, factor),
+    fittedArcsec: scaledValues(track.fittedArcsec, factor),
+    driftArcsec: scaledValues(track.driftArcsec, factor),
+    strayArcsec: scaledValues(track.strayArcsec, factor),
   }
 }
 

@@ -1,6 +1,15 @@
 import type { Annotation, Layout, Shape } from 'plotly.js-dist-min'
 import type { AnalysisViews } from '@/lib/analysis/types'
 import {
+  displacementFactor,
+  displacementUnitOf,
+  displacementUnitWord,
+  PLAIN_DISPLAY,
+  scaledValues,
+  type Display,
+} from '@/lib/display-units'
+import { withSpace } from '@/lib/units'
+import {
   axisNote,
   baseAxis,
   baseLayout,
@@ -16,12 +25,17 @@ import { niceTicks, type Ticks } from './ticks'
 export interface TurnFigureInput {
   turn: NonNullable<AnalysisViews['turn']>
   senseMark: string
+  /** The unit of the displacement; arc seconds unless given. */
+  display?: Display
   notes: readonly { number: number; angleDegrees: number }[]
   frame: FigureFrame
 }
 
 /** Every turn over the worm angle, thin, and the fitted curve, thick. */
-export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): Figure {
+export function turnFigure(input: TurnFigureInput): Figure {
+  const { frame, notes, senseMark, display = PLAIN_DISPLAY } = input
+  const turn = shownTurn(input.turn, display)
+  const unit = displacementUnitWord(display)
   const { colors } = frame
   // The numbers of the notes stand between the title and the picture.
   const noteRoom = notes.length > 0 ? 12 : 0
@@ -46,7 +60,7 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
     yaxis: { ...baseAxis(frame), range: yRange, tickvals: yTicks.values, ticktext: yTicks.labels, showgrid: true },
     shapes: marks.map(({ shape }) => shape),
     annotations: [
-      axisNote(`arcsec, ahead is up${senseMark}`, frame, {
+      axisNote(`${unit}, ahead is up${senseMark}`, frame, {
         x: 0,
         y: 1,
         xanchor: 'left',
@@ -57,7 +71,7 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
       ...marks.map(({ annotation }) => annotation),
     ],
   }
-  const hover = '%{x:.1f}°<br>%{y:+.2f}″'
+  const hover = `%{x:.1f}°<br>%{y:+.2f}${withSpace(displacementUnitOf(display))}`
   return {
     layout,
     data: [
@@ -88,14 +102,27 @@ export function turnFigure({ turn, frame, notes, senseMark }: TurnFigureInput): 
     table: {
       columns: [
         { name: 'worm_angle_degrees', values: turn.angleDegrees },
-        { name: 'fitted_arcsec', values: turn.curveArcsec },
+        { name: `fitted_${unit}`, values: turn.curveArcsec },
         ...turn.turns.flatMap(({ turnNumber, angleDegrees, arcsec }) => [
           { name: `turn_${turnNumber}_angle_degrees`, values: angleDegrees },
-          { name: `turn_${turnNumber}_arcsec`, values: arcsec },
+          { name: `turn_${turnNumber}_${unit}`, values: arcsec },
         ]),
       ],
     },
     x: { range, isLog: false, marginLeftPx: margin.l, marginRightPx: margin.r },
+  }
+}
+
+/** The turns in the unit of the display; the table’s values keep their own. */
+export function shownTurn(
+  turn: NonNullable<AnalysisViews['turn']>,
+  display: Display,
+): NonNullable<AnalysisViews['turn']> {
+  const factor = displacementFactor(display)
+  return {
+    ...turn,
+    curveArcsec: scaledValues(turn.curveArcsec, factor),
+    turns: turn.turns.map((each) => ({ ...each, arcsec: scaledValues(each.arcsec, factor) })),
   }
 }
 

@@ -1,7 +1,8 @@
 import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
+import { PLAIN_DISPLAY, sizedSwing, type Display } from '@/lib/display-units'
 import { formatDuration, formatPercent } from '@/lib/units'
 import { finding, limit, worm, type Finding } from './finding'
-import { arcsec } from './words'
+import { arcsec, fromEndToEnd } from './words'
 
 export type Verdict = 'leave' | 'guide' | 'correct' | 'inspect' | 'unknown'
 
@@ -20,7 +21,7 @@ const WORTHWHILE_REDUCTION = 0.5
 const SHORTEST_GUIDING_SECONDS = 1
 
 /** Leave it, guide it out, correct it, or look at the mount: the first of the stated rules that applies. */
-export function advice(result: AnalysisResult, recipe: Recipe): Advice {
+export function advice(result: AnalysisResult, recipe: Recipe, display: Display = PLAIN_DISPLAY): Advice {
   const { worm: wormResult, turn, rate, lines } = result
   if (!wormResult || !turn) {
     return {
@@ -47,7 +48,7 @@ export function advice(result: AnalysisResult, recipe: Recipe): Advice {
   if (isLost || strongest > fundamental) {
     const cause =
       strongest > fundamental
-        ? `a line beside the worm swings ${arcsec(strongest)}, more than the worm itself, and no table can take it out`
+        ? `a line beside the worm swings ${sizedSwing(strongest, display)}${fromEndToEnd(display)}, more than the worm itself, and no table can take it out`
         : `only ${formatPercent(Math.max(0, reduction ?? 0))} of the RMS is the same from turn to turn, unless the air was poor`
     return {
       verdict: 'inspect',

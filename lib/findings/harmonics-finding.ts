@@ -1,27 +1,32 @@
 import type { AnalysisResult, HarmonicResult, ModelChoice, Recipe } from '@/lib/analysis/types'
-import { formatEstimate, formatPercent, formatProbability } from '@/lib/units'
+import { PLAIN_DISPLAY, formatSwing, type Display } from '@/lib/display-units'
+import { formatPercent, formatProbability } from '@/lib/units'
 import { finding, worm, type Finding } from './finding'
 import { reasonSentence } from './reason-sentence'
-import { capitalised, ordinalWord } from './words'
+import { capitalised, fromEndToEnd, ordinalWord } from './words'
 
 /** Which harmonic carries the swing. */
-export function harmonicsFinding(result: AnalysisResult): Finding {
+export function harmonicsFinding(result: AnalysisResult, display: Display = PLAIN_DISPLAY): Finding {
   if (!result.worm) return finding`${reasonSentence({ reason: result.wormReason ?? 'no-period' })}`
   const { harmonics, fundamentalPowerShare } = result.worm
   const fundamental = harmonics.find(({ order }) => order === 1)
   const rest = harmonics.filter(({ order }) => order !== 1).sort(byPower)
   if (!fundamental) return finding`The worm’s fundamental was not fitted.`
-  const size = formatEstimate(fundamental.amplitudeArcsec, { unit: '″' })
-  if (rest.length === 0) return finding`The worm’s swing is one plain sine of ${worm(size)} to either side.`
+  const size = formatSwing(fundamental.amplitudeArcsec, display)
+  const measured = `${size}${fromEndToEnd(display)}`
+  if (rest.length === 0) {
+    const ends = fromEndToEnd(display) || ' to either side'
+    return finding`The worm’s swing is one plain sine of ${worm(size)}${ends}.`
+  }
   const share = formatPercent(fundamentalPowerShare)
   if (power(rest[0]) > power(fundamental)) {
-    return finding`The ${ordinalWord(rest[0].order)} harmonic swings most; the worm’s fundamental, ${size}, carries only ${worm(share)} of the swing’s power.`
+    return finding`The ${ordinalWord(rest[0].order)} harmonic swings most; the worm’s fundamental, ${measured}, carries only ${worm(share)} of the swing’s power.`
   }
   const isMost = power(rest[0]) > 0.5 * rest.reduce((sum, harmonic) => sum + power(harmonic), 0)
   const tail = isMost
     ? `the ${ordinalWord(rest[0].order)} harmonic most of the rest`
     : `the rest is spread over the others`
-  return finding`The worm’s fundamental, ${size}, carries ${worm(share)} of the swing’s power; ${tail}.`
+  return finding`The worm’s fundamental, ${measured}, carries ${worm(share)} of the swing’s power; ${tail}.`
 }
 
 /** How the number of harmonics came about. */

@@ -1,4 +1,5 @@
 import type { AnalysisResult, Estimate } from '@/lib/analysis/types'
+import { PLAIN_DISPLAY, displacementUnitOf, shownDisplacement, type Display } from '@/lib/display-units'
 import { ABSENT, estimateParts, formatNumber } from '@/lib/units'
 
 export interface KeyFigureText {
@@ -8,16 +9,23 @@ export interface KeyFigureText {
   unit?: string
 }
 
-/** The five figures over the sheet: worm period, worm peak to peak, steepest rate, drift, what the fit leaves. */
-export function keyFigures(result: AnalysisResult): KeyFigureText[] {
+/**
+ * The five figures over the sheet: worm period, worm peak to peak, steepest rate, drift, what the fit leaves. Rates stay in arc
+ * seconds, to be held against the rate of a guider, which is a matter of the axis.
+ */
+export function keyFigures(result: AnalysisResult, display: Display = PLAIN_DISPLAY): KeyFigureText[] {
   const { worm, drift, residual, scaleUncertaintyPercent } = result
-  const scale = scaleUncertaintyPercent === null ? '' : ` (scale ± ${shortPercent(scaleUncertaintyPercent)})`
+  const unit = displacementUnitOf(display)
+  const shown = (arcsec: Estimate) => shownDisplacement(arcsec, display)
+  // The pixels of the recording do not depend on what is known of their scale.
+  const scale =
+    scaleUncertaintyPercent === null || unit === 'px' ? '' : ` (scale ± ${shortPercent(scaleUncertaintyPercent)})`
   return [
     figure('Worm period', worm?.periodSeconds ?? null, 's'),
-    figure(`Worm, peak to peak${scale}`, worm?.peakToPeakArcsec ?? null, '″'),
+    figure(`Worm, peak to peak${scale}`, worm ? shown(worm.peakToPeakArcsec) : null, unit),
     figure('Steepest rate', worm?.steepestRateArcsecPerSecond ?? null, '″/s'),
     figure('Drift', perMinute(drift.rateArcsecPerSecond), '″/min', true),
-    figure('Left after the fit, RMS', { value: residual.rmsArcsec, stderr: null }, '″'),
+    figure('Left after the fit, RMS', shown({ value: residual.rmsArcsec, stderr: null }), unit),
   ]
 }
 

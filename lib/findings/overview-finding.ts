@@ -1,5 +1,5 @@
+import { PLAIN_DISPLAY, formatDisplacement, sizedDisplacement, type Display } from '@/lib/display-units'
 import type { OverviewFigures } from '@/lib/schemas/kept-figures'
-import { formatEstimate } from '@/lib/units'
 import { finding, worm, type Finding } from './finding'
 import type { HistoryPoint } from './project-history'
 import { arcsec, capitalised, counted } from './words'
@@ -11,10 +11,13 @@ interface OverviewState {
   history: readonly HistoryPoint[]
   /** Figures of the last point of the history, once they are there. */
   latest: OverviewFigures | null
+  /** Of the run that the latest figures are of. */
+  display?: Display
 }
 
 /** The sentence over a project: what its worm does now. */
-export function overviewFinding({ name, runCount, analysisCount, history, latest }: OverviewState): Finding {
+export function overviewFinding(state: OverviewState): Finding {
+  const { name, runCount, analysisCount, history, latest, display = PLAIN_DISPLAY } = state
   if (runCount === 0) return finding`${name} has no recording yet`
   if (analysisCount === 0) {
     return finding`${capitalised(counted(runCount, 'run'))} of ${name} ${runCount === 1 ? 'waits' : 'wait'} for a first analysis`
@@ -22,8 +25,8 @@ export function overviewFinding({ name, runCount, analysisCount, history, latest
   const last = history.at(-1)
   if (!last) return finding`None of the analyses of ${name} has a figure for the worm yet`
   const swing = latest?.worm
-    ? formatEstimate(latest.worm.peakToPeakArcsec, { unit: '″' })
-    : arcsec(last.peakToPeakArcsec)
+    ? formatDisplacement(latest.worm.peakToPeakArcsec, display)
+    : sizedDisplacement(last.peakToPeakArcsec, display)
   return finding`The worm swings the axis ${worm(swing)} peak to peak in the latest analysed run`
 }
 

@@ -1,4 +1,5 @@
 import type { Recipe } from '@/lib/analysis/types'
+import type { Display } from '@/lib/display-units'
 import { formatNumber } from '@/lib/units'
 
 const SMALL = ['no', 'one', 'two', 'three', 'four', 'five', 'six', 'seven', 'eight', 'nine', 'ten', 'eleven', 'twelve']
@@ -58,6 +59,11 @@ export function arcsec(value: number): string {
   const size = Math.abs(value)
   const decimals = size >= 100 ? 0 : size >= 1 ? 1 : size >= 0.1 || size === 0 ? 2 : 3
   return formatNumber(value, decimals, { unit: '″' })
+}
+
+/** Behind a swing’s size in a sentence that would else be read as an amplitude. */
+export function fromEndToEnd({ swingMeasure }: Pick<Display, 'swingMeasure'>): string {
+  return swingMeasure === 'peak-to-peak' ? ' from end to end' : ''
 }
 
 export function degrees(value: number): string {
