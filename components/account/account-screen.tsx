@@ -2,12 +2,12 @@
 
 import { useState } from 'react'
 import { PageHeading } from '@/components/shell/page-heading'
-import { ThemeSwitch } from '@/components/shell/theme-switch'
 import { Button } from '@/components/ui/button'
 import { Notice } from '@/components/ui/notice'
 import { FactRow, SheetSection } from '@/components/ui/sheet-section'
 import { sendOnly } from '@/lib/client/fetcher'
 import { openAfresh } from '@/lib/client/open-afresh'
+import { DisplaySection } from './display-section'
 
 export function AccountScreen({ user }: { user: { displayName: string; email: string } }) {
   const [fault, setFault] = useState<string | null>(null)
@@ -43,13 +43,7 @@ export function AccountScreen({ user }: { user: { displayName: string; email: st
           </FactRow>
         </dl>
       </SheetSection>
-      <SheetSection title="Theme" question="Remembered in this browser.">
-        <ThemeSwitch />
-        <p className="mt-3 max-w-[70ch] text-soft">
-          Night is for use at the telescope: nothing on the page has any green or blue in it, so that your eyes stay
-          adapted to the dark. Dialogs of the system, such as the one that picks a file, can’t be tinted.
-        </p>
-      </SheetSection>
+      <DisplaySection />
     </>
   )
 }

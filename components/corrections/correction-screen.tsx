@@ -10,7 +10,7 @@ import type { DataColumn } from '@/components/ui/data-table-model'
 import { FigureStrip, type KeyFigure } from '@/components/ui/figure-strip'
 import { Notice } from '@/components/ui/notice'
 import { FactRow, SheetSection } from '@/components/ui/sheet-section'
-import { formatDay } from '@/lib/client/dates'
+import { useDates } from '@/lib/client/display'
 import { useCorrection, useProject } from '@/lib/client/project-data'
 import { TABLE_CAUTIONS } from '@/lib/findings/correction-finding'
 import { findingText } from '@/lib/findings/finding'
@@ -129,6 +129,7 @@ function CorrectionPage({ correction, projectName }: { correction: Correction; p
 }
 
 function Origin({ correction }: { correction: Correction }) {
+  const { day } = useDates()
   const base = `/projects/${correction.projectId}`
   return (
     <>
@@ -149,7 +150,7 @@ function Origin({ correction }: { correction: Correction }) {
           <span className="font-sans">{correction.createdBy}</span>
         </FactRow>
         <FactRow name="on">
-          <span className="font-sans">{formatDay(correction.createdAt)}</span>
+          <span className="font-sans">{day(correction.createdAt)}</span>
         </FactRow>
       </dl>
     </>

@@ -1,5 +1,6 @@
 import Link from 'next/link'
-import { formatDay } from '@/lib/client/dates'
+import { useDates, useDisplay, usePreferences } from '@/lib/client/display'
+import { sizedSwing } from '@/lib/display-units'
 import { historyMarks } from '@/lib/figures/history-marks'
 import type { HistoryPoint } from '@/lib/findings/project-history'
 import { arcsec } from '@/lib/findings/words'
@@ -11,10 +12,14 @@ interface HistoryPictureProps {
   summary: string
 }
 
-/** The worm over the years: amplitude as filled dots, peak-to-peak as hollow squares. Each pair leads to its analysis. */
+/** The worm over the years: the fundamental’s swing as filled dots, peak-to-peak as hollow squares. Each pair leads to its analysis. */
 export function HistoryPicture({ projectId, history, summary }: HistoryPictureProps) {
-  const { points, ticks } = historyMarks(history)
-  const line = (top: 'amplitudeTop' | 'peakToPeakTop') => points.map((point) => `${point.left},${point[top]}`).join(' ')
+  const display = useDisplay()
+  const isInPixels = usePreferences().displacementUnit === 'px'
+  const { day } = useDates()
+  const { points, ticks } = historyMarks(history, display)
+  const swingName = display.swingMeasure === 'amplitude' ? 'worm amplitude' : 'worm’s fundamental, peak to peak'
+  const line = (top: 'swingTop' | 'peakToPeakTop') => points.map((point) => `${point.left},${point[top]}`).join(' ')
   return (
     <figure className="text-sm" aria-label={summary}>
       <p className="figures mb-2 pl-12 text-xs text-soft" aria-hidden="true">
@@ -49,16 +54,16 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
               vectorEffect="non-scaling-stroke"
             />
             <polyline
-              points={line('amplitudeTop')}
+              points={line('swingTop')}
               fill="none"
               strokeWidth="2"
               className="stroke-brass"
               vectorEffect="non-scaling-stroke"
             />
           </svg>
-          {points.map(({ left, amplitudeTop, peakToPeakTop }, index) => {
+          {points.map(({ left, swingTop, peakToPeakTop }, index) => {
             const point = history[index]
-            const text = `${point.runName}, ${formatDay(point.at)}: worm amplitude ${arcsec(point.wormAmplitudeArcsec)}, peak to peak ${arcsec(point.peakToPeakArcsec)}`
+            const text = `${point.runName}, ${day(point.at)}: ${swingName} ${sizedSwing(point.wormAmplitudeArcsec, display)}, ${display.swingMeasure === 'amplitude' ? 'peak to peak' : 'whole worm'} ${arcsec(point.peakToPeakArcsec)}`
             return (
               <Link
                 key={point.analysisId}
@@ -74,7 +79,7 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
                 />
                 <span
                   className="absolute left-1/2 size-2.5 -translate-1/2 rounded-full bg-brass-fill"
-                  style={{ top: `${100 * amplitudeTop}%` }}
+                  style={{ top: `${100 * swingTop}%` }}
                 />
               </Link>
             )
@@ -82,19 +87,22 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
         </div>
       </div>
       <div className="figures mt-1 ml-12 flex justify-between text-xs text-soft" aria-hidden="true">
-        <span>{formatDay(history[0].at)}</span>
-        {history.length > 1 ? <span>{formatDay(history[history.length - 1].at)}</span> : null}
+        <span>{day(history[0].at)}</span>
+        {history.length > 1 ? <span>{day(history[history.length - 1].at)}</span> : null}
       </div>
       <ul className="mt-3 flex flex-wrap gap-x-5 gap-y-1 text-soft">
         <li className="flex items-center gap-2">
           <span className="size-2.5 rounded-full bg-brass-fill" aria-hidden="true" />
-          worm amplitude
+          {swingName}
         </li>
         <li className="flex items-center gap-2">
           <span className="size-2.5 border-2 border-steel bg-card" aria-hidden="true" />
           peak to peak of the periodic part
         </li>
       </ul>
+      {isInPixels ? (
+        <p className="mt-2 text-soft">The history stays in arc seconds: a pixel is not the same from run to run.</p>
+      ) : null}
     </figure>
   )
 }

@@ -8,7 +8,7 @@ import { DataState } from '@/components/ui/data-state'
 import { EmptyState } from '@/components/ui/empty-state'
 import { FigureStrip } from '@/components/ui/figure-strip'
 import { FactRow, SheetSection } from '@/components/ui/sheet-section'
-import { formatDay } from '@/lib/client/dates'
+import { useDates, useDisplay } from '@/lib/client/display'
 import {
   useAnalyses,
   useAnalysis,
@@ -18,6 +18,7 @@ import {
   type AnalysisRow,
   type RunRow,
 } from '@/lib/client/project-data'
+import { swingFactor } from '@/lib/display-units'
 import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
 import { historyFinding, overviewFinding } from '@/lib/findings/overview-finding'
@@ -63,6 +64,8 @@ function Overview({ project, runs, analyses }: OverviewProps) {
   const kept = useAnalysis(project.id, last?.analysisId ?? null)
   const figures = overviewFiguresSchema.safeParse(kept.data?.result)
   const latest = figures.success ? figures.data : null
+  const display = useDisplay(kept.data?.recipe.conversion ?? null)
+  const { day } = useDates()
   const canEdit = project.role !== 'viewer'
   const title = overviewFinding({
     name: project.name,
@@ -70,6 +73,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
     analysisCount: analyses.length,
     history,
     latest,
+    display,
   })
   const upload = (
     <ButtonLink href={`${base}/runs/new`} variant="primary">
@@ -85,7 +89,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
         actions={canEdit && runs.length > 0 ? upload : null}
       />
       {latest?.worm && last ? (
-        <FigureStrip figures={overviewKeyFigures(latest)} label="Figures of the latest run" />
+        <FigureStrip figures={overviewKeyFigures(latest, display)} label="Figures of the latest run" />
       ) : null}
       {runs.length === 0 ? (
         <EmptyState title="Bring in a first recording" actions={canEdit ? upload : null}>
@@ -126,9 +130,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
                     {run.name}
                   </Link>
                   <span className="text-sm text-soft">
-                    {run.facts.startedAt
-                      ? `recorded ${formatDay(run.facts.startedAt)}`
-                      : `brought in ${formatDay(run.createdAt)}`}
+                    {run.facts.startedAt ? `recorded ${day(run.facts.startedAt)}` : `brought in ${day(run.createdAt)}`}
                     {', '}
                     {counted(run.analysisCount, 'analysis', 'analyses')}
                   </span>
@@ -148,6 +150,9 @@ function durationHint({ driveTrain: { wheelTeeth, wormStarts } }: Project): stri
 }
 
 function HistoryTable({ projectId, history }: { projectId: string; history: readonly HistoryPoint[] }) {
+  const display = useDisplay()
+  const { day } = useDates()
+  const isAmplitude = display.swingMeasure === 'amplitude'
   if (history.length === 0)
     return <p className="text-sm text-soft">The figures of each analysed run will stand here.</p>
   return (
@@ -159,10 +164,10 @@ function HistoryTable({ projectId, history }: { projectId: string; history: read
             recorded
           </th>
           <th scope="col" className="py-1.5 pl-2 text-right font-medium">
-            ampl. ″
+            {isAmplitude ? 'ampl. ″' : 'first p–p ″'}
           </th>
           <th scope="col" className="py-1.5 pl-2 text-right font-medium">
-            p–p ″
+            {isAmplitude ? 'p–p ″' : 'all p–p ″'}
           </th>
         </tr>
       </thead>
@@ -177,10 +182,12 @@ function HistoryTable({ projectId, history }: { projectId: string; history: read
                   href={`/projects/${projectId}/analyses/${point.analysisId}`}
                   className="hover:underline pointer-coarse:inline-block pointer-coarse:py-3"
                 >
-                  {formatDay(point.at)}
+                  {day(point.at)}
                 </Link>
               </th>
-              <td className="figures py-1.5 pl-2 text-right">{formatNumber(point.wormAmplitudeArcsec, 2)}</td>
+              <td className="figures py-1.5 pl-2 text-right">
+                {formatNumber(swingFactor(display) * point.wormAmplitudeArcsec, 2)}
+              </td>
               <td className="figures py-1.5 pl-2 text-right">{formatNumber(point.peakToPeakArcsec, 1)}</td>
             </tr>
           ))}

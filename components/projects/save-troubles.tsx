@@ -1,6 +1,6 @@
 import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { Notice } from '@/components/ui/notice'
-import { formatMinute } from '@/lib/client/dates'
+import { useDates } from '@/lib/client/display'
 import type { SaveConflict } from './use-save'
 
 interface SaveTroublesProps<Thing> {
@@ -15,13 +15,14 @@ interface SaveTroublesProps<Thing> {
 /** What stands in the way of saving, as useSave tells it; nothing when all is well. */
 export function SaveTroubles<Thing>(props: SaveTroublesProps<Thing>) {
   const { thing, fault, conflict, onKeepMine, onTakeTheirs } = props
+  const { minute } = useDates()
   return (
     <>
       {conflict ? (
         <ConflictNotice
           thing={thing}
           changedBy={conflict.changedBy}
-          changedAt={conflict.changedAt && formatMinute(conflict.changedAt)}
+          changedAt={conflict.changedAt && minute(conflict.changedAt)}
           onKeepMine={() => onKeepMine(conflict.current)}
           onTakeTheirs={() => onTakeTheirs(conflict.current)}
         />

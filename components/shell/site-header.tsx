@@ -22,7 +22,7 @@ export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
         </Link>
         <SiteNav isSignedIn={user !== null} />
         <div className="ml-auto flex min-w-0 items-center gap-4 max-sm:gap-2">
-          <ThemeSwitch serverTheme={serverTheme} />
+          <ThemeSwitch serverTheme={serverTheme} isSignedIn={user !== null} />
           {user ? (
             <Link
               href="/account"

@@ -1,7 +1,7 @@
 'use client'
 
 import { Segmented } from '@/components/ui/segmented'
-import { chooseTheme, useTheme } from '@/lib/client/theme'
+import { chooseTheme, keepThemeWithAccount, useTheme } from '@/lib/client/theme'
 import type { Theme } from '@/lib/client/theme-names'
 
 const options = [
@@ -10,7 +10,11 @@ const options = [
   { value: 'night', label: 'Night' },
 ] as const
 
-export function ThemeSwitch({ serverTheme }: { serverTheme?: Theme }) {
+export function ThemeSwitch({ serverTheme, isSignedIn }: { serverTheme?: Theme; isSignedIn: boolean }) {
   const theme = useTheme(serverTheme)
-  return <Segmented<Theme> label="Theme" value={theme} options={options} onValue={chooseTheme} />
+  function choose(chosen: Theme) {
+    chooseTheme(chosen)
+    if (isSignedIn) keepThemeWithAccount(chosen)
+  }
+  return <Segmented<Theme> label="Theme" value={theme} options={options} onValue={choose} />
 }

@@ -1,5 +1,5 @@
 import { sql, type Kysely } from 'kysely'
-import { DEFAULT_PREFERENCES, type Preferences } from '@/lib/schemas/preferences'
+import { DEFAULT_PREFERENCES, type Preferences, type PreferencesChange } from '@/lib/schemas/preferences'
 import type { Database } from '../schema'
 
 export interface NewUser {
@@ -36,4 +36,18 @@ export async function findPreferences(db: Kysely<Database>, userId: string): Pro
     .where('id', '=', userId)
     .executeTakeFirst()
   return row ?? DEFAULT_PREFERENCES
+}
+
+/** How everything is to be shown to this person from now on; gives the whole of it, or undefined where the account is gone. */
+export function updatePreferences(
+  db: Kysely<Database>,
+  userId: string,
+  change: PreferencesChange,
+): Promise<Preferences | undefined> {
+  return db
+    .updateTable('users')
+    .set(change)
+    .where('id', '=', userId)
+    .returning(['theme', 'swingMeasure', 'displacementUnit', 'timeZone'])
+    .executeTakeFirst()
 }

@@ -29,6 +29,15 @@ export const preferencesSchema = z.object({
   /** IANA name; null: the browser's own. */
   timeZone: z.string().min(1).max(64).refine(isTimeZone, { error: 'There is no time zone of this name' }).nullable(),
 })
+/** PATCH /api/account/preferences: what is to change; the rest stays. → 200 preferencesSchema. */
+export const preferencesChangeSchema = preferencesSchema
+  .partial()
+  .refine((change) => Object.keys(change).length > 0, { error: 'Say what is to be changed' })
+export type PreferencesChange = z.infer<typeof preferencesChangeSchema>
+
+/** The cookie that holds the theme of this browser, and how long it is kept. */
+export const THEME_COOKIE = { name: 'theme', maxAgeSeconds: 365 * 24 * 3600 }
+
 export type Preferences = z.infer<typeof preferencesSchema>
 
 export const DEFAULT_PREFERENCES: Preferences = {

@@ -27,7 +27,7 @@ test('historyMarks: time from left to right, the scale from zero', () => {
   })
   const { points, ticks } = historyMarks([at('01', 10), at('11', 20), at('21', 5)])
   expect(points[1].left - points[0].left).toBeCloseTo(points[2].left - points[1].left, 12)
-  expect(1 - points[0].amplitudeTop).toBeCloseTo((1 - points[0].peakToPeakTop) / 2, 12)
+  expect(1 - points[0].swingTop).toBeCloseTo((1 - points[0].peakToPeakTop) / 2, 12)
   expect(ticks[0]).toEqual({ top: 1, value: 0 })
   expect(historyMarks([at('01', 10)]).points[0].left).toBe(0.5)
 })
