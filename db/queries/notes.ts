@@ -1,11 +1,11 @@
 import { sql, type Kysely } from 'kysely'
-import { jsonArrayFrom } from 'kysely/helpers/postgres'
 import type { z } from 'zod'
-import type { newNoteSchema } from '@/lib/schemas/api'
+import type { newNoteSchema, Note } from '@/lib/schemas/api'
 import type { Database } from '../schema'
 import { hasRight, type ProjectAccess } from './access'
 import { findAnalysis } from './analyses'
 import { changedMeanwhile } from './changed-meanwhile'
+import { replaceMentions } from './note-mentions'
 import { Refusal, unknownThing } from './refusal'
 
 type NewNote = z.output<typeof newNoteSchema>
@@ -52,15 +52,19 @@ function notesOf(db: Kysely<Database>, access: ProjectAccess) {
       'updaters.displayName as updatedByName',
       'notes.resolvedAt',
       'resolvers.displayName as resolvedByName',
-      jsonArrayFrom(
-        eb
-          .selectFrom('noteMentions')
-          .innerJoin('users as named', 'named.id', 'noteMentions.userId')
-          .select(['named.id as userId', 'named.displayName'])
-          .whereRef('noteMentions.noteId', '=', 'notes.id')
-          .orderBy('named.displayName')
-          .orderBy('named.id'),
-      ).as('mentions'),
+      eb
+        .selectFrom('noteMentions')
+        .innerJoin('users as named', 'named.id', 'noteMentions.userId')
+        .whereRef('noteMentions.noteId', '=', 'notes.id')
+        // Keys within JSON are not translated to ours, so they are named here.
+        .select(
+          sql<Note['mentions']>`coalesce(
+            json_agg(json_build_object('userId', named.id, 'displayName', named.display_name)
+              order by named.display_name, named.id), '[]')`.as('mentions'),
+        )
+        .$asScalar()
+        .$notNull()
+        .as('mentions'),
     ])
 }
 
@@ -99,6 +103,7 @@ export async function insertNote(
     .values({ analysisId, text: note.text, ...anchorColumns(note.anchor), authorId: userId, updatedBy: userId })
     .returning('id')
     .executeTakeFirstOrThrow()
+  await replaceMentions(db, access, { noteId: id, userIds: note.mentions })
   return findNote(db, access, id)
 }
 
@@ -134,9 +139,40 @@ export async function updateNote(
     .where('version', '=', version)
     .returning('id')
     .executeTakeFirst()
+  if (updated) await replaceMentions(db, access, { noteId, userIds: note.mentions })
   const current = await findNote(db, access, noteId)
   if (updated) return current
   throw await changedMeanwhile(db, { table: 'notes', id: noteId, what: 'note', current })
+}
+
+export interface NoteResolution {
+  noteId: string
+  version: number
+  isResolved: boolean
+}
+
+/**
+ * Settles a note or takes it up again; only from the text that the person has read. The version stays as it is: whoever
+ * is changing the text meanwhile loses nothing by it. `isChanged` is false where it was so already.
+ */
+export async function resolveNote(
+  db: Kysely<Database>,
+  access: ProjectAccess<'edit'>,
+  { noteId, version, isResolved }: NoteResolution,
+) {
+  await findNote(db, access, noteId)
+  const { numUpdatedRows } = await db
+    .updateTable('notes')
+    .set(
+      isResolved ? { resolvedAt: sql<Date>`now()`, resolvedBy: access.userId } : { resolvedAt: null, resolvedBy: null },
+    )
+    .where('id', '=', noteId)
+    .where('version', '=', version)
+    .where('resolvedAt', isResolved ? 'is' : 'is not', null)
+    .executeTakeFirstOrThrow()
+  const note = await findNote(db, access, noteId)
+  if (note.version === version) return { note, isChanged: numUpdatedRows > 0 }
+  throw await changedMeanwhile(db, { table: 'notes', id: noteId, what: 'note', current: note })
 }
 
 export async function deleteNote(db: Kysely<Database>, access: ProjectAccess<'edit'>, noteId: string) {

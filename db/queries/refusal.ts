@@ -13,6 +13,7 @@ export type RefusalReason =
   | { kind: 'changed'; change: Change | null; current: unknown }
   | { kind: 'in-use' }
   | { kind: 'archived' }
+  | { kind: 'not-valid'; fields: Record<string, string> }
   | { kind: 'last-owner' }
   | { kind: 'already-member' }
   | { kind: 'already-invited'; current: unknown }

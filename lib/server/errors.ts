@@ -103,6 +103,8 @@ export function toAppError(error: unknown): AppError | undefined {
     case 'already-member':
     case 'link-ended':
       return new AppError(reason.kind, message)
+    case 'not-valid':
+      return new AppError('not-valid', message, { fields: reason.fields })
     case 'changed': {
       const { change, current } = reason
       return new AppError('changed-meanwhile', message, {

@@ -19,6 +19,7 @@ import * as analyses from '@/app/api/projects/[projectId]/analyses/route'
 import * as analysis from '@/app/api/projects/[projectId]/analyses/[analysisId]/route'
 import * as notes from '@/app/api/projects/[projectId]/analyses/[analysisId]/notes/route'
 import * as note from '@/app/api/projects/[projectId]/notes/[noteId]/route'
+import * as noteResolution from '@/app/api/projects/[projectId]/notes/[noteId]/resolution/route'
 import * as corrections from '@/app/api/projects/[projectId]/corrections/route'
 import * as correction from '@/app/api/projects/[projectId]/corrections/[correctionId]/route'
 import * as download from '@/app/api/projects/[projectId]/corrections/[correctionId]/download/route'
@@ -236,6 +237,17 @@ const cases: [string, Case][] = [
       status: 200,
       fresh: 'noteId',
       body: () => ({ ...anyNote, version: 1 }),
+    },
+  ],
+  [
+    "PUT notes/…/resolution (the owner's)",
+    {
+      method: 'PUT',
+      module: noteResolution,
+      may: EDIT,
+      status: 200,
+      fresh: 'noteId',
+      body: () => ({ version: 1, isResolved: true }),
     },
   ],
   ["DELETE notes/… (the owner's)", { method: 'DELETE', module: note, may: MANAGE, status: 204, fresh: 'noteId' }],
