@@ -1,45 +1,75 @@
 'use client'
 
 import { PageHeading } from '@/components/shell/page-heading'
+import { TitledCard } from '@/components/ui/card'
 import { DataState } from '@/components/ui/data-state'
-import { DataTable } from '@/components/ui/data-table'
-import type { DataColumn } from '@/components/ui/data-table-model'
-import { formatDay } from '@/lib/client/dates'
+import { Notice } from '@/components/ui/notice'
 import { useMembers, useProject, type Member } from '@/lib/client/project-data'
+import { useInvitations } from '@/lib/client/people-data'
 import { capitalised, counted } from '@/lib/findings/words'
 import { aRole, mayDo } from '@/lib/schemas/rights'
+import { InvitationsTable } from './invitations-table'
+import { InviteForm } from './invite-form'
+import { MembersTable } from './members-table'
 
-const columns: readonly DataColumn<Member>[] = [
-  { id: 'name', header: 'Name', value: ({ displayName }) => displayName },
-  { id: 'role', header: 'Role', value: ({ role }) => role },
-  { id: 'may', header: 'May', isSecondary: true, value: ({ role }) => mayDo(role) },
-  {
-    id: 'since',
-    header: 'Since',
-    value: ({ joinedAt }) => joinedAt,
-    cell: ({ joinedAt }) => formatDay(joinedAt),
-  },
-]
+interface PeopleScreenProps {
+  projectId: string
+  /** Who looks. */
+  userId: string
+}
 
-export function PeopleScreen({ projectId }: { projectId: string }) {
+export function PeopleScreen({ projectId, userId }: PeopleScreenProps) {
   const project = useProject(projectId)
   const { data, error, mutate } = useMembers(projectId)
+  const isOwner = project.data?.role === 'owner'
+  const invitations = useInvitations(projectId, isOwner)
+  const name = project.data?.name ?? 'Project'
   return (
     <DataState what="the people" data={data} error={error} onRetry={() => void mutate()}>
       {({ members }) => (
         <>
           <PageHeading
-            crumbs={[{ label: project.data?.name ?? 'Project', href: `/projects/${projectId}` }, { label: 'People' }]}
-            title={
-              members.length === 1
-                ? 'One person works on this mount'
-                : `${capitalised(counted(members.length, 'person', 'people'))} share this mount`
-            }
+            crumbs={[{ label: name, href: `/projects/${projectId}` }, { label: 'People' }]}
+            title={titleOf(members, invitations.data?.invitations.length ?? 0)}
             lead={project.data ? `You are ${aRole(project.data.role)} and may ${mayDo(project.data.role)}.` : undefined}
           />
-          <DataTable caption="people" columns={columns} rows={members} rowId={({ userId }) => userId} />
+          <MembersTable project={{ id: projectId, name }} userId={userId} isOwner={isOwner} members={members} />
+          {isOwner ? (
+            <>
+              <DataState
+                what="the invitations"
+                data={invitations.data}
+                error={invitations.error}
+                onRetry={() => void invitations.mutate()}
+              >
+                {(list) =>
+                  list.invitations.length > 0 ? (
+                    <InvitationsTable projectId={projectId} invitations={list.invitations} />
+                  ) : null
+                }
+              </DataState>
+              <TitledCard title="Invite somebody" className="max-w-3xl">
+                {project.data?.archivedAt ? (
+                  <Notice>
+                    This project is archived, so nobody can join. Open it again in its settings to invite people.
+                  </Notice>
+                ) : (
+                  <InviteForm projectId={projectId} />
+                )}
+              </TitledCard>
+            </>
+          ) : null}
         </>
       )}
     </DataState>
   )
+}
+
+function titleOf(members: readonly Member[], invitedCount: number): string {
+  const here =
+    members.length === 1
+      ? 'Only you work on this mount'
+      : `${capitalised(counted(members.length, 'person', 'people'))} share this mount`
+  if (invitedCount === 0) return here
+  return `${here}, and ${counted(invitedCount, 'invitation')} ${invitedCount === 1 ? 'waits' : 'wait'} for an answer`
 }

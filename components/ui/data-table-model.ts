@@ -18,6 +18,8 @@ export interface DataColumn<Row> {
   /** What is shown; the value itself where this is left out. */
   cell?: (row: Row) => ReactNode
   isNumeric?: boolean
+  /** Holds buttons or other controls: its head is only read out and sorts nothing. */
+  hasControls?: boolean
   /** Left out on a phone. */
   isSecondary?: boolean
 }

@@ -87,21 +87,25 @@ export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
                         column?.isSecondary && 'max-sm:hidden',
                       )}
                     >
-                      <button
-                        type="button"
-                        onClick={header.column.getToggleSortingHandler()}
-                        className={classNames(
-                          'inline-flex min-h-8 items-center gap-1 rounded-control whitespace-nowrap hover:text-ink pointer-coarse:min-h-11',
-                          // The arrow's place lies outside the figures, so that the head ends where they do.
-                          column?.isNumeric && 'flex-row-reverse',
-                          direction && 'text-ink',
-                        )}
-                      >
-                        {column?.header}
-                        <span aria-hidden="true" className="w-3">
-                          {direction === 'asc' ? '↑' : direction === 'desc' ? '↓' : ''}
-                        </span>
-                      </button>
+                      {column?.hasControls ? (
+                        <span className="sr-only">{column.header}</span>
+                      ) : (
+                        <button
+                          type="button"
+                          onClick={header.column.getToggleSortingHandler()}
+                          className={classNames(
+                            'inline-flex min-h-8 items-center gap-1 rounded-control whitespace-nowrap hover:text-ink pointer-coarse:min-h-11',
+                            // The arrow's place lies outside the figures, so that the head ends where they do.
+                            column?.isNumeric && 'flex-row-reverse',
+                            direction && 'text-ink',
+                          )}
+                        >
+                          {column?.header}
+                          <span aria-hidden="true" className="w-3">
+                            {direction === 'asc' ? '↑' : direction === 'desc' ? '↓' : ''}
+                          </span>
+                        </button>
+                      )}
                     </th>
                   )
                 })}

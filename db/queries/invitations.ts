@@ -25,6 +25,7 @@ function pendingInvitations(db: Kysely<Database>, access: ProjectAccess<'manage'
       sql<Invitation['mail']>`case when invitations.sent_at is not null then 'sent'
         when invitations.send_fault is not null then 'failing' else 'on-its-way' end`.as('mail'),
       'invitations.sentAt',
+      'invitations.sendFault as mailFault',
     ])
     .where('invitations.projectId', '=', access.projectId)
     .where('invitations.acceptedAt', 'is', null)

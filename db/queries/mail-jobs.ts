@@ -9,10 +9,11 @@ const MOST_ATTEMPTS = 20
 
 /**
  * Puts a mail into the queue; in a transaction it is sent only if that is committed. Nobody waits for the mail server, and
- * one that is down loses nothing.
+ * one that is down loses nothing. An invitation that waits is replaced, and so tried at once: whoever sends it again and
+ * again while the server is down causes one mail, not many whose links end each other.
  */
 export async function enqueueMail(db: Kysely<Database>, job: MailJob): Promise<void> {
-  await sql`select graphile_worker.add_job(${MAIL_TASK}, ${JSON.stringify(job)}::json, max_attempts => ${MOST_ATTEMPTS})`.execute(
-    db,
-  )
+  const key = job.kind === 'invitation' ? `invitation ${job.invitationId}` : null
+  await sql`select graphile_worker.add_job(${MAIL_TASK}, ${JSON.stringify(job)}::json,
+    max_attempts => ${MOST_ATTEMPTS}, job_key => ${key}::text)`.execute(db)
 }

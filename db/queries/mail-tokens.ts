@@ -82,4 +82,9 @@ export async function deleteExpiredMailTokens(db: Kysely<Database>): Promise<voi
       .where('expiresAt', '<=', sql<Date>`now()`)
       .execute()
   }
+  // Links of invitations say for some months what became of them.
+  await db
+    .deleteFrom('pastInvitationLinks')
+    .where('endedAt', '<=', sql<Date>`now() - interval '90 days'`)
+    .execute()
 }

@@ -22,7 +22,7 @@ export type CorrectionRow = z.output<typeof correctionListSchema>['corrections']
 export type Member = z.output<typeof memberListSchema>['members'][number]
 export type OpticsPreset = z.output<typeof opticsPresetListSchema>['presets'][number]
 
-const projectUrl = (projectId: string) => `/api/projects/${projectId}`
+export const projectKey = (projectId: string) => `/api/projects/${projectId}`
 
 export const projectsKey = '/api/projects'
 
@@ -33,19 +33,19 @@ export function useProjects() {
 }
 
 export function useProject(projectId: string) {
-  return useSWR<z.output<typeof projectSchema>, Error>(projectUrl(projectId), (url: string) =>
+  return useSWR<z.output<typeof projectSchema>, Error>(projectKey(projectId), (url: string) =>
     getJson(url, projectSchema),
   )
 }
 
 export function useRuns(projectId: string): SWRResponse<RunRow[], Error> {
-  return useSWR<RunRow[], Error>(`${projectUrl(projectId)}/runs`, (url: string) =>
+  return useSWR<RunRow[], Error>(`${projectKey(projectId)}/runs`, (url: string) =>
     getAllPages(url, runListSchema, (page) => page.runs),
   )
 }
 
 export function useAnalyses(projectId: string): SWRResponse<AnalysisRow[], Error> {
-  return useSWR<AnalysisRow[], Error>(`${projectUrl(projectId)}/analyses`, (url: string) =>
+  return useSWR<AnalysisRow[], Error>(`${projectKey(projectId)}/analyses`, (url: string) =>
     getAllPages(url, analysisListSchema, (page) => page.analyses),
   )
 }
@@ -53,33 +53,33 @@ export function useAnalyses(projectId: string): SWRResponse<AnalysisRow[], Error
 /** One analysis with its figures; nothing is asked while the id is not known. */
 export function useAnalysis(projectId: string, analysisId: string | null) {
   return useSWR<z.output<typeof analysisSchema>, Error>(
-    analysisId ? `${projectUrl(projectId)}/analyses/${analysisId}` : null,
+    analysisId ? `${projectKey(projectId)}/analyses/${analysisId}` : null,
     (url: string) => getJson(url, analysisSchema),
   )
 }
 
 export function useCorrections(projectId: string): SWRResponse<CorrectionRow[], Error> {
-  return useSWR<CorrectionRow[], Error>(`${projectUrl(projectId)}/corrections`, (url: string) =>
+  return useSWR<CorrectionRow[], Error>(`${projectKey(projectId)}/corrections`, (url: string) =>
     getAllPages(url, correctionListSchema, (page) => page.corrections),
   )
 }
 
 export function useCorrection(projectId: string, correctionId: string) {
   return useSWR<z.output<typeof correctionSchema>, Error>(
-    `${projectUrl(projectId)}/corrections/${correctionId}`,
+    `${projectKey(projectId)}/corrections/${correctionId}`,
     (url: string) => getJson(url, correctionSchema),
   )
 }
 
 export function useMembers(projectId: string) {
-  return useSWR<z.output<typeof memberListSchema>, Error>(`${projectUrl(projectId)}/members`, (url: string) =>
+  return useSWR<z.output<typeof memberListSchema>, Error>(`${projectKey(projectId)}/members`, (url: string) =>
     getJson(url, memberListSchema),
   )
 }
 
 export function useOpticsPresets(projectId: string) {
   return useSWR<z.output<typeof opticsPresetListSchema>, Error>(
-    `${projectUrl(projectId)}/optics-presets`,
+    `${projectKey(projectId)}/optics-presets`,
     (url: string) => getJson(url, opticsPresetListSchema),
   )
 }

@@ -19,9 +19,10 @@ export const invitationSchema = z.object({
   createdAt: instant,
   expiresAt: instant,
   isExpired: z.boolean(),
-  /** 'failing': the mail server does not take it; it is tried again and again. */
   mail: z.enum(['on-its-way', 'failing', 'sent']),
   sentAt: instant.nullable(),
+  /** Why it has not gone out yet and what comes of it, in words. */
+  mailFault: z.string().nullable(),
 })
 export type Invitation = z.infer<typeof invitationSchema>
 /** Those that wait for an answer, expired ones among them, the newest first. */

@@ -181,14 +181,23 @@ describe('the mail', () => {
     const { id } = await invited(newAddress())
     const set = (values: { sendFault: string | null; sentAt: Date | null }) =>
       database.db.updateTable('invitations').set(values).where('id', '=', id).execute()
-    await set({ sendFault: 'connect ECONNREFUSED', sentAt: null })
-    const [failing] = await pending()
-    expect(failing.mail).toBe('failing')
-    expect(JSON.stringify(failing)).not.toContain('ECONNREFUSED')
+    const mailFault = 'The mail server can’t be reached. The mail is sent by itself once it can.'
+    await set({ sendFault: mailFault, sentAt: null })
+    expect(await pending()).toMatchObject([{ mail: 'failing', mailFault }])
     const sentAt = new Date('2026-11-30T20:00:00.000Z')
     await set({ sendFault: null, sentAt })
     expect(await pending()).toMatchObject([{ mail: 'sent', sentAt: sentAt.toISOString() }])
-    expect(await (await sendAgain(id)).json()).toMatchObject({ mail: 'on-its-way', sentAt: null })
+    expect(await (await sendAgain(id)).json()).toMatchObject({
+      mail: 'on-its-way',
+      sentAt: null,
+      mailFault: null,
+    })
+  })
+
+  test('sending again while the first mail still waits leaves one mail in the queue', async () => {
+    const { id } = await invited(newAddress())
+    for (let count = 1; count <= 3; count += 1) expect((await sendAgain(id)).status).toBe(200)
+    expect(await queuedMails()).toEqual([{ kind: 'invitation', invitationId: id }])
   })
 
   test('sending again gives two weeks from now, and the old link ends when the new mail is written', async () => {
