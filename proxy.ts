@@ -40,6 +40,6 @@ export const config = {
   // Uploads stay outside: where the proxy matches, a handler gets only the first 10 MB of a body. The HTML part of a local
   // mail brings a policy of its own.
   matcher: [
-    '/((?!api/projects/[^/]+/runs|api/local-mail/[^/]+/html|_next/static|_next/image|icon.svg|favicon.ico|sample-run.csv).*)',
+    '/((?!api/projects/[^/]+/runs|api/projects/import|api/local-mail/[^/]+/html|_next/static|_next/image|icon.svg|favicon.ico|sample-run.csv).*)',
   ],
 }

@@ -75,10 +75,22 @@ export interface NewAnalysis {
   worm: AnalysisResult['worm']
 }
 
+/** The figures of the worm that lists show, taken out of a result. */
+export function wormColumns(worm: AnalysisResult['worm']) {
+  const fundamental = worm?.harmonics.find(({ order }) => order === 1)?.amplitudeArcsec
+  return {
+    wormPeriodSeconds: worm?.periodSeconds.value ?? null,
+    wormPeriodStderrSeconds: worm?.periodSeconds.stderr ?? null,
+    wormAmplitudeArcsec: fundamental?.value ?? null,
+    wormAmplitudeStderrArcsec: fundamental?.stderr ?? null,
+    peakToPeakArcsec: worm?.peakToPeakArcsec.value ?? null,
+    peakToPeakStderrArcsec: worm?.peakToPeakArcsec.stderr ?? null,
+  }
+}
+
 /** Keeps the analysis; the very same one, saved again by the same person, is kept once (an answer may have been lost). */
 export async function insertAnalysis(trx: Transaction<Database>, access: ProjectAccess<'edit'>, fields: NewAnalysis) {
   const { runId, name, recipe, result, samplesSha256, worm } = fields
-  const fundamental = worm?.harmonics.find(({ order }) => order === 1)?.amplitudeArcsec
   const recipeText = JSON.stringify(recipe)
   const resultText = JSON.stringify(result)
   const twin = await trx
@@ -104,12 +116,7 @@ export async function insertAnalysis(trx: Transaction<Database>, access: Project
       samplesSha256,
       recipe: recipeText,
       result: resultText,
-      wormPeriodSeconds: worm?.periodSeconds.value ?? null,
-      wormPeriodStderrSeconds: worm?.periodSeconds.stderr ?? null,
-      wormAmplitudeArcsec: fundamental?.value ?? null,
-      wormAmplitudeStderrArcsec: fundamental?.stderr ?? null,
-      peakToPeakArcsec: worm?.peakToPeakArcsec.value ?? null,
-      peakToPeakStderrArcsec: worm?.peakToPeakArcsec.stderr ?? null,
+      ...wormColumns(worm),
       createdBy: access.userId,
       updatedBy: access.userId,
     })

@@ -11,7 +11,7 @@ import { Refusal, unknownThing } from './refusal'
 type NewNote = z.output<typeof newNoteSchema>
 type Anchor = NewNote['anchor']
 
-function anchorColumns(anchor: Anchor) {
+export function anchorColumns(anchor: Anchor) {
   switch (anchor.kind) {
     case 'whole':
       return { anchorKind: anchor.kind, anchorValue: null }
@@ -24,7 +24,7 @@ function anchorColumns(anchor: Anchor) {
   }
 }
 
-function anchorOf(kind: Anchor['kind'], value: number | null): Anchor {
+export function anchorOf(kind: Anchor['kind'], value: number | null): Anchor {
   if (kind === 'whole' || value === null) return { kind: 'whole' }
   if (kind === 'time') return { kind, timeSeconds: value }
   return kind === 'period' ? { kind, periodSeconds: value } : { kind, angleDegrees: value }
@@ -49,9 +49,9 @@ function notesOf(db: Kysely<Database>, access: ProjectAccess) {
       sql<string>`coalesce(notes.author_name, users.display_name)`.as('authorName'),
       'notes.createdAt',
       'notes.updatedAt',
-      'updaters.displayName as updatedByName',
+      sql<string>`coalesce(notes.updated_by_name, updaters.display_name)`.as('updatedByName'),
       'notes.resolvedAt',
-      'resolvers.displayName as resolvedByName',
+      sql<string | null>`coalesce(notes.resolved_by_name, resolvers.display_name)`.as('resolvedByName'),
       eb
         .selectFrom('noteMentions')
         .innerJoin('users as named', 'named.id', 'noteMentions.userId')

@@ -5,7 +5,7 @@ import type { LastImport } from '../tables/projects'
 import { accessProject, type ProjectAccess } from './access'
 import { insertDriveTrain } from './drive-trains'
 import { changedMeanwhile } from './changed-meanwhile'
-import { unknownThing } from './refusal'
+import { Refusal, unknownThing } from './refusal'
 
 const count = (table: 'runs' | 'analyses' | 'memberships') =>
   sql<number>`(select count(*)::int from ${sql.table(table)} where project_id = projects.id)`
@@ -84,14 +84,19 @@ export async function insertProject(trx: Transaction<Database>, userId: string, 
 }
 
 /** Takes the next version number, or refuses when another change came first. */
-async function takeVersion(trx: Transaction<Database>, access: ProjectAccess, version: number, name?: string) {
+async function takeVersion(
+  trx: Transaction<Database>,
+  access: ProjectAccess,
+  version: number,
+  set: { name?: string; archivedAt?: Date | null; archivedBy?: string | null } = {},
+) {
   const updated = await trx
     .updateTable('projects')
     .set({
       version: sql<number>`version + 1`,
       updatedAt: sql<Date>`now()`,
       updatedBy: access.userId,
-      ...(name === undefined ? {} : { name }),
+      ...set,
     })
     .where('id', '=', access.projectId)
     .where('version', '=', version)
@@ -107,8 +112,51 @@ export async function updateProjectName(
   access: ProjectAccess<'manage'>,
   { version, name }: { version: number; name: string },
 ) {
-  await takeVersion(trx, access, version, name)
+  await takeVersion(trx, access, version, { name })
+  const renamed = await findProject(trx, access)
+  if (renamed.archivedAt) {
+    throw new Refusal({ kind: 'archived' }, 'This project is archived: open it again before you rename it')
+  }
+  return renamed
+}
+
+export async function updateArchived(
+  trx: Transaction<Database>,
+  access: ProjectAccess<'manage'>,
+  { version, isArchived }: { version: number; isArchived: boolean },
+) {
+  const set = isArchived
+    ? { archivedAt: new Date(), archivedBy: access.userId }
+    : { archivedAt: null, archivedBy: null }
+  await takeVersion(trx, access, version, set)
   return findProject(trx, access)
+}
+
+/** The project and everything in it, for good. */
+export async function deleteProject(trx: Transaction<Database>, access: ProjectAccess<'manage'>): Promise<void> {
+  await trx.deleteFrom('projects').where('id', '=', access.projectId).execute()
+}
+
+/** What goes when the project is deleted. */
+export function countContents(db: Kysely<Database>, access: ProjectAccess) {
+  const { projectId } = access
+  const of = (table: string, condition = sql`true`) =>
+    sql<number>`(select count(*)::int from ${sql.table(table)} where project_id = ${projectId} and ${condition})`
+  return db
+    .selectNoFrom([
+      of('runs').as('runCount'),
+      sql<number>`(select coalesce(sum(byte_length), 0)::float8 from runs where project_id = ${projectId})`.as(
+        'runBytes',
+      ),
+      of('analyses').as('analysisCount'),
+      sql<number>`(select count(*)::int from notes
+        join analyses on analyses.id = notes.analysis_id where analyses.project_id = ${projectId})`.as('noteCount'),
+      of('corrections').as('correctionCount'),
+      of('memberships').as('memberCount'),
+      of('share_links', sql`revoked_at is null and (expires_at is null or expires_at > now())`).as('shareLinkCount'),
+      of('invitations', sql`accepted_at is null and revoked_at is null and expires_at > now()`).as('invitationCount'),
+    ])
+    .executeTakeFirstOrThrow()
 }
 
 export async function replaceDriveTrain(

@@ -45,8 +45,12 @@ export interface NotesTable {
   createdAt: Generated<Date>
   updatedAt: Generated<Date>
   updatedBy: string
+  /** Who changed it last where it was brought in from, until somebody changes it here. */
+  updatedByName: string | null
   resolvedAt: Date | null
   resolvedBy: string | null
+  /** Who settled it where it was brought in from, until somebody does so here. */
+  resolvedByName: string | null
 }
 
 export interface NoteMentionsTable {

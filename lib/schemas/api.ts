@@ -79,6 +79,31 @@ export type Project = z.infer<typeof projectSchema>
 export const projectListSchema = z.object({ projects: z.array(projectSchema) })
 /** PATCH /api/projects/[projectId] (owner). */
 export const projectChangeSchema = z.object({ version, name })
+/** PUT /api/projects/[projectId]/archived (owner) → 200 projectSchema. Archived: everybody reads on, nobody changes anything. */
+export const projectArchivedSchema = z.object({ version, isArchived: z.boolean() })
+/** DELETE /api/projects/[projectId] (owner) → 204; 422 unless the name is the project's. */
+export const projectDeletionSchema = z.object({ name: z.string().max(120) })
+/** GET /api/projects/[projectId]/contents: what goes with the project when it is deleted. */
+export const projectContentsSchema = z.object({
+  runCount: z.number().int(),
+  /** Of the original files. */
+  runBytes: z.number().int(),
+  analysisCount: z.number().int(),
+  noteCount: z.number().int(),
+  correctionCount: z.number().int(),
+  /** The asker among them. */
+  memberCount: z.number().int(),
+  /** Share links that open something now. */
+  shareLinkCount: z.number().int(),
+  /** Invitations that could still be accepted. */
+  invitationCount: z.number().int(),
+})
+export type ProjectContents = z.infer<typeof projectContentsSchema>
+/*
+ * GET /api/projects/[projectId]/archive → the whole project as a ZIP (lib/schemas/archive.ts).
+ * POST /api/projects/import, such a ZIP as the body (at most 1 GB) → 201 projectSchema; 422 `bad-archive`, whose fields name
+ * the entries at fault.
+ */
 /** PUT /api/projects/[projectId]/drive-train (editor) → 200 projectSchema. A new dated version is kept beside the old ones. */
 export const driveTrainChangeSchema = z.object({ version, driveTrain: driveTrainSchema })
 

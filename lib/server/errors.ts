@@ -38,6 +38,7 @@ export const STATUS = {
   'upload-incomplete': 400,
   'too-large': 413,
   'not-valid': 422,
+  'bad-archive': 422,
   'no-table': 422,
   'sense-not-confirmed': 422,
   'too-many-attempts': 429,

@@ -5,8 +5,14 @@ import type { ProjectAccess } from '@/db/queries/access'
 import { listAuditEvents } from '@/db/queries/audit'
 import { listOpticsPresets } from '@/db/queries/optics-presets'
 import type { PageRequest } from '@/db/queries/page'
-import { findProject, listMembers, listProjects } from '@/db/queries/projects'
-import { auditEventListSchema, memberListSchema, opticsPresetListSchema, projectSchema } from '@/lib/schemas/api'
+import { countContents, findProject, listMembers, listProjects } from '@/db/queries/projects'
+import {
+  auditEventListSchema,
+  memberListSchema,
+  opticsPresetListSchema,
+  projectContentsSchema,
+  projectSchema,
+} from '@/lib/schemas/api'
 import { plain } from './plain'
 
 export async function loadProjects(userId: string) {
@@ -27,4 +33,8 @@ export async function loadOpticsPresets(access: ProjectAccess) {
 
 export async function loadAuditEvents(access: ProjectAccess, page: PageRequest) {
   return plain(auditEventListSchema, await listAuditEvents(database(), access, page))
+}
+
+export async function loadContents(access: ProjectAccess) {
+  return plain(projectContentsSchema, await countContents(database(), access))
 }

@@ -19,6 +19,10 @@ const LIMITS = {
   'invitation link address': { most: 30, windowSeconds: QUARTER_HOUR },
   'upload account': { most: 300, windowSeconds: HOUR },
   'upload address': { most: 600, windowSeconds: HOUR },
+  'archive download account': { most: 60, windowSeconds: HOUR },
+  'archive download address': { most: 120, windowSeconds: HOUR },
+  'archive import account': { most: 30, windowSeconds: HOUR },
+  'archive import address': { most: 60, windowSeconds: HOUR },
 } as const
 
 const SHARED_FACTOR = 20

@@ -8,6 +8,7 @@ import { bodyParts } from './body'
 import { AppError, errorResponse } from './errors'
 import { assertOwnOrigin } from './origin'
 import { plain } from './plain'
+import { isStorable } from './storable'
 
 /** What Next.js hands to a handler beside the request: the parts of its address. */
 export interface RouteContext<Name extends string> {
@@ -86,13 +87,6 @@ export async function readJson<Schema extends z.ZodType>(request: Request, schem
     )
   }
   return schema.parse(value)
-}
-
-/** Whether no text in it holds what PostgreSQL takes neither as text nor in JSON: NUL and single surrogates. */
-function isStorable(value: unknown): boolean {
-  if (typeof value === 'string') return !/\0|\p{Surrogate}/u.test(value)
-  if (value === null || typeof value !== 'object') return true
-  return Object.entries(value).every(([key, item]) => isStorable(key) && isStorable(item))
 }
 
 /** Answers a value in the form that the schema promises; nothing that the schema does not name leaves the server. */

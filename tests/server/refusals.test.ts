@@ -1,6 +1,9 @@
 import { beforeAll, describe, expect, test } from 'vitest'
 import * as projects from '@/app/api/projects/route'
 import * as project from '@/app/api/projects/[projectId]/route'
+import * as archive from '@/app/api/projects/[projectId]/archive/route'
+import * as archived from '@/app/api/projects/[projectId]/archived/route'
+import * as contents from '@/app/api/projects/[projectId]/contents/route'
 import * as driveTrain from '@/app/api/projects/[projectId]/drive-train/route'
 import * as members from '@/app/api/projects/[projectId]/members/route'
 import * as member from '@/app/api/projects/[projectId]/members/[userId]/route'
@@ -113,6 +116,17 @@ const cases: [string, Case][] = [
     // A version from before: whoever may change it learns that it was changed, the others nothing.
     { method: 'PATCH', module: project, may: MANAGE, status: 409, body: () => ({ version: 999, name: 'New' }) },
   ],
+  [
+    'DELETE project',
+    // Another name than the project's: whoever may delete it is asked for the right one.
+    { method: 'DELETE', module: project, may: MANAGE, status: 422, body: () => ({ name: 'Another mount' }) },
+  ],
+  [
+    'PUT archived',
+    { method: 'PUT', module: archived, may: MANAGE, status: 409, body: () => ({ version: 999, isArchived: true }) },
+  ],
+  ['GET archive', { method: 'GET', module: archive, may: READ, status: 200 }],
+  ['GET contents', { method: 'GET', module: contents, may: READ, status: 200 }],
   [
     'PUT drive-train',
     {
@@ -295,6 +309,9 @@ describe.each(cases)('%s', (_, item) => {
       expect(await response.json()).toEqual({
         error: expect.objectContaining({ code: expect.any(String), message: expect.any(String) }),
       })
+    } else {
+      // A download that nobody reads would hold its connection.
+      await response.body?.cancel()
     }
   })
 

@@ -1,9 +1,10 @@
 import { database } from '@/db'
-import { insertAuditEvent } from '@/db/queries/audit'
-import { updateProjectName } from '@/db/queries/projects'
-import { projectChangeSchema, projectSchema } from '@/lib/schemas/api'
+import { insertAccountEvent, insertAuditEvent } from '@/db/queries/audit'
+import { deleteProject, findProject, updateProjectName } from '@/db/queries/projects'
+import { projectChangeSchema, projectDeletionSchema, projectSchema } from '@/lib/schemas/api'
+import { AppError } from '@/lib/server/errors'
 import { loadProject } from '@/lib/server/load-projects'
-import { answer, readJson, respondInProject, type RouteContext } from '@/lib/server/respond'
+import { answer, answerNothing, readJson, respondInProject, type RouteContext } from '@/lib/server/respond'
 
 type Context = RouteContext<'projectId'>
 
@@ -24,5 +25,24 @@ export function PATCH(request: Request, context: Context) {
         return renamed
       })
     return answer(projectSchema, project)
+  })
+}
+
+/** The event stays in the account's own trail: the project's goes with it. */
+export function DELETE(request: Request, context: Context) {
+  return respondInProject({ request, context, right: 'manage' }, async ({ access, user }) => {
+    const typed = await readJson(request, projectDeletionSchema)
+    await database()
+      .transaction()
+      .execute(async (trx) => {
+        const { name } = await findProject(trx, access)
+        if (typed.name.trim() !== name) {
+          const message = `Type the name as it stands: “${name}”. Nothing was deleted.`
+          throw new AppError('not-valid', message, { fields: { name: message } })
+        }
+        await deleteProject(trx, access)
+        await insertAccountEvent(trx, user.id, { action: 'project.delete', subject: name })
+      })
+    return answerNothing()
   })
 }
