@@ -1,6 +1,6 @@
 import type { Metadata } from 'next'
+import { headers } from 'next/headers'
 import { notFound } from 'next/navigation'
-import { connection } from 'next/server'
 import { LocalMailScreen } from '@/components/local-mail/local-mail-screen'
 import { PageFrame } from '@/components/shell/page-frame'
 import { openLocalMailFolder } from '@/lib/server/local-mail'
@@ -8,8 +8,7 @@ import { openLocalMailFolder } from '@/lib/server/local-mail'
 export const metadata: Metadata = { title: 'Local mail', robots: { index: false } }
 
 export default async function LocalMailPage() {
-  await connection()
-  if (!openLocalMailFolder()) notFound()
+  if (!openLocalMailFolder(await headers())) notFound()
   return (
     <PageFrame>
       <LocalMailScreen />

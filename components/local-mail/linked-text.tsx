@@ -1,13 +1,12 @@
 import { Fragment } from 'react'
-
-const ADDRESS = /(https?:\/\/\S+)/
+import { splitAtAddresses } from '@/lib/mail/addresses-in'
 
 /** The text part of a mail as it is, its addresses as links that open in this tab. */
 export function LinkedText({ text }: { text: string }) {
   return (
     <pre className="font-mono text-sm break-words whitespace-pre-wrap">
-      {text.split(ADDRESS).map((part, index) =>
-        ADDRESS.test(part) ? (
+      {splitAtAddresses(text).map(({ part, isAddress }, index) =>
+        isAddress ? (
           <a key={index} href={part} className="link break-all">
             {part}
           </a>

@@ -11,7 +11,10 @@ interface MailListProps {
 /** Newest first; each a button, since it opens beside the list. */
 export function MailList({ mails, selected, onSelect }: MailListProps) {
   return (
-    <ul aria-label="Mails" className="overflow-hidden rounded-card border border-rule bg-card">
+    <ul
+      aria-label="Mails"
+      className="max-h-72 overflow-y-auto rounded-card border border-rule bg-card lg:max-h-[48rem]"
+    >
       {mails.map(({ name, to, subject, at }) => (
         <li key={name} className="border-b border-rule last:border-b-0">
           <button

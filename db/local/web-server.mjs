@@ -1,12 +1,13 @@
 import { spawn } from 'node:child_process'
+import { join } from 'node:path'
 import { pause, SetUpError } from './processes.mjs'
-import { nextProgram } from './sources.mjs'
 
 /** Starts Next.js and waits until it and the database behind it answer. */
 export async function startWebServer({ root, port, env, isDevelopment = false, stdio = 'inherit' }) {
-  const args = [nextProgram(root), isDevelopment ? 'dev' : 'start', '--port', String(port)]
-  // Not npx, and not through a shell: the process that we end must be the server itself.
-  const child = spawn(process.execPath, args, { cwd: root, env, stdio })
+  const args = [join(root, 'db', 'local', 'serve.mjs'), ...(isDevelopment ? ['--dev'] : [])]
+  const serverEnv = { ...env, PORT: String(port), NODE_ENV: isDevelopment ? 'development' : 'production' }
+  // Not through a shell: the process that we end must be the server itself.
+  const child = spawn(process.execPath, args, { cwd: root, env: serverEnv, stdio })
   const ended = new Promise((resolve) => {
     child.on('error', () => resolve(1))
     child.on('exit', (code, signal) => resolve(code ?? (signal ? 0 : 1)))

@@ -4,27 +4,28 @@ import { join } from 'node:path'
 import { simpleParser, type AddressObject } from 'mailparser'
 import { instantOfLocalMail, isLocalMailName, listLocalMails } from '@/db/mail/local-mail-folder'
 import type { LocalMail } from '@/lib/schemas/local-mail'
+import { addressesIn } from '@/lib/mail/addresses-in'
+import { isFromThisMachine } from './client-address'
 import { environment } from './environment'
 import { AppError } from './errors'
 
 const LOOPBACK_HOST = /^(localhost|127(\.\d{1,3}){3}|\[::1\])$/
 
-/** The folder of the local mails, or null where there are none to be seen: mail goes out, or this is a public address. */
-export function openLocalMailFolder(): string | null {
+/**
+ * The folder of the local mails, or null where there are none to be seen: mail really goes out, people use a public
+ * address, or the asker sits at another machine. Whoever reads these mails can take over any account.
+ */
+export function openLocalMailFolder(headers: Headers): string | null {
   const { localMailFolder, baseOrigin } = environment()
   const isPublic = baseOrigin !== null && !LOOPBACK_HOST.test(new URL(baseOrigin).hostname)
-  return isPublic ? null : localMailFolder
+  return isPublic || !isFromThisMachine(headers) ? null : localMailFolder
 }
 
 /** @throws {AppError} not-found where there is no such folder */
-export function localMailFolder(): string {
-  const folder = openLocalMailFolder()
-  if (!folder) throw noSuchThing()
+export function localMailFolder(request: Request): string {
+  const folder = openLocalMailFolder(request.headers)
+  if (!folder) throw new AppError('not-found', 'There is nothing at this address')
   return folder
-}
-
-function noSuchThing(): AppError {
-  return new AppError('not-found', 'There is nothing at this address')
 }
 
 type ParsedMail = LocalMail & { html: string | null }
@@ -34,7 +35,9 @@ const parsed = new Map<string, ParsedMail>()
 
 function addressText(address: AddressObject | AddressObject[] | undefined): string {
   const all = address === undefined ? [] : Array.isArray(address) ? address : [address]
-  return all.map(({ text }) => text).join(', ')
+  return all
+    .flatMap(({ value }) => value.map(({ name, address }) => (name ? `${name} <${address}>` : address)))
+    .join(', ')
 }
 
 async function parseMail(folder: string, name: string): Promise<ParsedMail> {
@@ -52,7 +55,7 @@ async function parseMail(folder: string, name: string): Promise<ParsedMail> {
     text: plainText,
     html: html || null,
     hasHtml: Boolean(html),
-    links: [...new Set(plainText.match(/https?:\/\/\S+/g))],
+    links: addressesIn(plainText),
   }
   parsed.set(path, mail)
   return mail

@@ -2,7 +2,7 @@ import 'server-only'
 import { createHash } from 'node:crypto'
 import { database } from '@/db'
 import { countAttempt, type Limit } from '@/db/queries/rate-limits'
-import { environment } from './environment'
+import { askerOf } from './client-address'
 import { AppError } from './errors'
 
 const QUARTER_HOUR = 900
@@ -29,15 +29,6 @@ const SHARED_FACTOR = 20
 
 export type LimitName = keyof typeof LIMITS
 
-/**
- * The asker's network address as our proxy saw it: the last entry of x-forwarded-for. Without TRUST_PROXY that header may
- * be the asker's own invention, and a handler sees no other address: null.
- */
-function addressOf(request: Request): string | null {
-  if (!environment().isProxyTrusted) return null
-  return request.headers.get('x-forwarded-for')?.split(',').at(-1)?.trim() || null
-}
-
 /** Accounts and addresses are kept as hashes: the counters need to tell them apart, not to know them. */
 function limitOf(name: LimitName, who: string | null): Limit {
   const { most, windowSeconds } = LIMITS[name]
@@ -46,7 +37,7 @@ function limitOf(name: LimitName, who: string | null): Limit {
 }
 
 export function addressLimit(name: LimitName, request: Request): Limit {
-  return limitOf(name, addressOf(request))
+  return limitOf(name, askerOf(request.headers))
 }
 
 export function accountLimit(name: LimitName, account: string): Limit {

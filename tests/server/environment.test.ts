@@ -39,6 +39,7 @@ test('what is left empty is not given', () => {
     smtpUrl: null,
     localMailFolder: null,
     isProxyTrusted: false,
+    isAddressMarked: false,
   }
   expect(parseEnvironment(given)).toEqual(nothing)
   expect(settingFaults(given)).toEqual([])

@@ -5,9 +5,9 @@ import { answer, answerNothing, respond, respondToMutation } from '@/lib/server/
 
 export const dynamic = 'force-dynamic'
 
-export function GET() {
+export function GET(request: Request) {
   return respond(async () => {
-    const folder = localMailFolder()
+    const folder = localMailFolder(request)
     return answer(localMailListSchema, {
       isRefusing: isLocalMailRefusing(folder),
       mails: await readLocalMails(folder),
@@ -17,7 +17,7 @@ export function GET() {
 
 export function DELETE(request: Request) {
   return respondToMutation(request, async () => {
-    await deleteLocalMails(localMailFolder())
+    await deleteLocalMails(localMailFolder(request))
     return answerNothing()
   })
 }

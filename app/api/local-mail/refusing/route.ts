@@ -5,7 +5,7 @@ import { answer, readJson, respondToMutation } from '@/lib/server/respond'
 
 export function PUT(request: Request) {
   return respondToMutation(request, async () => {
-    const folder = localMailFolder()
+    const folder = localMailFolder(request)
     const { isRefusing } = await readJson(request, localMailRefusingSchema)
     await setLocalMailRefusing(folder, isRefusing)
     return answer(localMailRefusingSchema, { isRefusing })

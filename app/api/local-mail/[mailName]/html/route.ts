@@ -10,10 +10,10 @@ const POLICY = [
   "frame-ancestors 'self'",
 ].join('; ')
 
-export function GET(_request: Request, context: RouteContext<'/api/local-mail/[mailName]/html'>) {
+export function GET(request: Request, context: RouteContext<'/api/local-mail/[mailName]/html'>) {
   return respond(async () => {
     const { mailName } = await context.params
-    const { html } = await readLocalMail(localMailFolder(), mailName)
+    const { html } = await readLocalMail(localMailFolder(request), mailName)
     if (html === null) throw new AppError('not-found', 'This mail has no HTML part')
     const headers = {
       'content-type': 'text/html; charset=utf-8',

@@ -1,0 +1,51 @@
+import { createServer } from 'node:http'
+import next from 'next'
+
+/*
+ * Next.js behind a plain server of Node's, which tells the handlers from where a request really came: Next.js itself hands
+ * on only headers, and those the asker can invent. lib/server/client-address.ts reads what is set here.
+ *
+ * `node db/local/serve.mjs [--dev]`, with PORT.
+ */
+
+const ADDRESS_HEADER = 'x-turnwright-address'
+
+const isDevelopment = process.argv.includes('--dev')
+const port = Number(process.env.PORT)
+// Without this word, a request that names the header is a liar.
+process.env.TURNWRIGHT_MARKS_ADDRESS = '1'
+
+const server = createServer()
+const app = next({ dev: isDevelopment, port, httpServer: server })
+await app.prepare()
+const handle = app.getRequestHandler()
+
+server.on('request', (request, response) => {
+  request.headers[ADDRESS_HEADER] = request.socket.remoteAddress ?? ''
+  handle(request, response).catch((error) => {
+    console.error(error)
+    if (!response.headersSent) response.writeHead(500)
+    response.end()
+  })
+})
+server.on('error', (error) => {
+  console.error(error.message)
+  process.exit(1)
+})
+server.listen(port)
+
+let isStopping = false
+
+/** Takes nothing new, lets what is being answered be answered, then ends. */
+async function stop() {
+  if (isStopping) return
+  isStopping = true
+  const closed = new Promise((resolve) => server.close(resolve))
+  // Pages under development keep a connection open for as long as they are shown.
+  if (isDevelopment) server.closeAllConnections()
+  await closed
+  await app.close()
+  process.exit(0)
+}
+
+for (const signal of ['SIGINT', 'SIGTERM']) process.on(signal, () => void stop())
