@@ -1,4 +1,5 @@
 import { GUIDING_OPTIONS, SIDE_OF_PIER_OPTIONS, TRACKING_RATE_OPTIONS } from '@/components/runs/fact-options'
+import { StartTimeField } from '@/components/runs/start-time-field'
 import { Field } from '@/components/ui/field'
 import { NumberField } from '@/components/ui/number-input'
 import { Select } from '@/components/ui/select'
@@ -17,6 +18,11 @@ export function NightFields({ facts, onFacts }: NightFieldsProps) {
     <details className="rounded-control border border-rule px-4 py-2.5">
       <summary className="font-medium">More about the night, for comparing runs later</summary>
       <div className="mt-3 mb-1 grid grid-cols-2 gap-3 max-sm:grid-cols-1">
+        <StartTimeField
+          value={facts.startedAt}
+          onValue={(startedAt) => change({ startedAt })}
+          emptyHint="Left empty, the file’s own time counts, if it has one."
+        />
         <Field label="Guiding">
           {(control) => (
             <Select

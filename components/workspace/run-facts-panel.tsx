@@ -10,6 +10,7 @@ import {
   SIDE_OF_PIER_OPTIONS,
   TRACKING_RATE_OPTIONS,
 } from '@/components/runs/fact-options'
+import { StartTimeField } from '@/components/runs/start-time-field'
 import { Button, ButtonAnchor } from '@/components/ui/button'
 import { TitledCard } from '@/components/ui/card'
 import { Actions, Dialog } from '@/components/ui/dialog'
@@ -18,7 +19,7 @@ import { focusFirstInvalid } from '@/components/ui/focus-first-invalid'
 import { NumberField } from '@/components/ui/number-input'
 import { Select, type SelectOption } from '@/components/ui/select'
 import { TextInput } from '@/components/ui/text-input'
-import { formatDayAndTime } from '@/lib/client/dates'
+import { useDates } from '@/lib/client/display'
 import { sendJson } from '@/lib/client/fetcher'
 import { runSchema, type Run } from '@/lib/schemas/api'
 import type { RunFacts } from '@/lib/schemas/run-facts'
@@ -37,6 +38,7 @@ const CHOICES: Record<Choice, { label: string; options: readonly SelectOption[] 
 export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) {
   const [isEditing, setEditing] = useState(false)
   const { facts } = run
+  const { dayAndTimeWithZone } = useDates()
   return (
     <>
       <TitledCard
@@ -51,7 +53,7 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
         }
       >
         <dl className="grid grid-cols-3 gap-x-8 gap-y-2 max-lg:grid-cols-2 max-sm:grid-cols-1">
-          <Fact term="Recorded">{facts.startedAt ? `${formatDayAndTime(facts.startedAt)} UTC` : 'not known'}</Fact>
+          <Fact term="Recorded">{facts.startedAt ? dayAndTimeWithZone(facts.startedAt) : 'not known'}</Fact>
           <Fact term="Hour angle">
             {facts.hourAngleDegrees === null ? 'not known' : degrees(facts.hourAngleDegrees, '°')}
           </Fact>
@@ -133,6 +135,7 @@ function FactsForm({ run, onClose }: { run: Run; onClose: () => void }) {
           />
         )}
       </Field>
+      <StartTimeField value={facts.startedAt} onValue={(startedAt) => change({ startedAt })} />
       <div className="grid grid-cols-2 gap-3 max-sm:grid-cols-1">
         {(Object.keys(CHOICES) as Choice[]).map((key) => (
           <Field key={key} label={CHOICES[key].label}>

@@ -4,6 +4,8 @@ import { useState } from 'react'
 import { afterEach, beforeEach, describe, expect, test, vi } from 'vitest'
 import { Bench, type BenchProps } from '@/components/bench/bench'
 import type { Recipe } from '@/lib/analysis/types'
+import { DisplayProvider } from '@/lib/client/display'
+import { DEFAULT_PREFERENCES } from '@/lib/schemas/preferences'
 import { exampleNotes, exampleOutcome, exampleRecipe, exampleResult } from '../support/example-outcome'
 
 // Plotly needs a real browser; the pictures' figures have tests of their own.
@@ -255,4 +257,54 @@ test('a long computation shows what it does after 200 ms, and can be cancelled',
   ).toBe('40')
   fireEvent.click(screen.getByRole('button', { name: 'Cancel' }))
   expect(onCancel).toHaveBeenCalledOnce()
+})
+
+describe('the display of a person', () => {
+  function show(preferences: Partial<typeof DEFAULT_PREFERENCES>, initial = exampleRecipe()) {
+    const onRecipe = vi.fn()
+    render(
+      <DisplayProvider preferences={{ ...DEFAULT_PREFERENCES, ...preferences }}>
+        <Harness initial={initial} onRecipe={onRecipe} />
+      </DisplayProvider>,
+    )
+    return { onRecipe }
+  }
+  const heads = (name: string, caption: string) =>
+    within(within(stage(name)).getByRole('table', { name: caption }))
+      .getAllByRole('columnheader')
+      .map(({ textContent }) => textContent)
+
+  test('peak-to-peak in pixels stands in every head and figure of a swing, and is said once', () => {
+    show({ swingMeasure: 'peak-to-peak', displacementUnit: 'px' })
+    expect(heads('Harmonics', 'Worm harmonics')).toEqual(['order', 'peak-to-peak px', 'phase °'])
+    expect(heads('Spectrum', 'Lines beside the worm')[3]).toBe('peak-to-peak px')
+    expect(heads('Turn', 'Each turn foretold by the other five')).toEqual(['turn', 'RMS px', 'left px', 'less'])
+    expect(within(stage('Harmonics')).getByRole('cell', { name: '9.370 ± .054' })).toBeTruthy()
+    expect(within(stage('Harmonics')).getByText(/^rim 9\.37\spx$/)).toBeTruthy()
+    expect(
+      screen.getByText(/Swings are shown from peak to peak.*in pixels of this run, 1\.57″ of the axis each/),
+    ).toBeTruthy()
+    expect(within(stage('Spans')).getByText('21.2 px')).toBeTruthy()
+    // The correction keeps its own units.
+    expect(stage('Correction').textContent).toContain('″')
+    expect(stage('Correction').textContent).not.toMatch(/\dpx|\d\spx/)
+  })
+
+  test('without pixels of a known size it stays in arc seconds and says why', () => {
+    const initial = exampleRecipe()
+    show({ displacementUnit: 'px' }, { ...initial, conversion: { ...initial.conversion, displacementUnit: 'arcsec' } })
+    expect(heads('Harmonics', 'Worm harmonics')).toEqual(['order', 'ampl. ″', 'phase °'])
+    expect(screen.getByText(/this run has no pixels of a known size on the axis/)).toBeTruthy()
+  })
+
+  test('changes neither the recipe nor the address', () => {
+    const { onRecipe } = show({ swingMeasure: 'peak-to-peak', displacementUnit: 'px' })
+    expect(onRecipe).not.toHaveBeenCalled()
+    expect(window.location.search).toBe('')
+  })
+
+  test('the usual display says nothing of itself', () => {
+    show({})
+    expect(screen.queryByText(/are shown (in|from)/)).toBeNull()
+  })
 })
