@@ -2,6 +2,10 @@
 
 import { useCallback, useMemo, useState, type ReactNode } from 'react'
 import { FindingText } from '@/components/findings/finding-text'
+import { NoteLinkProvider } from '@/components/notes/note-link'
+import { NoteList } from '@/components/notes/note-list'
+import { numberNotes, type NoteActions } from '@/components/notes/note-types'
+import { useNewNote } from '@/components/notes/use-new-note'
 import { Button } from '@/components/ui/button'
 import { Card } from '@/components/ui/card'
 import { classNames } from '@/components/ui/class-names'
@@ -19,7 +23,6 @@ import { CorrectionStage } from './correction-stage'
 import { HarmonicsStage } from './harmonics-stage'
 import { DisplayNote } from './display-note'
 import type { TableRequest } from './make-table'
-import { AddNote, NoteList, numberNotes, type NoteActions, type NoteAnchor } from './notes'
 import { SpansStage } from './spans-stage'
 import { SpectrumStage } from './spectrum-stage'
 import type { StageInput } from './stage-props'
@@ -47,9 +50,7 @@ export interface BenchProps {
   /** Buttons at the upper right. */
   actions?: ReactNode
   notes: readonly Note[]
-  onAddNote?: (anchor: NoteAnchor, text: string) => void | Promise<void>
-  onChangeNote?: (note: Note, text: string) => void | Promise<void>
-  onDeleteNote?: (note: Note) => void | Promise<void>
+  noteActions?: NoteActions
   onMakeTable?: (request: TableRequest) => void | Promise<void>
   onDownloadTable?: (format: 'csv' | 'json', request: TableRequest) => void | Promise<void>
   hasWormAngle: boolean
@@ -69,10 +70,7 @@ export function Bench(props: BenchProps) {
 
   const result = savedResult ?? (outcome?.ok ? outcome.result : null)
   const failure = !result && outcome && !outcome.ok ? outcome : null
-  const noteActions: NoteActions = useMemo(
-    () => (isReadOnly ? {} : { onAdd: props.onAddNote, onChange: props.onChangeNote, onDelete: props.onDeleteNote }),
-    [isReadOnly, props.onAddNote, props.onChangeNote, props.onDeleteNote],
-  )
+  const noteActions = isReadOnly ? NO_ACTIONS : (props.noteActions ?? NO_ACTIONS)
   const display = useDisplay(recipe.conversion)
   const stage: StageInput = {
     result,
@@ -86,62 +84,66 @@ export function Bench(props: BenchProps) {
   }
 
   return (
-    <div className="flex flex-col gap-4">
-      <header>
-        <div className="mb-1 text-sm text-soft">{props.crumbs ?? props.runLabel}</div>
-        <div className="flex items-end justify-between gap-x-6 gap-y-3 max-lg:flex-col max-lg:items-start">
-          <h1 className="min-w-0 flex-1 text-title font-semibold">
-            {result ? (
-              <FindingText finding={titleFinding(result, recipe, display)} />
-            ) : failure ? (
-              reasonTitle(failure.reason)
-            ) : (
-              `Reading ${props.runLabel}`
-            )}
-          </h1>
-          <div className="no-print flex shrink-0 flex-wrap items-center gap-2">
-            {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
-            {props.actions}
+    <NoteLinkProvider>
+      <div className="flex flex-col gap-4">
+        <header>
+          <div className="mb-1 text-sm text-soft">{props.crumbs ?? props.runLabel}</div>
+          <div className="flex items-end justify-between gap-x-6 gap-y-3 max-lg:flex-col max-lg:items-start">
+            <h1 className="min-w-0 flex-1 text-title font-semibold">
+              {result ? (
+                <FindingText finding={titleFinding(result, recipe, display)} />
+              ) : failure ? (
+                reasonTitle(failure.reason)
+              ) : (
+                `Reading ${props.runLabel}`
+              )}
+            </h1>
+            <div className="no-print flex shrink-0 flex-wrap items-center gap-2">
+              {isReadOnly ? null : <UndoButtons undo={editing.undo} redo={editing.redo} />}
+              {props.actions}
+            </div>
           </div>
-        </div>
-      </header>
-      {result ? <FigureStrip figures={keyFigures(result, display).map(small)} /> : null}
-      {result ? <DisplayNote display={display} /> : null}
-      {failure ? (
-        <Card className="p-5">
-          <Notice tone="error" title="There is nothing to show yet">
-            {reasonSentence(failure)}
-          </Notice>
-        </Card>
-      ) : null}
-      <TrackStage {...stage} />
-      {failure ? null : (
-        <>
-          <SpectrumStage {...stage} />
-          <HarmonicsStage {...stage} />
-          <TurnStage {...stage} />
-          <SpansStage {...stage} />
-          <CorrectionStage
-            {...stage}
-            hasWormAngle={props.hasWormAngle}
-            making={{
-              mountCorrection: props.mountCorrection ?? 'unknown',
-              onMakeTable: props.onMakeTable,
-              onDownloadTable: props.onDownloadTable,
-              isReadOnly,
-            }}
-          />
-          <WholeNotes notes={notes} actions={noteActions} />
-        </>
-      )}
-      {props.isComputing ? (
-        <div className="no-print pointer-events-none sticky bottom-4 z-10 mx-auto w-full max-w-xl">
-          <Computing progress={props.progress} onCancel={props.onCancel} />
-        </div>
-      ) : null}
-    </div>
+        </header>
+        {result ? <FigureStrip figures={keyFigures(result, display).map(small)} /> : null}
+        {result ? <DisplayNote display={display} /> : null}
+        {failure ? (
+          <Card className="p-5">
+            <Notice tone="error" title="There is nothing to show yet">
+              {reasonSentence(failure)}
+            </Notice>
+          </Card>
+        ) : null}
+        <TrackStage {...stage} />
+        {failure ? null : (
+          <>
+            <SpectrumStage {...stage} />
+            <HarmonicsStage {...stage} />
+            <TurnStage {...stage} />
+            <SpansStage {...stage} />
+            <CorrectionStage
+              {...stage}
+              hasWormAngle={props.hasWormAngle}
+              making={{
+                mountCorrection: props.mountCorrection ?? 'unknown',
+                onMakeTable: props.onMakeTable,
+                onDownloadTable: props.onDownloadTable,
+                isReadOnly,
+              }}
+            />
+            <WholeNotes notes={notes} actions={noteActions} />
+          </>
+        )}
+        {props.isComputing ? (
+          <div className="no-print pointer-events-none sticky bottom-4 z-10 mx-auto w-full max-w-xl">
+            <Computing progress={props.progress} onCancel={props.onCancel} />
+          </div>
+        ) : null}
+      </div>
+    </NoteLinkProvider>
   )
 }
+
+const NO_ACTIONS: NoteActions = {}
 
 /** Uncertainties a step smaller, so that five figures stay on one line each. */
 function small({ uncertainty, ...figure }: KeyFigureText): KeyFigure {
@@ -194,7 +196,7 @@ function Arrow({ isMirrored = false }: { isMirrored?: boolean }) {
 
 /** Notes that belong to no place, after the last stage. */
 function WholeNotes({ notes, actions }: { notes: readonly Note[]; actions: NoteActions }) {
-  const [isOpen, setOpen] = useState(false)
+  const newNote = useNewNote('whole', actions)
   const whole = notes.filter(({ anchor }) => anchor.kind === 'whole').map((note) => ({ number: null, note }))
   if (whole.length === 0 && !actions.onAdd) return null
   return (
@@ -203,18 +205,10 @@ function WholeNotes({ notes, actions }: { notes: readonly Note[]; actions: NoteA
       className={classNames('flex flex-col gap-3 p-5 max-sm:px-4', whole.length === 0 && 'no-print')}
     >
       <h2 className="text-finding font-semibold">Notes on the whole analysis</h2>
-      <NoteList notes={whole} actions={actions} />
-      {actions.onAdd ? (
-        <div className="max-w-xl">
-          <AddNote
-            anchor={{ kind: 'whole' }}
-            onAdd={actions.onAdd}
-            isOpen={isOpen}
-            onOpen={() => setOpen(true)}
-            onClose={() => setOpen(false)}
-          />
-        </div>
-      ) : null}
+      <div className="flex max-w-xl flex-col gap-3">
+        <NoteList listId="notes-whole" kind="whole" notes={whole} actions={actions} />
+        {newNote.element({ kind: 'whole' })}
+      </div>
     </Card>
   )
 }

@@ -19,6 +19,7 @@ import { MakeTable, type MakeTableProps } from './make-table'
 import { PictureSpace } from './picture-space'
 import { Stage } from './stage'
 import type { StageInput } from './stage-props'
+import { useNoteMarks } from './use-stage-notes'
 
 interface CorrectionStageProps extends StageInput {
   hasWormAngle: boolean
@@ -36,13 +37,13 @@ export function CorrectionStage(props: CorrectionStageProps) {
     () => (slip && table ? (frame: FigureFrame) => slipFigure({ slip, ...table.rehearsal, frame }) : null),
     [slip, table],
   )
-  const marks =
+  const { marks, link } = useNoteMarks(notes, 'worm-angle')
+  const angleMarks =
     result && table
-      ? notes.flatMap(({ number, note }) =>
-          note.anchor.kind === 'worm-angle'
-            ? [{ number, angleDegrees: tableAngleDegrees(note.anchor.angleDegrees, { table, run: result.run }) }]
-            : [],
-        )
+      ? marks.map(({ value, ...mark }) => ({
+          ...mark,
+          angleDegrees: tableAngleDegrees(value, { table, run: result.run }),
+        }))
       : []
 
   return (
@@ -81,7 +82,8 @@ export function CorrectionStage(props: CorrectionStageProps) {
               summary={findingText(finding)}
               axisTitle={axisTitle(recipe)}
               angleTitle={angleTitle(table)}
-              notes={marks}
+              notes={angleMarks}
+              markLink={link}
               isNarrow={width > 0 && width < 560}
             />
             {makeSlip ? (

@@ -7,7 +7,7 @@ import { NumberInput } from '@/components/ui/number-input'
 import type { ExcludedSpan } from '@/lib/analysis/types'
 import { formatNumber } from '@/lib/units'
 import { AsideGroup } from './aside'
-import { TextButton } from './notes'
+import { TextButton } from '@/components/notes/text-button'
 
 interface SpanListProps {
   spans: readonly ExcludedSpan[]

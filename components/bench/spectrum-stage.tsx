@@ -6,7 +6,7 @@ import { PlotlyChart } from '@/components/charts/plotly-chart'
 import type { AnalysisResult, Recipe, WindowName } from '@/lib/analysis/types'
 import { displacementUnitOf, formatSwing, shortSwingWord, shownSwing, type Display } from '@/lib/display-units'
 import type { FigureFrame } from '@/lib/figures/figure'
-import { spectrumFigure } from '@/lib/figures/spectrum-figure'
+import { spectrumExtentSeconds, spectrumFigure } from '@/lib/figures/spectrum-figure'
 import { findingText } from '@/lib/findings/finding'
 import { spectrumFinding } from '@/lib/findings/spectrum-finding'
 import { formatDuration, formatEstimate, formatNumber, formatPeriod, formatProbability } from '@/lib/units'
@@ -29,23 +29,24 @@ const CHANCE_LEVELS = [0.05, 0.01, 0.001, 0.0001]
 
 export function SpectrumStage({ result, views, recipe, display, change, notes, noteActions, isLocked }: StageInput) {
   const [isBeforeShown, setBeforeShown] = useState(true)
-  const { own, pick, pickBar, aside } = useStageNotes({
+  const extent = useMemo(
+    () => (result && views ? spectrumExtentSeconds(result, views.spectrum) : null),
+    [result, views],
+  )
+  const { marks, link, pick, pickBar, aside } = useStageNotes({
     kind: 'period',
     notes,
     actions: noteActions,
     startAt: result ? { kind: 'period', periodSeconds: result.worm?.periodSeconds.value ?? 100 } : null,
+    extent,
   })
-  const placed = own.flatMap(({ number, note }) =>
-    note.anchor.kind === 'period' ? [{ number, periodSeconds: note.anchor.periodSeconds }] : [],
-  )
-  const placedKey = JSON.stringify(placed)
   const { chanceLevel } = recipe
   const makeFigure = useMemo(() => {
     if (!result || !views) return null
-    const marks: typeof placed = JSON.parse(placedKey)
+    const notesAt = marks.map(({ value, ...mark }) => ({ ...mark, periodSeconds: value }))
     return (frame: FigureFrame) =>
-      spectrumFigure({ result, spectrum: views.spectrum, chanceLevel, isBeforeShown, notes: marks, display, frame })
-  }, [result, views, chanceLevel, isBeforeShown, placedKey, display])
+      spectrumFigure({ result, spectrum: views.spectrum, chanceLevel, isBeforeShown, notes: notesAt, display, frame })
+  }, [result, views, chanceLevel, isBeforeShown, marks, display])
   const finding = result ? spectrumFinding(result, recipe) : null
 
   return (
@@ -69,6 +70,8 @@ export function SpectrumStage({ result, views, recipe, display, change, notes, n
           name="spectrum"
           summary={`${findingText(finding)} ${stemWords(result, display)}`}
           makeFigure={makeFigure}
+          marks={marks.map(({ value, ...mark }) => ({ ...mark, x: value }))}
+          markLink={link}
           onPick={pick ? (periodSeconds) => pick({ kind: 'period', periodSeconds }) : undefined}
           legend={
             <>

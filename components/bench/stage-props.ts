@@ -1,6 +1,6 @@
 import type { AnalysisResult, AnalysisViews, Recipe } from '@/lib/analysis/types'
 import type { Display } from '@/lib/display-units'
-import type { NoteActions, NumberedNote } from './notes'
+import type { NoteActions, NumberedNote } from '@/components/notes/note-types'
 
 /** What every stage of the worksheet is given. */
 export interface StageInput {

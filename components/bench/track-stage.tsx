@@ -7,7 +7,7 @@ import { Button } from '@/components/ui/button'
 import type { AnalysisResult } from '@/lib/analysis/types'
 import { acrossTheAxis, sizedDisplacement, type Display } from '@/lib/display-units'
 import type { FigureFrame } from '@/lib/figures/figure'
-import { trackFigure } from '@/lib/figures/track-figure'
+import { trackExtentSeconds, trackFigure } from '@/lib/figures/track-figure'
 import { findingText } from '@/lib/findings/finding'
 import { perMinute } from '@/lib/findings/key-figures'
 import { trackFinding } from '@/lib/findings/track-finding'
@@ -29,24 +29,22 @@ interface Selection {
 
 export function TrackStage({ result, views, recipe, display, change, notes, noteActions, isLocked }: StageInput) {
   const [selection, setSelection] = useState<Selection | null>(null)
-  const { own, pick, pickBar, aside } = useStageNotes({
+  const extent = useMemo(() => (result && views ? trackExtentSeconds(result, views.track) : null), [result, views])
+  const { marks, link, pick, pickBar, aside } = useStageNotes({
     kind: 'time',
     notes,
     actions: noteActions,
     startAt: result ? { kind: 'time', timeSeconds: result.run.firstUsedTimeSeconds } : null,
+    extent,
   })
-  const placed = own.flatMap(({ number, note }) =>
-    note.anchor.kind === 'time' ? [{ number, timeSeconds: note.anchor.timeSeconds }] : [],
-  )
-  const placedKey = JSON.stringify(placed)
   const sense = senseMark(recipe.conversion.senseBasis)
   const { excludedSpans } = recipe
   const makeFigure = useMemo(() => {
     if (!result || !views) return null
-    const marks: typeof placed = JSON.parse(placedKey)
+    const notesAt = marks.map(({ value, ...mark }) => ({ ...mark, timeSeconds: value }))
     return (frame: FigureFrame) =>
-      trackFigure({ result, track: views.track, excludedSpans, notes: marks, senseMark: sense, display, frame })
-  }, [result, views, excludedSpans, placedKey, sense, display])
+      trackFigure({ result, track: views.track, excludedSpans, notes: notesAt, senseMark: sense, display, frame })
+  }, [result, views, excludedSpans, marks, sense, display])
   const finding = result ? trackFinding(result) : null
 
   function leaveOut(span: { startSeconds: number; endSeconds: number }) {
@@ -84,6 +82,8 @@ export function TrackStage({ result, views, recipe, display, change, notes, note
           name="track"
           summary={`${findingText(finding)} ${driftWords(result)} Drag over the picture to choose a stretch.`}
           makeFigure={makeFigure}
+          marks={marks.map(({ value, ...mark }) => ({ ...mark, x: value / 60 }))}
+          markLink={link}
           legend={
             <>
               <LegendEntry look="recorded">recorded</LegendEntry>

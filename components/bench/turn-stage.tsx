@@ -20,23 +20,19 @@ import type { StageInput } from './stage-props'
 import { useStageNotes } from './use-stage-notes'
 
 export function TurnStage({ result, views, recipe, display, notes, noteActions, isLocked }: StageInput) {
-  const { own, pick, pickBar, aside } = useStageNotes({
+  const { marks, link, pick, pickBar, aside } = useStageNotes({
     kind: 'worm-angle',
     notes,
     actions: noteActions,
     startAt: result?.worm ? { kind: 'worm-angle', angleDegrees: 0 } : null,
   })
-  const placed = own.flatMap(({ number, note }) =>
-    note.anchor.kind === 'worm-angle' ? [{ number, angleDegrees: note.anchor.angleDegrees }] : [],
-  )
-  const placedKey = JSON.stringify(placed)
   const sense = senseMark(recipe.conversion.senseBasis)
   const turn = views?.turn ?? null
+  const angleMarks = useMemo(() => marks.map(({ value, ...mark }) => ({ ...mark, angleDegrees: value })), [marks])
   const makeFigure = useMemo(() => {
     if (!turn) return null
-    const marks: typeof placed = JSON.parse(placedKey)
-    return (frame: FigureFrame) => turnFigure({ turn, senseMark: sense, notes: marks, display, frame })
-  }, [turn, sense, placedKey, display])
+    return (frame: FigureFrame) => turnFigure({ turn, senseMark: sense, notes: angleMarks, display, frame })
+  }, [turn, sense, angleMarks, display])
   const finding = result ? turnFinding(result) : null
   const pickAngle = pick ? (angleDegrees: number) => pick({ kind: 'worm-angle', angleDegrees }) : undefined
   const summary = finding && result ? `${findingText(finding)} ${extremaWords(result, { sense, display })}` : ''
@@ -72,13 +68,16 @@ export function TurnStage({ result, views, recipe, display, notes, noteActions, 
             summary={`${summary} As a dial.`}
             senseMark={sense}
             display={display}
-            notes={placed}
+            notes={angleMarks}
+            markLink={link}
             onPick={pickAngle}
           />
           <PlotlyChart
             name="turn"
             summary={summary}
             makeFigure={makeFigure}
+            marks={marks.map(({ value, ...mark }) => ({ ...mark, x: value }))}
+            markLink={link}
             onPick={pickAngle}
             legend={
               <>

@@ -6,23 +6,36 @@ import { dialPath, freestAngle, dialPoint, dialRadius, dialScale } from '@/lib/f
 import { shownTurn } from '@/lib/figures/turn-figure'
 import { displacementUnitOf, displacementUnitWord, PLAIN_DISPLAY, type Display } from '@/lib/display-units'
 import { formatNumber, wrapDegrees } from '@/lib/units'
+import type { ChartMark, MarkLink } from './mark-buttons'
+import { markStroke } from './mark-stroke'
 import { SvgPicture } from './svg-picture'
 
 const SIZE = 420
 const CENTRE = SIZE / 2
 const RIM = 160
+/** Where the boxes of the notes stand. */
+const MARK_RADIUS = RIM - 10
 
 interface DialChartProps {
   turn: NonNullable<AnalysisViews['turn']>
   summary: string
   senseMark: string
   display?: Display
-  notes: readonly { number: number; angleDegrees: number }[]
+  notes: readonly (ChartMark & { number: number; angleDegrees: number; isSettled: boolean })[]
+  markLink: MarkLink
   onPick?: (angleDegrees: number) => void
 }
 
 /** Every turn round one worm angle: outward is ahead, inward behind; zero is the dotted circle. */
-export function DialChart({ summary, senseMark, display = PLAIN_DISPLAY, notes, onPick, ...props }: DialChartProps) {
+export function DialChart({
+  summary,
+  senseMark,
+  display = PLAIN_DISPLAY,
+  notes,
+  markLink,
+  onPick,
+  ...props
+}: DialChartProps) {
   const turn = shownTurn(props.turn, display)
   const [pointed, setPointed] = useState<number | null>(null)
   const scale = dialScale(turn.curveArcsec, ...turn.turns.map(({ arcsec }) => arcsec))
@@ -44,7 +57,12 @@ export function DialChart({ summary, senseMark, display = PLAIN_DISPLAY, notes, 
         }}
         width={SIZE}
         height={SIZE}
-        className="mx-auto block h-auto w-full max-w-100"
+        className="mx-auto max-w-100"
+        marks={notes.map((note) => {
+          const { x, y } = dialPoint(note.angleDegrees, MARK_RADIUS)
+          return { ...note, x: CENTRE + x, y: CENTRE + y }
+        })}
+        markLink={markLink}
         onPoint={(place) => setPointed(place && angleAt(place))}
         onPick={onPick ? (place) => onPick(angleAt(place)) : undefined}
         legend={
@@ -98,7 +116,7 @@ export function DialChart({ summary, senseMark, display = PLAIN_DISPLAY, notes, 
             </text>
           ))}
           {notes.map((note) => (
-            <NoteMark key={note.number} {...note} />
+            <NoteMark key={note.id} {...note} />
           ))}
           {index === null ? null : (
             <circle
@@ -142,20 +160,26 @@ function Rim() {
   )
 }
 
-function NoteMark({ number, angleDegrees }: { number: number; angleDegrees: number }) {
+interface NoteMarkProps {
+  number: number
+  angleDegrees: number
+  isSettled: boolean
+}
+
+function NoteMark({ number, angleDegrees, isSettled }: NoteMarkProps) {
   const from = dialPoint(angleDegrees, 0.2 * RIM)
-  const to = dialPoint(angleDegrees, RIM - 10)
+  const to = dialPoint(angleDegrees, MARK_RADIUS)
   return (
     <g>
-      <line x1={from.x} y1={from.y} x2={to.x} y2={to.y} className="stroke-plum" strokeWidth="1.5" />
+      <line x1={from.x} y1={from.y} x2={to.x} y2={to.y} className="stroke-plum" {...markStroke(isSettled)} />
       <rect
         x={to.x - 8}
         y={to.y - 8}
         width="16"
         height="16"
         rx="3"
-        className="fill-card stroke-plum"
-        strokeWidth="1.5"
+        className={isSettled ? 'fill-none stroke-plum' : 'fill-card stroke-plum'}
+        {...markStroke(isSettled)}
       />
       <text x={to.x} y={to.y + 4} textAnchor="middle" fontSize="11" className="figures fill-ink">
         {number}

@@ -4,8 +4,9 @@ import { useEffect, useMemo, useRef, useState, type CSSProperties, type ReactNod
 import type { ChartColors } from '@/lib/figures/chart-colors'
 import type { Figure, FigureFrame } from '@/lib/figures/figure'
 import { loadedPlotly, loadPlotly, type PlotlyParts } from './load-plotly'
+import { MarkButtons, type ChartMark, type MarkLink } from './mark-buttons'
 import { Picture, type SvgPicture } from './picture'
-import { useAxisDrag } from './use-axis-drag'
+import { axisShare, useAxisDrag } from './use-axis-drag'
 import { useChartColors } from './use-chart-colors'
 import { useWidth } from './use-width'
 import './plotly-chart.css'
@@ -24,12 +25,16 @@ export interface PlotlyChartProps {
   onSelect?: (range: [number, number], zoomIn: () => void) => void
   /** A place on the x axis was clicked. */
   onPick?: (value: number) => void
+  /** What the figure marks at the upper edge, in the units of its x axis. */
+  marks?: readonly (ChartMark & { x: number })[]
+  markLink?: MarkLink
   /** Shown below the picture: what to do with the selection. */
   children?: ReactNode
 }
 
 /** The one place where Plotly draws: client only, `scatter` traces, no buttons or colours but ours. */
-export function PlotlyChart({ name, summary, makeFigure, legend, onSelect, onPick, children }: PlotlyChartProps) {
+export function PlotlyChart(props: PlotlyChartProps) {
+  const { name, summary, makeFigure, legend, onSelect, onPick, marks = [], markLink, children } = props
   const holder = useRef<HTMLDivElement>(null)
   const widthPx = useWidth(holder)
   const colors = useChartColors()
@@ -64,39 +69,57 @@ export function PlotlyChart({ name, summary, makeFigure, legend, onSelect, onPic
         ) : null
       }
     >
-      <div
-        ref={holder}
-        role="img"
-        aria-label={summary}
-        aria-busy={parts === null}
-        className="plotly-chart relative touch-pan-y select-none"
-        style={{ height: figure.layout.height, '--shape': `${widthPx} / ${figure.layout.height}` } as CSSProperties}
-        onDoubleClick={() => setZoom(null)}
-        {...drag.handlers}
-      >
-        {parts && widthPx > 0 ? (
-          <parts.Plot
-            data={figure.data}
-            layout={figure.layout}
-            config={CONFIG}
-            style={{ width: widthPx }}
-            onInitialized={(_, plot) => makeScalable(plot)}
-            onUpdate={(_, plot) => makeScalable(plot)}
-          />
-        ) : null}
-        {fault ? (
-          <p className="pt-8 text-soft">The drawing could not be loaded. Reload the page to try again.</p>
-        ) : null}
-        {drag.band ? (
-          <div
-            className="pointer-events-none absolute top-8 bottom-10 border-x border-brass bg-brass-fill opacity-30"
-            style={{ left: drag.band.leftPx, width: drag.band.widthPx }}
-          />
-        ) : null}
+      <div className="relative">
+        <div
+          ref={holder}
+          role="img"
+          aria-label={summary}
+          aria-busy={parts === null}
+          className="plotly-chart relative touch-pan-y select-none"
+          style={{ height: figure.layout.height, '--shape': `${widthPx} / ${figure.layout.height}` } as CSSProperties}
+          onDoubleClick={() => setZoom(null)}
+          {...drag.handlers}
+        >
+          {parts && widthPx > 0 ? (
+            <parts.Plot
+              data={figure.data}
+              layout={figure.layout}
+              config={CONFIG}
+              style={{ width: widthPx }}
+              onInitialized={(_, plot) => makeScalable(plot)}
+              onUpdate={(_, plot) => makeScalable(plot)}
+            />
+          ) : null}
+          {fault ? (
+            <p className="pt-8 text-soft">The drawing could not be loaded. Reload the page to try again.</p>
+          ) : null}
+          {drag.band ? (
+            <div
+              className="pointer-events-none absolute top-8 bottom-10 border-x border-brass bg-brass-fill opacity-30"
+              style={{ left: drag.band.leftPx, width: drag.band.widthPx }}
+            />
+          ) : null}
+        </div>
+        {markLink && parts ? <MarkButtons marks={marksOver(figure, marks, widthPx)} link={markLink} /> : null}
       </div>
       {children}
     </Picture>
   )
+}
+
+/** Height of a mark’s box over the upper edge of the picture, to its middle. */
+const MARK_MIDDLE_PX = 10
+
+/** The marks that lie within what is shown, in pixels. */
+function marksOver({ x, layout }: Figure, marks: readonly (ChartMark & { x: number })[], widthPx: number) {
+  const { t = 0, b = 0 } = layout.margin ?? {}
+  const inner = widthPx - x.marginLeftPx - x.marginRightPx
+  const line = { top: t, height: (layout.height ?? 0) - t - b }
+  return marks.flatMap((mark) => {
+    const share = axisShare(mark.x, x)
+    if (!(share >= 0 && share <= 1)) return []
+    return [{ ...mark, left: `${x.marginLeftPx + share * inner}px`, top: `${t - MARK_MIDDLE_PX}px`, line }]
+  })
 }
 
 /** On paper the drawing is scaled to the column (plotly-chart.css); for that it must say what its own size is. */

@@ -6,6 +6,8 @@ import type { TablePicture } from '@/lib/figures/table-picture'
 import { niceTicks } from '@/lib/figures/ticks'
 import { formatNumber } from '@/lib/units'
 import { LegendEntry } from './picture'
+import type { ChartMark, MarkLink } from './mark-buttons'
+import { markStroke } from './mark-stroke'
 import { SvgPicture } from './svg-picture'
 
 const LINE_HEIGHT = 15
@@ -17,12 +19,13 @@ interface TableChartProps {
   summary: string
   axisTitle: string
   angleTitle: string
-  notes: readonly { number: number; angleDegrees: number }[]
+  notes: readonly (ChartMark & { number: number; angleDegrees: number; isSettled: boolean })[]
+  markLink: MarkLink
   isNarrow: boolean
 }
 
 /** The table bin by bin as bars, and the worm's own error as a dashed curve. */
-export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isNarrow }: TableChartProps) {
+export function TableChart({ picture, summary, axisTitle, angleTitle, notes, markLink, isNarrow }: TableChartProps) {
   const [pointed, setPointed] = useState<number | null>(null)
   const { bars, curve, unit } = picture
   // Drawn at about the size it is seen at, so that the letters keep theirs.
@@ -63,6 +66,8 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
           { name: `value_${picture.unitName}`, values: bars.map(({ value }) => value) },
         ],
       }}
+      marks={notes.map((note) => ({ ...note, x: x(note.angleDegrees), y: plot.top }))}
+      markLink={markLink}
       onPoint={(place) =>
         setPointed(
           place && place.x >= plot.left && place.x <= plot.right
@@ -125,15 +130,15 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
         strokeWidth="1.25"
         strokeDasharray="5 3"
       />
-      {notes.map(({ number, angleDegrees }) => (
-        <g key={number}>
+      {notes.map(({ id, number, angleDegrees, isSettled }) => (
+        <g key={id}>
           <line
             x1={x(angleDegrees)}
             x2={x(angleDegrees)}
             y1={plot.top}
             y2={plot.bottom}
             className="stroke-plum"
-            strokeWidth="1.5"
+            {...markStroke(isSettled)}
           />
           <rect
             x={x(angleDegrees) - 8}
@@ -141,8 +146,8 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, isN
             width="16"
             height="16"
             rx="3"
-            className="fill-card stroke-plum"
-            strokeWidth="1.5"
+            className={isSettled ? 'fill-none stroke-plum' : 'fill-card stroke-plum'}
+            {...markStroke(isSettled)}
           />
           <text x={x(angleDegrees)} y={plot.top + 4} textAnchor="middle" fontSize="11" className="figures fill-ink">
             {number}

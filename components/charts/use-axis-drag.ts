@@ -83,6 +83,12 @@ export function axisValue(share: number, { range, isLog }: Pick<Figure['x'], 'ra
   return isLog ? range[0] * (range[1] / range[0]) ** share : range[0] + share * (range[1] - range[0])
 }
 
+/** The other way round: where a data value lies, as a share of the axis; not between 0 and 1 where it is not shown. */
+export function axisShare(value: number, { range, isLog }: Pick<Figure['x'], 'range' | 'isLog'>): number {
+  if (isLog) return Math.log(value / range[0]) / Math.log(range[1] / range[0])
+  return (value - range[0]) / (range[1] - range[0])
+}
+
 /** The two ends from left to right. */
 function inOrder([a, b]: [number, number], { range }: Figure['x']): [number, number] {
   const isRising = range[1] > range[0]

@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react'
 import { Button } from './button'
 import { Notice } from './notice'
 
@@ -8,12 +9,21 @@ interface ConflictNoticeProps {
   changedAt?: string
   /** What was changed: “the drive train”. */
   thing: string
+  /** What they made of it, so that one can decide. */
+  children?: ReactNode
   onKeepMine: () => void
   onTakeTheirs: () => void
 }
 
 /** Two people changed the same thing: nothing is lost until one of them decides. */
-export function ConflictNotice({ changedBy, changedAt, thing, onKeepMine, onTakeTheirs }: ConflictNoticeProps) {
+export function ConflictNotice({
+  changedBy,
+  changedAt,
+  thing,
+  children,
+  onKeepMine,
+  onTakeTheirs,
+}: ConflictNoticeProps) {
   return (
     <Notice
       tone="warning"
@@ -26,7 +36,8 @@ export function ConflictNotice({ changedBy, changedAt, thing, onKeepMine, onTake
         </>
       }
     >
-      What you typed is still in the form and nothing of yours was saved yet.
+      {children}
+      <p>What you typed is still in the form and nothing of yours was saved yet.</p>
     </Notice>
   )
 }

@@ -22,6 +22,8 @@ import { useRunNotes } from './use-run-notes'
 interface RunBenchProps {
   project: Project
   run: Run
+  /** Who looks. */
+  userId: string
   /** The saved analysis to show; without one the bench starts from the run's and the project's own settings. */
   analysis: Analysis | null
   /** Its figures as they were saved. */
@@ -29,7 +31,7 @@ interface RunBenchProps {
 }
 
 /** The bench on a stored run, as the project has it or as an analysis was saved. */
-export function RunBench({ project, run, analysis, savedResult }: RunBenchProps) {
+export function RunBench({ project, run, analysis, savedResult, userId }: RunBenchProps) {
   const router = useRouter()
   const isViewer = project.role === 'viewer'
   const [base] = useState<Recipe>(() => analysis?.recipe ?? recipeOf(project, run))
@@ -57,7 +59,7 @@ export function RunBench({ project, run, analysis, savedResult }: RunBenchProps)
   const isAsSaved = analysis !== null && JSON.stringify(recipe) === JSON.stringify(analysis.recipe)
   const computed = bench.outcome?.ok ? bench.outcome.result : null
   const shown = isAsSaved ? savedResult : computed
-  const notes = useRunNotes(project.id, analysis?.id ?? null)
+  const notes = useRunNotes({ project, analysisId: analysis?.id ?? null, userId })
 
   async function save(name: string): Promise<Analysis> {
     assertCurrent(bench)
@@ -104,9 +106,7 @@ export function RunBench({ project, run, analysis, savedResult }: RunBenchProps)
           )
         }
         notes={notes.notes}
-        onAddNote={notes.add}
-        onChangeNote={notes.change}
-        onDeleteNote={notes.remove}
+        noteActions={notes.actions}
         onMakeTable={shown?.table ? makeTable : undefined}
         hasWormAngle={bench.loaded?.ok === true && bench.loaded.hasWormAngle}
         mountCorrection={run.facts.mountCorrection}

@@ -15,11 +15,11 @@ import { useFileReading } from './use-file-reading'
 import { WorkerFault } from './worker-fault'
 
 /** A stored run: its bench once its columns are known, before that the form that names them. */
-export function RunScreen({ project, run }: { project: Project; run: Run }) {
+export function RunScreen({ project, run, userId }: { project: Project; run: Run; userId: string }) {
   if (run.status === 'uploaded') return <UnreadRun project={project} run={run} />
   return (
     <>
-      <RunBench project={project} run={run} analysis={null} savedResult={null} />
+      <RunBench project={project} run={run} userId={userId} analysis={null} savedResult={null} />
       <RunFactsPanel run={run} canEdit={project.role !== 'viewer'} />
     </>
   )

@@ -1,40 +1,57 @@
 'use client'
 
+import { useMemo } from 'react'
 import useSWR from 'swr'
-import type { NoteAnchor } from '@/components/bench/notes'
-import { getJson, RequestError, sendJson, sendOnly } from '@/lib/client/fetcher'
-import { noteListSchema, noteSchema, type Note } from '@/lib/schemas/api'
+import type { NoteActions } from '@/components/notes/note-types'
+import { getJson, sendJson, sendOnly } from '@/lib/client/fetcher'
+import { useMembers } from '@/lib/client/project-data'
+import { noteListSchema, noteSchema, type Note, type Project } from '@/lib/schemas/api'
 
-/** The notes of one saved analysis and what can be done with them; none while the analysis has not been saved. */
-export function useRunNotes(projectId: string, analysisId: string | null) {
-  const base = `/api/projects/${projectId}`
+/** How often notes of other people are asked for while the page is seen. */
+const REFRESH_MS = 30_000
+
+interface RunNotesOptions {
+  project: Project
+  /** Null while the analysis has not been saved: it has no notes then. */
+  analysisId: string | null
+  /** Who looks. */
+  userId: string
+}
+
+/** The notes of one saved analysis and what this person can do with them. */
+export function useRunNotes({ project, analysisId, userId }: RunNotesOptions): { notes: Note[]; actions: NoteActions } {
+  const base = `/api/projects/${project.id}`
   const key = analysisId ? `${base}/analyses/${analysisId}/notes` : null
-  const { data, mutate } = useSWR(key, (url: string) => getJson(url, noteListSchema))
+  const { data, mutate } = useSWR(key, (url: string) => getJson(url, noteListSchema), {
+    refreshInterval: REFRESH_MS,
+    revalidateOnFocus: true,
+  })
+  const { data: members } = useMembers(project.id)
+  const isOwner = project.role === 'owner'
 
-  async function refreshOnConflict<T>(work: Promise<T>): Promise<T> {
-    try {
-      return await work
-    } catch (error) {
-      if (error instanceof RequestError && error.isConflict) await mutate()
-      throw error
+  const actions = useMemo((): NoteActions => {
+    if (!key || !analysisId) return {}
+    /** Shows at once what is so now, also when it is not what was wanted. */
+    async function andRefresh<T>(work: Promise<T>): Promise<void> {
+      try {
+        await work
+      } finally {
+        await mutate()
+      }
     }
-  }
+    return {
+      onAdd: (written) => andRefresh(sendJson('POST', key, written, noteSchema)),
+      onChange: ({ id, version }, written) =>
+        andRefresh(sendJson('PATCH', `${base}/notes/${id}`, { ...written, version }, noteSchema)),
+      onDelete: ({ id }) => andRefresh(sendOnly('DELETE', `${base}/notes/${id}`)),
+      onResolve: ({ id, version }, isResolved) =>
+        andRefresh(sendJson('PUT', `${base}/notes/${id}/resolution`, { version, isResolved }, noteSchema)),
+      canChange: ({ authorId }) => isOwner || authorId === userId,
+      people: members?.members.filter((member) => member.userId !== userId),
+      presentIds: data?.notes.map(({ id }) => id),
+      draftScope: analysisId,
+    }
+  }, [key, analysisId, base, isOwner, userId, members, data, mutate])
 
-  return {
-    notes: data?.notes ?? [],
-    add: key
-      ? async (anchor: NoteAnchor, text: string) => {
-          await sendJson('POST', key, { anchor, text }, noteSchema)
-          await mutate()
-        }
-      : undefined,
-    change: async ({ id, version, anchor }: Note, text: string) => {
-      await refreshOnConflict(sendJson('PATCH', `${base}/notes/${id}`, { version, anchor, text }, noteSchema))
-      await mutate()
-    },
-    remove: async ({ id }: Note) => {
-      await sendOnly('DELETE', `${base}/notes/${id}`)
-      await mutate()
-    },
-  }
+  return { notes: data?.notes ?? [], actions }
 }

@@ -109,12 +109,21 @@ export function axisNote(
   }
 }
 
-/** A note's number in a plum box at the upper edge, and its line down through the picture. */
+/**
+ * A note's number in a plum box at the upper edge, and its line down through the picture; of a settled note both are dashed
+ * and the box is hollow.
+ */
 export function noteMark(
-  mark: { number: number; x: number; isLog?: boolean },
+  mark: { number: number; x: number; isLog?: boolean; isSettled?: boolean },
   frame: FigureFrame,
-): { annotation: Partial<Annotation>; shape: Partial<Shape> } {
+): { annotation: Partial<Annotation>; shapes: Partial<Shape>[] } {
   const { colors } = frame
+  const { isSettled = false } = mark
+  const line = {
+    color: colors.plum,
+    width: isSettled ? 1 : 1.5,
+    dash: isSettled ? ('dash' as const) : ('solid' as const),
+  }
   return {
     annotation: {
       text: String(mark.number),
@@ -125,22 +134,33 @@ export function noteMark(
       yref: 'paper',
       yanchor: 'bottom',
       showarrow: false,
-      bgcolor: colors.card,
-      bordercolor: colors.plum,
-      borderwidth: 1.5,
+      ...(isSettled ? {} : { bgcolor: colors.card, bordercolor: colors.plum, borderwidth: 1.5 }),
       borderpad: 2,
       font: { family: MONO, size: 11, color: colors.ink },
     },
-    shape: {
-      type: 'line',
-      xref: 'x',
-      x0: mark.x,
-      x1: mark.x,
-      yref: 'paper',
-      y0: 0,
-      y1: 1,
-      line: { color: colors.plum, width: 1.5 },
-    },
+    shapes: [
+      { type: 'line', xref: 'x', x0: mark.x, x1: mark.x, yref: 'paper', y0: 0, y1: 1, line },
+      ...(isSettled ? [dashedBox(mark, line)] : []),
+    ],
+  }
+}
+
+/** Annotations have no dashed border, so the box of a settled note is drawn, as large as that of an open one. */
+function dashedBox({ x, number }: { x: number; number: number }, line: Shape['line']): Partial<Shape> {
+  const halfPx = 4 + 3.5 * String(number).length
+  return {
+    type: 'rect',
+    xref: 'x',
+    xsizemode: 'pixel',
+    xanchor: x,
+    x0: -halfPx,
+    x1: halfPx,
+    yref: 'paper',
+    ysizemode: 'pixel',
+    yanchor: 1,
+    y0: 1,
+    y1: 18,
+    line: { ...line, dash: 'dot' },
   }
 }
 

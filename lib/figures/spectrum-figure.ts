@@ -31,7 +31,7 @@ export interface SpectrumFigureInput {
   spectrum: AnalysisViews['spectrum']
   chanceLevel: number
   isBeforeShown: boolean
-  notes: readonly { number: number; periodSeconds: number }[]
+  notes: readonly { number: number; periodSeconds: number; isSettled?: boolean }[]
   /** How swings are shown; the amplitudes of the core unless given. */
   display?: Display
   frame: FigureFrame
@@ -62,7 +62,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
   })
   const floor = (values: Float64Array) =>
     values.map((value) => (value > 0 ? Math.max(value, yRange[0] / 2) : yRange[0] / 2))
-  const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.periodSeconds, isLog: true }, frame))
+  const marks = input.notes.map((note) => noteMark({ ...note, x: note.periodSeconds, isLog: true }, frame))
   const ruler = wormPeriod === null ? null : rulerOf({ wormPeriod, range, width, frame })
   const axes = { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b }
   const chance = chanceLabel({ ...input, spectrum }, axes)
@@ -87,7 +87,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
       ticktext: yTicks.labels,
       showgrid: true,
     },
-    shapes: [...(ruler?.shapes ?? []), ...marks.map(({ shape }) => ({ ...shape }))],
+    shapes: [...(ruler?.shapes ?? []), ...marks.flatMap(({ shapes }) => shapes)],
     annotations: [
       axisNote(`${displacementUnitWord(display)} ${swingWord(display)}`, frame, {
         // On a phone the worm's own stem stands in the left corner.
@@ -265,6 +265,14 @@ function periodRange(periods: Float64Array, durationSeconds: number): [number, n
   const [shortest, longest] = extent(periods)
   const end = durationSeconds > 2 * shortest ? Math.min(longest, durationSeconds) : longest
   return shortest < end ? [shortest, end] : [shortest / 2, longest * 2]
+}
+
+/** What the whole picture shows, in seconds, the shorter period first. */
+export function spectrumExtentSeconds({ run }: AnalysisResult, spectrum: AnalysisViews['spectrum']): [number, number] {
+  return periodRange(
+    spectrum.frequencyHz.map((frequency) => 1 / frequency),
+    run.durationSeconds,
+  )
 }
 
 /** From a third of a decade over the largest swing down to where the noise lies, at most four decades. */

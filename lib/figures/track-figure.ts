@@ -29,7 +29,7 @@ export interface TrackFigureInput {
   result: AnalysisResult
   track: AnalysisViews['track']
   excludedSpans: readonly ExcludedSpan[]
-  notes: readonly { number: number; timeSeconds: number }[]
+  notes: readonly { number: number; timeSeconds: number; isSettled?: boolean }[]
   /** Said beside "ahead" while the sense is only assumed; else empty. */
   senseMark: string
   /** The unit of the displacement; arc seconds unless given. */
@@ -44,10 +44,8 @@ export function trackFigure(input: TrackFigureInput): Figure {
   const unit = displacementUnitWord(display)
   const { colors } = frame
   const margin = { l: 52, r: 14, t: 44, b: 44 }
-  const whole: [number, number] = [
-    Math.min(result.run.firstUsedTimeSeconds, extent(track.timeSeconds)[0]) / SECONDS,
-    Math.max(result.run.lastUsedTimeSeconds, extent(track.timeSeconds)[1]) / SECONDS,
-  ]
+  const extentSeconds = trackExtentSeconds(result, track)
+  const whole: [number, number] = [extentSeconds[0] / SECONDS, extentSeconds[1] / SECONDS]
   const range = frame.zoom ?? whole
   const [low, high] = extent(track.recordedArcsec, track.fittedArcsec, track.driftArcsec)
   const pad = Math.max(high - low, 1e-6)
@@ -62,7 +60,7 @@ export function trackFigure(input: TrackFigureInput): Figure {
   const xTicks = minuteTicks(range, Math.max(2, Math.floor(plotWidth(frame, margin) / (isNarrow(frame) ? 48 : 90))))
   const minutes = toMinutes(track.timeSeconds)
   const modelMinutes = toMinutes(track.modelTimeSeconds)
-  const marks = input.notes.map((note) => noteMark({ number: note.number, x: note.timeSeconds / SECONDS }, frame))
+  const marks = input.notes.map((note) => noteMark({ ...note, x: note.timeSeconds / SECONDS }, frame))
   const turns = turnMarks(input, range)
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx: isNarrow(frame) ? 250 : 272, margin }),
@@ -84,7 +82,7 @@ export function trackFigure(input: TrackFigureInput): Figure {
       ticktext: yTicks.labels,
       showgrid: true,
     },
-    shapes: [...shades(input), ...turns.shapes, ...marks.map(({ shape }) => shape)],
+    shapes: [...shades(input), ...turns.shapes, ...marks.flatMap(({ shapes }) => shapes)],
     annotations: [
       axisNote(`${unit} on the axis, ahead is up${senseMark}`, frame, {
         x: 0,
@@ -166,6 +164,12 @@ function shownTrack(track: AnalysisViews['track'], display: Display): AnalysisVi
     driftArcsec: scaledValues(track.driftArcsec, factor),
     strayArcsec: scaledValues(track.strayArcsec, factor),
   }
+}
+
+/** What the whole picture shows, in seconds into the run. */
+export function trackExtentSeconds({ run }: AnalysisResult, { timeSeconds }: AnalysisViews['track']): [number, number] {
+  const [first, last] = extent(timeSeconds)
+  return [Math.min(run.firstUsedTimeSeconds, first), Math.max(run.lastUsedTimeSeconds, last)]
 }
 
 function toMinutes(seconds: Float64Array): Float64Array {

@@ -27,7 +27,7 @@ export interface TurnFigureInput {
   senseMark: string
   /** The unit of the displacement; arc seconds unless given. */
   display?: Display
-  notes: readonly { number: number; angleDegrees: number }[]
+  notes: readonly { number: number; angleDegrees: number; isSettled?: boolean }[]
   frame: FigureFrame
 }
 
@@ -44,7 +44,7 @@ export function turnFigure(input: TurnFigureInput): Figure {
   const yRange = padded(extent(turn.curveArcsec, ...turn.turns.map(({ arcsec }) => arcsec)))
   const yTicks = niceTicks(yRange, 6, { isSigned: true })
   const xTicks = angleTicks(range, plotWidth(frame, margin))
-  const marks = notes.map((note) => noteMark({ number: note.number, x: note.angleDegrees }, frame))
+  const marks = notes.map((note) => noteMark({ ...note, x: note.angleDegrees }, frame))
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx: frame.widthPx < 420 ? 280 : 350, margin }),
     hovermode: 'closest',
@@ -58,7 +58,7 @@ export function turnFigure(input: TurnFigureInput): Figure {
       showline: true,
     },
     yaxis: { ...baseAxis(frame), range: yRange, tickvals: yTicks.values, ticktext: yTicks.labels, showgrid: true },
-    shapes: marks.map(({ shape }) => shape),
+    shapes: marks.flatMap(({ shapes }) => shapes),
     annotations: [
       axisNote(`${unit}, ahead is up${senseMark}`, frame, {
         x: 0,

@@ -41,7 +41,10 @@ function Harness({
   )
 }
 
-beforeEach(() => window.history.replaceState(null, '', '/bench'))
+beforeEach(() => {
+  window.sessionStorage.clear()
+  window.history.replaceState(null, '', '/bench')
+})
 afterEach(() => {
   cleanup()
   vi.useRealTimers()
@@ -157,7 +160,7 @@ describe('settings', () => {
   })
 
   test('are locked for those who only read', () => {
-    render(<Harness isReadOnly notes={exampleNotes()} onAddNote={() => {}} onMakeTable={() => {}} />)
+    render(<Harness isReadOnly notes={exampleNotes()} noteActions={{ onAdd: () => {} }} onMakeTable={() => {}} />)
     expect(
       screen.getByLabelText('How many').matches(':disabled') ||
         screen.getByLabelText('How many').closest('fieldset')?.disabled,
@@ -221,7 +224,7 @@ describe('notes', () => {
   test('are pinned by typing a place', async () => {
     const user = userEvent.setup()
     const onAddNote = vi.fn()
-    render(<Harness onAddNote={onAddNote} />)
+    render(<Harness noteActions={{ onAdd: onAddNote }} />)
     const track = within(stage('Track'))
     await user.click(track.getByRole('button', { name: 'Add a note' }))
     await user.click(track.getByRole('button', { name: 'Add note' }))
@@ -231,12 +234,16 @@ describe('notes', () => {
     await user.type(place, '2.5')
     await user.type(track.getByLabelText('Note'), 'Wind')
     await user.click(track.getByRole('button', { name: 'Add note' }))
-    expect(onAddNote).toHaveBeenCalledWith({ kind: 'time', timeSeconds: 150 }, 'Wind')
+    expect(onAddNote).toHaveBeenCalledWith({
+      anchor: { kind: 'time', timeSeconds: 150 },
+      text: 'Wind',
+      mentions: [],
+    })
   })
 
   test('a note that could not be saved keeps its text and says why', async () => {
     const user = userEvent.setup()
-    render(<Harness onAddNote={() => Promise.reject(new Error('The connection is gone.'))} />)
+    render(<Harness noteActions={{ onAdd: () => Promise.reject(new Error('The connection is gone.')) }} />)
     const whole = within(stage('Notes on the whole analysis'))
     await user.click(whole.getByRole('button', { name: 'Add a note' }))
     await user.type(whole.getByLabelText('Note'), 'Calm')

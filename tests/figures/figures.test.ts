@@ -303,3 +303,63 @@ describe('spectrum', () => {
     expect(figure.table.columns.map(({ name }) => name)).not.toContain('order')
   })
 })
+
+describe.each([
+  [
+    'track',
+    (isSettled: boolean) =>
+      trackFigure({
+        result,
+        track: views.track,
+        excludedSpans: [],
+        notes: [{ number: 47, timeSeconds: 1490, isSettled }],
+        senseMark: '',
+        frame,
+      }),
+    1490 / 60,
+  ],
+  [
+    'spectrum',
+    (isSettled: boolean) =>
+      spectrumFigure({
+        result,
+        spectrum: views.spectrum,
+        chanceLevel: 0.001,
+        isBeforeShown: true,
+        notes: [{ number: 47, periodSeconds: 207.6, isSettled }],
+        frame,
+      }),
+    207.6,
+  ],
+  [
+    'turn',
+    (isSettled: boolean) =>
+      turnFigure({ turn: views.turn!, senseMark: '', notes: [{ number: 47, angleDegrees: 214, isSettled }], frame }),
+    214,
+  ],
+] as const)('a note on the %s figure', (_, make, place) => {
+  const partsOf = (isSettled: boolean) => {
+    const { layout } = make(isSettled)
+    return {
+      lines: layout.shapes?.filter(({ type, x0 }) => type === 'line' && x0 === place) ?? [],
+      boxes: layout.shapes?.filter(({ xanchor }) => xanchor === place) ?? [],
+      numbers: layout.annotations?.filter(({ text }) => text === '47') ?? [],
+    }
+  }
+
+  test('while open has a solid line and a filled box', () => {
+    const { lines, boxes, numbers } = partsOf(false)
+    expect(lines.map(({ line }) => line?.dash)).toEqual(['solid'])
+    expect(boxes).toEqual([])
+    expect(numbers).toMatchObject([{ bgcolor: DAY_COLORS.card, bordercolor: DAY_COLORS.plum, borderwidth: 1.5 }])
+  })
+
+  test('once settled has a dashed line and a hollow, dotted box about its number', () => {
+    const { lines, boxes, numbers } = partsOf(true)
+    expect(lines.map(({ line }) => line?.dash)).toEqual(['dash'])
+    expect(boxes).toMatchObject([{ type: 'rect', x0: -11, x1: 11, line: { dash: 'dot', color: DAY_COLORS.plum } }])
+    expect(boxes[0].fillcolor).toBeUndefined()
+    expect(numbers).toHaveLength(1)
+    expect(numbers[0].bordercolor).toBeUndefined()
+  })
+})

@@ -16,5 +16,7 @@ export default async function AnalysisPage({ params }: PageProps<'/projects/[pro
   const run = await loadRun(access, analysis.runId)
   // A result kept by a version with other figures is still listed; the bench then shows what it computes itself.
   const saved = fullAnalysisResultSchema.safeParse(analysis.result)
-  return <RunBench project={project} run={run} analysis={analysis} savedResult={saved.data ?? null} />
+  return (
+    <RunBench project={project} run={run} userId={access.userId} analysis={analysis} savedResult={saved.data ?? null} />
+  )
 }

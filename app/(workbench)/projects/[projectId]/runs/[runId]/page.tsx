@@ -11,5 +11,5 @@ export default async function RunPage({ params }: PageProps<'/projects/[projectI
   const { access } = await requireProjectPage(projectId, `/projects/${projectId}/runs/${runId}`)
   assertAddressId(runId)
   const [project, run] = await Promise.all([loadProject(access), orNotFound(loadRun(access, runId))])
-  return <RunScreen project={project} run={run} />
+  return <RunScreen project={project} run={run} userId={access.userId} />
 }
