@@ -5,10 +5,22 @@ const SECURITY_HEADERS = [
   { key: 'Permissions-Policy', value: 'camera=(), microphone=(), geolocation=()' },
 ]
 
+/** What a share link opens is for whoever holds the link: not for search engines, and its address goes nowhere else. */
+const SHARE_HEADERS = [
+  { key: 'Referrer-Policy', value: 'no-referrer' },
+  { key: 'X-Robots-Tag', value: 'noindex, nofollow, noarchive' },
+  { key: 'Cache-Control', value: 'private, no-store' },
+]
+
 /** @type {import('next').NextConfig} */
 const nextConfig = {
   poweredByHeader: false,
-  headers: async () => [{ source: '/:path*', headers: SECURITY_HEADERS }],
+  // The later entry wins where two set the same header.
+  headers: async () => [
+    { source: '/:path*', headers: SECURITY_HEADERS },
+    { source: '/share/:path*', headers: SHARE_HEADERS },
+    { source: '/api/share/:path*', headers: SHARE_HEADERS },
+  ],
   reactStrictMode: true,
   serverExternalPackages: ['@node-rs/argon2', 'pg'],
   // One checkout is one project: without this Next.js looks for lock files in the folders above it.

@@ -1,10 +1,11 @@
 import { NextResponse, type NextRequest } from 'next/server'
+import { SHARE_STATUS_HEADER, shareStatus } from '@/lib/server/share'
 
 /**
  * Gives every page its Content-Security-Policy with a fresh nonce, on the request too, where Next.js and the root layout
  * read it.
  */
-export function proxy(request: NextRequest) {
+export async function proxy(request: NextRequest) {
   const nonce = Buffer.from(crypto.getRandomValues(new Uint8Array(16))).toString('base64')
   const policy = contentSecurityPolicy(nonce, process.env.NODE_ENV === 'development')
 
@@ -12,9 +13,25 @@ export function proxy(request: NextRequest) {
   headers.set('x-nonce', nonce)
   headers.set('Content-Security-Policy', policy)
 
-  const response = NextResponse.next({ request: { headers } })
+  const response = await passOn(request, headers)
   response.headers.set('Content-Security-Policy', policy)
   return response
+}
+
+const SHARE_PAGE = /^\/share\/([^/]+)$/
+
+/**
+ * On to the page. A page can't choose its status, so the page of a share link that has ended gets its 410 here; for the
+ * others the page itself says that there is nothing. What the page reads in x-share-status was never sent by a browser.
+ */
+async function passOn(request: NextRequest, headers: Headers): Promise<NextResponse> {
+  headers.delete(SHARE_STATUS_HEADER)
+  const token = SHARE_PAGE.exec(request.nextUrl.pathname)?.[1]
+  if (!token) return NextResponse.next({ request: { headers } })
+  const status = await shareStatus(request, token)
+  headers.set(SHARE_STATUS_HEADER, String(status))
+  if (status === 200) return NextResponse.next({ request: { headers } })
+  return NextResponse.rewrite(request.nextUrl, { status, request: { headers } })
 }
 
 function contentSecurityPolicy(nonce: string, isDevelopment: boolean): string {

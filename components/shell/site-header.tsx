@@ -1,6 +1,7 @@
 import Link from 'next/link'
 import type { Theme } from '@/lib/client/theme-names'
 import { Mark } from './mark'
+import { OutsideReports } from './outside-reports'
 import { SiteNav } from './site-nav'
 import { ThemeSwitch } from './theme-switch'
 
@@ -20,22 +21,26 @@ export function SiteHeader({ user, serverTheme }: SiteHeaderProps) {
           <Mark className="size-7" />
           Turnwright
         </Link>
-        <SiteNav isSignedIn={user !== null} />
+        <OutsideReports>
+          <SiteNav isSignedIn={user !== null} />
+        </OutsideReports>
         <div className="ml-auto flex min-w-0 items-center gap-4 max-sm:gap-2">
           <ThemeSwitch serverTheme={serverTheme} isSignedIn={user !== null} />
-          {user ? (
-            <Link
-              href="/account"
-              className="max-w-40 min-w-0 truncate text-soft hover:text-ink pointer-coarse:py-3"
-              title="Your account"
-            >
-              {user.displayName}
-            </Link>
-          ) : (
-            <Link href="/sign-in" className="whitespace-nowrap text-soft hover:text-ink pointer-coarse:py-3">
-              Sign in
-            </Link>
-          )}
+          <OutsideReports>
+            {user ? (
+              <Link
+                href="/account"
+                className="max-w-40 min-w-0 truncate text-soft hover:text-ink pointer-coarse:py-3"
+                title="Your account"
+              >
+                {user.displayName}
+              </Link>
+            ) : (
+              <Link href="/sign-in" className="whitespace-nowrap text-soft hover:text-ink pointer-coarse:py-3">
+                Sign in
+              </Link>
+            )}
+          </OutsideReports>
         </div>
       </div>
     </header>

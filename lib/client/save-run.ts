@@ -51,8 +51,13 @@ export function saveAnalysis(projectId: string, analysis: z.input<typeof newAnal
 }
 
 /** The run's stored columns, packed; they travel as a gzip file, and the worker unpacks what it holds. */
-export async function readPackedColumns({ projectId, id }: Run): Promise<Uint8Array> {
-  const response = await fetch(`/api/projects/${projectId}/runs/${id}/columns`)
+export function readPackedColumns({ projectId, id }: Run): Promise<Uint8Array> {
+  return fetchPackedColumns(`/api/projects/${projectId}/runs/${id}/columns`)
+}
+
+/** Columns behind any address that answers them as a gzip file. */
+export async function fetchPackedColumns(url: string): Promise<Uint8Array> {
+  const response = await fetch(url)
   if (!response.ok) throw new Error('The stored columns could not be fetched. Reload the page to try again.')
   const packed = response.body?.pipeThrough(new DecompressionStream('gzip'))
   return new Uint8Array(await new Response(packed).arrayBuffer())

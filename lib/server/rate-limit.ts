@@ -17,6 +17,9 @@ const LIMITS = {
   'invite address': { most: 80, windowSeconds: HOUR },
   'invite project': { most: 60, windowSeconds: HOUR },
   'invitation link address': { most: 30, windowSeconds: QUARTER_HOUR },
+  // Pages and pictures of share links: a club that opens one together passes, a search for links does not.
+  'share address': { most: 300, windowSeconds: QUARTER_HOUR },
+  'share columns address': { most: 120, windowSeconds: QUARTER_HOUR },
   'upload account': { most: 300, windowSeconds: HOUR },
   'upload address': { most: 600, windowSeconds: HOUR },
   'archive download account': { most: 60, windowSeconds: HOUR },

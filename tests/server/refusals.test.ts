@@ -21,6 +21,8 @@ import * as runFile from '@/app/api/projects/[projectId]/runs/[runId]/file/route
 import * as analyses from '@/app/api/projects/[projectId]/analyses/route'
 import * as analysis from '@/app/api/projects/[projectId]/analyses/[analysisId]/route'
 import * as notes from '@/app/api/projects/[projectId]/analyses/[analysisId]/notes/route'
+import * as shareLinks from '@/app/api/projects/[projectId]/analyses/[analysisId]/share-links/route'
+import * as shareLink from '@/app/api/projects/[projectId]/share-links/[linkId]/route'
 import * as note from '@/app/api/projects/[projectId]/notes/[noteId]/route'
 import * as noteResolution from '@/app/api/projects/[projectId]/notes/[noteId]/resolution/route'
 import * as corrections from '@/app/api/projects/[projectId]/corrections/route'
@@ -65,6 +67,7 @@ interface Fresh {
   analysisId: () => Promise<string>
   noteId: () => Promise<string>
   correctionId: () => Promise<string>
+  linkId: () => Promise<string>
   /** An editor beside the shared ones. */
   userId: () => Promise<string>
   invitationId: () => Promise<string>
@@ -83,6 +86,11 @@ beforeAll(async () => {
     presetId: async () => (await makePreset(owner)).id,
     noteId: async () => (await makeNote(owner, await analysisId())).id,
     correctionId: async () => (await makeTable(owner, await analysisId())).id,
+    linkId: async () => {
+      const params = { projectId: shared.id, analysisId: await analysisId() }
+      const options = { method: 'POST', body: SHARED, cookie: shared.people.owner.cookie }
+      return (await (await call(shareLinks.POST, '/', params, options)).json()).id
+    },
     userId: async () => {
       const { id } = await signUpPerson('Emil Editor')
       await database.db.insertInto('memberships').values({ projectId: shared.id, userId: id, role: 'editor' }).execute()
@@ -108,6 +116,7 @@ interface Case {
   body?: () => unknown
 }
 
+const SHARED = { preface: 'Read this', expiresAt: null, noteIds: [] }
 const anyNote = { anchor: { kind: 'whole' }, text: 'Seen' }
 const cases: [string, Case][] = [
   ['GET project', { method: 'GET', module: project, may: READ, status: 200 }],
@@ -265,6 +274,16 @@ const cases: [string, Case][] = [
     },
   ],
   ["DELETE notes/… (the owner's)", { method: 'DELETE', module: note, may: MANAGE, status: 204, fresh: 'noteId' }],
+  ['GET share-links', { method: 'GET', module: shareLinks, may: EDIT, status: 200, part: 'analysisId' }],
+  [
+    'POST share-links',
+    { method: 'POST', module: shareLinks, may: EDIT, status: 201, part: 'analysisId', body: () => SHARED },
+  ],
+  [
+    'PATCH share-links/…',
+    { method: 'PATCH', module: shareLink, may: EDIT, status: 200, fresh: 'linkId', body: () => SHARED },
+  ],
+  ['DELETE share-links/…', { method: 'DELETE', module: shareLink, may: EDIT, status: 204, fresh: 'linkId' }],
   ['GET corrections', { method: 'GET', module: corrections, may: READ, status: 200 }],
   [
     'POST corrections',

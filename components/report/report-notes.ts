@@ -1,0 +1,29 @@
+import type { SharedNote } from '@/lib/schemas/share'
+
+export interface ReportNote {
+  /** Null: on the whole analysis, with no place in a picture. */
+  number: number | null
+  note: SharedNote
+}
+
+/** Numbered in the order they were written, as on the bench. */
+export function numberReportNotes(notes: readonly SharedNote[]): ReportNote[] {
+  const placed = notes.filter(({ anchor }) => anchor.kind !== 'whole')
+  return notes.map((note) => ({ number: note.anchor.kind === 'whole' ? null : placed.indexOf(note) + 1, note }))
+}
+
+/** The marks that the pictures draw. */
+export function noteMarks(notes: readonly ReportNote[]) {
+  const times: { number: number; timeSeconds: number }[] = []
+  const periods: { number: number; periodSeconds: number }[] = []
+  const angles: { number: number; angleDegrees: number }[] = []
+  for (const { number, note } of notes) {
+    if (number === null) continue
+    if (note.anchor.kind === 'time') times.push({ number, timeSeconds: note.anchor.timeSeconds })
+    if (note.anchor.kind === 'period') periods.push({ number, periodSeconds: note.anchor.periodSeconds })
+    if (note.anchor.kind === 'worm-angle') angles.push({ number, angleDegrees: note.anchor.angleDegrees })
+  }
+  return { times, periods, angles }
+}
+
+export type NoteMarks = ReturnType<typeof noteMarks>

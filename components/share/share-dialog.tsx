@@ -1,0 +1,98 @@
+'use client'
+
+import { useState } from 'react'
+import { Button } from '@/components/ui/button'
+import { DataState } from '@/components/ui/data-state'
+import { Dialog } from '@/components/ui/dialog'
+import { Notice } from '@/components/ui/notice'
+import type { Note } from '@/lib/schemas/api'
+import type { ShareLink } from '@/lib/schemas/share'
+import { ShareLinkEntry } from './share-link-entry'
+import { ShareLinkForm } from './share-link-form'
+import { useShareLinks } from './use-share-links'
+
+interface ShareButtonProps {
+  projectId: string
+  analysisId: string
+  notes: readonly Note[]
+}
+
+/** “Share”, and the panel where links to this analysis are made, handed on and taken back. */
+export function ShareButton(props: ShareButtonProps) {
+  const [isOpen, setOpen] = useState(false)
+  return (
+    <>
+      <Button onClick={() => setOpen(true)}>Share</Button>
+      <Dialog isOpen={isOpen} onClose={() => setOpen(false)} title="Share this analysis" className="max-w-2xl">
+        <SharePanel {...props} onClose={() => setOpen(false)} />
+      </Dialog>
+    </>
+  )
+}
+
+type Work = { kind: 'look' } | { kind: 'make' } | { kind: 'change'; link: ShareLink }
+
+function SharePanel({ projectId, analysisId, notes, onClose }: ShareButtonProps & { onClose: () => void }) {
+  const { links, error, reload, make, change, revoke } = useShareLinks(projectId, analysisId)
+  const [work, setWork] = useState<Work>({ kind: 'look' })
+  const look = () => setWork({ kind: 'look' })
+  const isFirst = links?.length === 0
+
+  return (
+    <div className="flex flex-col gap-4">
+      <Notice tone="warning" title="Anyone who has a link can read the report">
+        It needs no account and can be passed on. It shows the figures and pictures of this analysis, the names of mount
+        and run, and the notes that you choose; not the file, and nothing else of the project.
+      </Notice>
+      {work.kind === 'change' ? (
+        <ShareLinkForm
+          key={work.link.id}
+          link={work.link}
+          notes={notes}
+          onSend={async (fields) => {
+            await change(work.link.id, fields)
+            look()
+          }}
+          onCancel={look}
+        />
+      ) : (
+        <DataState what="the links" data={links} error={error} onRetry={reload}>
+          {(all) => (
+            <>
+              {work.kind === 'make' || isFirst ? (
+                <ShareLinkForm
+                  link={null}
+                  notes={notes}
+                  onSend={async (fields) => {
+                    await make(fields)
+                    look()
+                  }}
+                  onCancel={isFirst ? onClose : look}
+                />
+              ) : (
+                <div className="flex flex-wrap justify-between gap-2">
+                  <Button variant="primary" onClick={() => setWork({ kind: 'make' })}>
+                    Make another link
+                  </Button>
+                  <Button onClick={onClose}>Close</Button>
+                </div>
+              )}
+              {all.length > 0 && work.kind === 'look' ? (
+                <ul aria-label="Links to this analysis">
+                  {all.map((link) => (
+                    <ShareLinkEntry
+                      key={link.id}
+                      link={link}
+                      onChange={() => setWork({ kind: 'change', link })}
+                      onRevoke={() => revoke(link.id)}
+                    />
+                  ))}
+                </ul>
+              ) : null}
+            </>
+          )}
+        </DataState>
+      )}
+    </div>
+  )
+}
