@@ -20,28 +20,13 @@ export function PrintButton({ sheet, isSettled }: PrintButtonProps) {
     const element = sheet.current
     if (!isWanted || !isSettled || !element) return
     let isGone = false
-    const root = document.documentElement
-    const theme = root.dataset.theme
-    const restore = () => {
-      delete element.dataset.paper
-      if (theme === undefined) delete root.dataset.theme
-      else root.dataset.theme = theme
-    }
     const print = async () => {
-      element.dataset.paper = 'true'
-      root.dataset.theme = 'day'
-      await nextFrames(2)
-      await drawn(element, () => isGone)
-      if (isGone) return
-      window.addEventListener('afterprint', restore, { once: true })
-      window.print()
-      setWanted(false)
+      await printOnPaper(element, () => isGone)
+      if (!isGone) setWanted(false)
     }
     void print()
     return () => {
-      if (isGone) return
       isGone = true
-      restore()
     }
   }, [isWanted, isSettled, sheet])
 
@@ -50,6 +35,24 @@ export function PrintButton({ sheet, isSettled }: PrintButtonProps) {
       {isWanted ? 'Waiting for the pictures' : 'Print or save as PDF'}
     </Button>
   )
+}
+
+async function printOnPaper(sheet: HTMLElement, isGone: () => boolean): Promise<void> {
+  const root = document.documentElement
+  const { theme } = root.dataset
+  const restore = () => {
+    delete sheet.dataset.paper
+    if (theme === undefined) delete root.dataset.theme
+    else root.dataset.theme = theme
+  }
+  sheet.dataset.paper = 'true'
+  root.dataset.theme = 'day'
+  await nextFrames(2)
+  await drawn(sheet, isGone)
+  if (isGone()) return restore()
+  // Some browsers return before the printer has the page.
+  window.addEventListener('afterprint', restore, { once: true })
+  window.print()
 }
 
 /** Until every picture of the library stands there in the width of its place. */

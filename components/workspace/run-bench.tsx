@@ -4,6 +4,7 @@ import { useRouter } from 'next/navigation'
 import { useEffect, useRef, useState } from 'react'
 import { Bench } from '@/components/bench/bench'
 import type { TableRequest } from '@/components/bench/make-table'
+import { ShareButton } from '@/components/share/share-dialog'
 import { Crumbs, type Crumb } from '@/components/shell/page-heading'
 import { Button } from '@/components/ui/button'
 import { Notice } from '@/components/ui/notice'
@@ -96,6 +97,9 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
         actions={
           isViewer ? null : (
             <>
+              {analysis && !project.archivedAt ? (
+                <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} />
+              ) : null}
               {analysis && !isAsSaved ? (
                 <Button onClick={() => setRecipe(analysis.recipe)}>Back to the saved one</Button>
               ) : null}

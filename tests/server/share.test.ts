@@ -73,7 +73,7 @@ describe('a share link', () => {
       preface: 'Have a look',
       expiresAt,
       noteIds: [chosen],
-      createdBy: 'Emil Editor',
+      createdBy: 'Edda Editor',
       revokedAt: null,
       openedCount: 0,
       lastOpenedAt: null,
@@ -130,7 +130,7 @@ describe('what a link opens', () => {
     const text = await response.text()
     const report = shareReportSchema.parse(JSON.parse(text))
     expect(JSON.parse(text)).toEqual(report)
-    expect(report).toMatchObject({ sharedBy: 'Emil Editor', preface: 'Read this', subject: { kind: 'analysis' } })
+    expect(report).toMatchObject({ sharedBy: 'Edda Editor', preface: 'Read this', subject: { kind: 'analysis' } })
     expect(report.subject.notes.map((note) => note.text)).toEqual(['For the support desk'])
     expect(report.subject.result?.worm).not.toBeNull()
   })
