@@ -24,8 +24,8 @@ const SWINGS = [
 ] as const
 
 const UNITS = [
-  { value: 'arcsec', label: '″' },
-  { value: 'px', label: 'px' },
+  { value: 'arcsec', label: 'Arc seconds, ″' },
+  { value: 'px', label: 'Pixels, px' },
 ] as const
 
 /** How this person sees things; every choice is kept with the account at once and holds on all pages. */
@@ -54,7 +54,7 @@ export function DisplaySection() {
   return (
     <SheetSection
       title="Display"
-      question="How you see things, in every browser you sign in with. What is computed and saved, and what you download as a table, never depends on it."
+      question="How you see things, in every browser you sign in with. What is computed and saved, and every correction table, never depends on it."
     >
       <div className="flex flex-col gap-6">
         <Choice
@@ -109,9 +109,9 @@ export function DisplaySection() {
 function Choice({ title, text, children }: { title: string; text: string; children: ReactNode }) {
   return (
     <div>
-      <h3 className="mb-1.5 font-semibold">{title}</h3>
+      <h3 className="font-semibold">{title}</h3>
+      <p className="mb-2 max-w-[70ch] text-sm text-pretty text-soft">{text}</p>
       {children}
-      <p className="mt-1.5 max-w-[70ch] text-sm text-pretty text-soft">{text}</p>
     </div>
   )
 }

@@ -164,7 +164,7 @@ function HistoryTable({ projectId, history }: { projectId: string; history: read
             recorded
           </th>
           <th scope="col" className="py-1.5 pl-2 text-right font-medium">
-            {isAmplitude ? 'ampl. ″' : 'first p–p ″'}
+            {isAmplitude ? 'ampl. ″' : 'fund. p–p ″'}
           </th>
           <th scope="col" className="py-1.5 pl-2 text-right font-medium">
             {isAmplitude ? 'p–p ″' : 'all p–p ″'}

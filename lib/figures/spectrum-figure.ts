@@ -65,6 +65,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
   const marks = input.notes.map((note) => noteMark({ ...note, x: note.periodSeconds, isLog: true }, frame))
   const ruler = wormPeriod === null ? null : rulerOf({ wormPeriod, range, width, frame })
   const axes = { xLog, yLog, width, heightPx: heightPx - margin.t - margin.b }
+  const axisTitle = `${displacementUnitWord(display)} ${swingWord(display)}`
   const chance = chanceLabel({ ...input, spectrum }, axes)
   const layout: Partial<Layout> = {
     ...baseLayout(frame, { heightPx, margin }),
@@ -89,7 +90,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
     },
     shapes: [...(ruler?.shapes ?? []), ...marks.flatMap(({ shapes }) => shapes)],
     annotations: [
-      axisNote(`${displacementUnitWord(display)} ${swingWord(display)}`, frame, {
+      axisNote(axisTitle, frame, {
         // On a phone the worm's own stem stands in the left corner.
         ...(narrow ? { x: 1, xanchor: 'right', xshift: -2 } : { x: 0, xanchor: 'left', xshift: 4 }),
         y: 1,
@@ -99,7 +100,7 @@ export function spectrumFigure(input: SpectrumFigureInput): Figure {
       axisNote('period', frame, { x: 1, y: 0, xanchor: 'right', yanchor: 'top', yshift: -24 }),
       ...(ruler?.annotations ?? []),
       chance.annotation,
-      ...stemLabels(stems, { ...axes, taken: chance.box, frame }),
+      ...stemLabels(stems, { ...axes, taken: chance.box, axisTitle, frame }),
       ...marks.map(({ annotation }) => annotation),
     ],
   }

@@ -77,9 +77,9 @@ export interface PlotAxes {
 /** Names of the stems, the tallest first, where no other name stands. */
 export function stemLabels(
   stems: readonly Stem[],
-  axes: PlotAxes & { taken: Box; frame: FigureFrame },
+  axes: PlotAxes & { taken: Box; axisTitle: string; frame: FigureFrame },
 ): Partial<Annotation>[] {
-  const { xLog, yLog, width, heightPx, frame, taken } = axes
+  const { xLog, yLog, width, heightPx, frame, taken, axisTitle } = axes
   const points = stems
     .map((stem) => ({
       stem,
@@ -91,8 +91,9 @@ export function stemLabels(
     .filter(({ xPx }) => xPx >= 0 && xPx <= width)
     .sort((a, b) => b.stem.size - a.stem.size)
   // The name of the axis stands in the upper left corner, on a phone in the right one.
-  const left = isNarrow(frame) ? width - 128 : 0
-  const blocked = [{ left, right: left + 128, top: 0, bottom: 17 }, taken]
+  const titleWidth = Math.max(128, 7.3 * axisTitle.length + 8)
+  const left = isNarrow(frame) ? width - titleWidth : 0
+  const blocked = [{ left, right: left + titleWidth, top: 0, bottom: 17 }, taken]
   return placeLabels(points, { widthPx: width, blocked }).map(({ xPx, yPx, text, anchor, liftPx }) => {
     const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
     return {

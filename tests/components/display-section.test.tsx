@@ -60,7 +60,7 @@ test('each choice is sent alone, shown at once, and the page is drawn anew', asy
   open()
   await choose('Size of a swing', 'Peak-to-peak')
   expect(chosen('Size of a swing')).toEqual(['peak-to-peak'])
-  await choose('Displacement', 'px')
+  await choose('Displacement', 'Pixels, px')
   await screen.findByText('Saved.')
   expect(sent).toEqual([{ swingMeasure: 'peak-to-peak' }, { displacementUnit: 'px' }])
   expect(refresh).toHaveBeenCalledTimes(2)
