@@ -11,6 +11,7 @@ const zones = [
   { target: './lib/formats', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/figures', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/findings', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
+  { target: './lib/mail', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/schemas', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './workers', from: ['./app', './components', './db', './lib/client', './lib/server'] },
   { target: './db', from: ['./app', './components', './lib/client', './lib/server', './workers'] },

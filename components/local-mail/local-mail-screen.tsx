@@ -29,18 +29,24 @@ export function LocalMailScreen() {
   const [selected, setSelected] = useState<string | null>(null)
   const [fault, setFault] = useState<string | null>(null)
 
-  async function change(work: () => Promise<unknown>) {
+  /** Shows what is wanted at once, and what is so once the server has answered. */
+  async function change(wanted: Partial<MailsAnswer>, work: () => Promise<unknown>) {
     setFault(null)
+    const show = (shown: MailsAnswer | undefined) => ({ isRefusing: false, mails: [], ...shown, ...wanted })
     try {
-      await work()
+      await mutate(
+        work().then(() => undefined),
+        { optimisticData: show, populateCache: false },
+      )
     } catch (reason) {
       setFault(reason instanceof Error ? reason.message : String(reason))
     }
-    await mutate()
   }
 
   const setRefusing = (isRefusing: boolean) =>
-    change(() => sendJson('PUT', `${ADDRESS}/refusing`, { isRefusing }, localMailRefusingSchema))
+    change({ isRefusing }, () => sendJson('PUT', `${ADDRESS}/refusing`, { isRefusing }, localMailRefusingSchema))
+
+  const deleteAll = () => change({ mails: [] }, () => sendOnly('DELETE', ADDRESS))
 
   return (
     <DataState what="the mails" data={data} error={error} onRetry={() => void mutate()}>
@@ -51,11 +57,7 @@ export function LocalMailScreen() {
             <PageHeading
               title={finding(mails.length, isRefusing)}
               lead="No mail server is set (SMTP_URL), so mails go no further than this machine. This page takes the place of everybody’s mailbox while you try things out."
-              actions={
-                mails.length > 0 ? (
-                  <Button onClick={() => void change(() => sendOnly('DELETE', ADDRESS))}>Delete all mails</Button>
-                ) : null
-              }
+              actions={mails.length > 0 ? <Button onClick={() => void deleteAll()}>Delete all mails</Button> : null}
             />
             <Checkbox
               label="Let the mail server fail"

@@ -28,6 +28,11 @@ server.on('request', (request, response) => {
     response.end()
   })
 })
+const sockets = new Set()
+server.on('connection', (socket) => {
+  sockets.add(socket)
+  socket.on('close', () => sockets.delete(socket))
+})
 server.on('error', (error) => {
   console.error(error.message)
   process.exit(1)
@@ -42,7 +47,7 @@ async function stop() {
   isStopping = true
   const closed = new Promise((resolve) => server.close(resolve))
   // Pages under development keep a connection open for as long as they are shown.
-  if (isDevelopment) server.closeAllConnections()
+  if (isDevelopment) for (const socket of sockets) socket.destroy()
   await closed
   await app.close()
   process.exit(0)

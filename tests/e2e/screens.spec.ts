@@ -70,6 +70,15 @@ const screens: Screen[] = [
   visit('landing', '/'),
   visit('sign-in', '/sign-in'),
   visit('sign-up', '/sign-up'),
+  {
+    name: 'local mail',
+    isMembersOnly: false,
+    open: async (page) => {
+      await page.goto('/local-mail')
+      await expect(page.getByRole('heading', { level: 1 })).toBeVisible()
+      await expect(page.getByText('Getting the')).toHaveCount(0)
+    },
+  },
   visit('not-found', '/no-such-page'),
   visit('bench intake', '/bench'),
   {

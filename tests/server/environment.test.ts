@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest'
-import { parseEnvironmentFile, settingFaults } from '@/db/local/settings.mjs'
+import { linkOriginOf, parseEnvironmentFile, settingFaults } from '@/db/local/settings.mjs'
 import { parseEnvironment } from '@/lib/server/environment'
 import { assertOwnOrigin } from '@/lib/server/origin'
 
@@ -23,6 +23,31 @@ test.each(faults)('%s is refused as %o, by the start script and by the server', 
 
 test.each(['0', '65536', '30 00', '-1', '3000.5'])('PORT is refused as %s', (PORT) => {
   expect(settingFaults({ PORT })).toEqual([expect.stringContaining('PORT')])
+})
+
+test.each([
+  'Turnwright',
+  'mail@',
+  '<mail@example.org',
+  'a@b.example, c@d.example',
+  'A <a@b.example>\nBcc: c@d.example',
+])('MAIL_FROM is refused as %j', (MAIL_FROM) => {
+  expect(settingFaults({ MAIL_FROM })).toEqual([expect.stringContaining('MAIL_FROM')])
+})
+
+test.each(['mail@example.org', 'Turnwright <mail@example.org>', '"The club, Hillside" <mail@hillside.example>'])(
+  'MAIL_FROM is taken as %s',
+  (MAIL_FROM) => {
+    expect(settingFaults({ MAIL_FROM })).toEqual([])
+  },
+)
+
+test.each([
+  ['https://turnwright.example.org/', 'https://turnwright.example.org'],
+  ['', 'http://localhost:3003'],
+  [undefined, 'http://localhost:3003'],
+])('with BASE_URL %s the links in mails lead to %s', (BASE_URL, origin) => {
+  expect(linkOriginOf({ BASE_URL }, 3003)).toBe(origin)
 })
 
 test('each fault has its own line', () => {
