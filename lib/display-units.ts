@@ -75,11 +75,6 @@ export function shortSwingWord({ swingMeasure }: Pick<Display, 'swingMeasure'>):
   return swingMeasure === 'amplitude' ? 'ampl.' : 'peak-to-peak'
 }
 
-/** Over the worm’s amplitude in lists, where the peak-to-peak of the whole worm stands beside it. */
-export function fundamentalHead({ swingMeasure }: Pick<Display, 'swingMeasure'>): string {
-  return swingMeasure === 'amplitude' ? 'Worm amplitude' : 'Worm fundamental, peak-to-peak'
-}
-
 /** The head of a CSV column that holds amplitudes: amplitude_arcsec, peak_to_peak_px. */
 export function swingColumn(display: Display, part: 'value' | 'stderr' = 'value'): string {
   const measure = display.swingMeasure === 'amplitude' ? 'amplitude' : 'peak_to_peak'
