@@ -19,9 +19,10 @@ const columns: readonly DataColumn<Project>[] = [
     id: 'name',
     header: 'Mount',
     value: ({ name }) => name,
-    cell: ({ id, name }) => (
+    cell: ({ id, name, archivedAt }) => (
       <Link className="link font-semibold" href={`/projects/${id}`}>
         {name}
+        {archivedAt ? <span className="font-normal text-soft"> (archived)</span> : null}
       </Link>
     ),
   },
@@ -60,9 +61,12 @@ export function ProjectsScreen() {
           <PageHeading
             title={findingText(projectsFinding(projects))}
             actions={
-              <ButtonLink href="/projects/new" variant="primary">
-                New project
-              </ButtonLink>
+              <>
+                <ButtonLink href="/projects/import">Bring in an archive</ButtonLink>
+                <ButtonLink href="/projects/new" variant="primary">
+                  New project
+                </ButtonLink>
+              </>
             }
           />
           {projects.length === 0 ? (

@@ -11,6 +11,7 @@ import { formatDayAndTime } from '@/lib/client/dates'
 import { useProject, useRuns, type RunRow } from '@/lib/client/project-data'
 import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
+import { canEditProject } from '@/lib/schemas/rights'
 import { formatBytes, formatCount } from '@/lib/units'
 
 const columns: readonly DataColumn<RunRow>[] = [
@@ -74,7 +75,7 @@ const columns: readonly DataColumn<RunRow>[] = [
 export function RunsScreen({ projectId }: { projectId: string }) {
   const project = useProject(projectId)
   const { data, error, mutate } = useRuns(projectId)
-  const canEdit = project.data !== undefined && project.data.role !== 'viewer'
+  const canEdit = project.data !== undefined && canEditProject(project.data)
   const upload = (
     <ButtonLink href={`/projects/${projectId}/runs/new`} variant="primary">
       Bring in a run

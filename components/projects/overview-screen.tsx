@@ -26,6 +26,7 @@ import { projectHistory, type HistoryPoint } from '@/lib/findings/project-histor
 import { counted } from '@/lib/findings/words'
 import type { Project } from '@/lib/schemas/api'
 import { overviewFiguresSchema } from '@/lib/schemas/kept-figures'
+import { canEditProject } from '@/lib/schemas/rights'
 import { formatNumber } from '@/lib/units'
 import { HistoryPicture } from './history-picture'
 import { overviewKeyFigures } from './overview-figures'
@@ -66,7 +67,7 @@ function Overview({ project, runs, analyses }: OverviewProps) {
   const latest = figures.success ? figures.data : null
   const display = useDisplay(kept.data?.recipe.conversion ?? null)
   const { day } = useDates()
-  const canEdit = project.role !== 'viewer'
+  const canEdit = canEditProject(project)
   const title = overviewFinding({
     name: project.name,
     runCount: runs.length,

@@ -15,6 +15,7 @@ export function NameForm({ project, onSaved }: { project: Project; onSaved: (pro
   const { save, isBusy, fault, fields, conflict, dropConflict } = useSave(projectSchema)
 
   if (project.role !== 'owner') return <p>{project.name} – only its owner changes the name.</p>
+  if (project.archivedAt) return <p>{project.name} – an archived project keeps its name.</p>
 
   async function send(version: number) {
     const parsed = projectChangeSchema.shape.name.safeParse(name)

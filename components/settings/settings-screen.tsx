@@ -5,6 +5,10 @@ import { DataState } from '@/components/ui/data-state'
 import { SheetSection } from '@/components/ui/sheet-section'
 import { useOpticsPresets, useProject } from '@/lib/client/project-data'
 import { capitalised, counted } from '@/lib/findings/words'
+import { canEditProject } from '@/lib/schemas/rights'
+import { ArchiveSection } from './archive-section'
+import { DeleteSection } from './delete-section'
+import { DownloadSection } from './download-section'
 import { NameForm } from './name-form'
 import { OpticsPresets } from './optics-presets'
 
@@ -43,9 +47,18 @@ export function SettingsScreen({ projectId }: { projectId: string }) {
             <OpticsPresets
               projectId={projectId}
               presets={list}
-              canEdit={shown.role !== 'viewer'}
+              canEdit={canEditProject(shown)}
               onChanged={() => void presets.mutate()}
             />
+          </SheetSection>
+          <SheetSection title="Download everything" question="A copy to keep, in formats that other programs read.">
+            <DownloadSection projectId={projectId} />
+          </SheetSection>
+          <SheetSection title="Archive" question="Is the work on this mount done for now?">
+            <ArchiveSection project={shown} onSaved={(saved) => void project.mutate(saved, { revalidate: false })} />
+          </SheetSection>
+          <SheetSection title="Delete" question="The end of it, for everybody.">
+            <DeleteSection project={shown} />
           </SheetSection>
         </>
       )}

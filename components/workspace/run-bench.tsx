@@ -16,6 +16,7 @@ import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import { compareResults, rerunFinding } from '@/lib/findings/rerun-finding'
 import { correctionSchema, type Analysis, type Project, type Run } from '@/lib/schemas/api'
 import { defaultRecipe } from '@/lib/schemas/recipe'
+import { canEditProject } from '@/lib/schemas/rights'
 import { assertCurrent } from './assert-current'
 import { NameDialog } from './name-dialog'
 import { useRunNotes } from './use-run-notes'
@@ -34,7 +35,7 @@ interface RunBenchProps {
 /** The bench on a stored run, as the project has it or as an analysis was saved. */
 export function RunBench({ project, run, analysis, savedResult, userId }: RunBenchProps) {
   const router = useRouter()
-  const isViewer = project.role === 'viewer'
+  const isReadOnly = !canEditProject(project)
   const [base] = useState<Recipe>(() => analysis?.recipe ?? recipeOf(project, run))
   const [recipe, setRecipe] = useState(base)
   const bench = useBenchAnalysis(recipe)
@@ -95,7 +96,7 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
         runLabel={label}
         crumbs={<Crumbs crumbs={crumbsOf(project, run, analysis)} />}
         actions={
-          isViewer ? null : (
+          isReadOnly ? null : (
             <>
               {analysis && !project.archivedAt ? (
                 <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} />
@@ -114,7 +115,7 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
         onMakeTable={shown?.table ? makeTable : undefined}
         hasWormAngle={bench.loaded?.ok === true && bench.loaded.hasWormAngle}
         mountCorrection={run.facts.mountCorrection}
-        isReadOnly={isViewer}
+        isReadOnly={isReadOnly}
       />
       <div className="no-print flex flex-col gap-3 empty:hidden">
         {(fault ?? bench.fault) ? (

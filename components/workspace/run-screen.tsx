@@ -4,10 +4,14 @@ import { useRouter } from 'next/navigation'
 import { useCallback, useEffect, useMemo, useRef, useState } from 'react'
 import type { ImportChoices } from '@/components/import/import-draft'
 import type { IntakeFile } from '@/components/import/file-intake'
+import { PageHeading } from '@/components/shell/page-heading'
+import { ButtonAnchor } from '@/components/ui/button'
+import { EmptyState } from '@/components/ui/empty-state'
 import { Notice } from '@/components/ui/notice'
 import { importRun } from '@/lib/client/save-run'
 import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import type { Project, Run } from '@/lib/schemas/api'
+import { canEditProject } from '@/lib/schemas/rights'
 import { ReadingScreen } from './reading-screen'
 import { RunBench } from './run-bench'
 import { RunFactsPanel } from './run-facts-panel'
@@ -16,11 +20,42 @@ import { WorkerFault } from './worker-fault'
 
 /** A stored run: its bench once its columns are known, before that the form that names them. */
 export function RunScreen({ project, run, userId }: { project: Project; run: Run; userId: string }) {
-  if (run.status === 'uploaded') return <UnreadRun project={project} run={run} />
+  if (run.status === 'uploaded') {
+    return canEditProject(project) ? (
+      <UnreadRun project={project} run={run} />
+    ) : (
+      <UnreadForReaders project={project} run={run} />
+    )
+  }
   return (
     <>
       <RunBench project={project} run={run} userId={userId} analysis={null} savedResult={null} />
-      <RunFactsPanel run={run} canEdit={project.role !== 'viewer'} />
+      <RunFactsPanel run={run} canEdit={canEditProject(project)} />
+    </>
+  )
+}
+
+/** The same for who may not say how to read it. */
+function UnreadForReaders({ project, run }: { project: Project; run: Run }) {
+  const root = `/projects/${project.id}`
+  return (
+    <>
+      <PageHeading
+        crumbs={[{ label: project.name, href: root }, { label: 'Runs', href: `${root}/runs` }, { label: run.name }]}
+        title={`“${run.name}” is stored but not read yet`}
+      />
+      <EmptyState
+        title="There is nothing to show until its columns are named"
+        actions={
+          <ButtonAnchor href={`/api${root}/runs/${run.id}/file`} download>
+            Download the file
+          </ButtonAnchor>
+        }
+      >
+        {project.archivedAt
+          ? 'An owner can open the project again; then an owner or an editor names the columns.'
+          : 'An owner or an editor of this project names the columns.'}
+      </EmptyState>
     </>
   )
 }

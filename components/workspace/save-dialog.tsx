@@ -12,6 +12,7 @@ import { Select } from '@/components/ui/select'
 import { TextInput } from '@/components/ui/text-input'
 import { getJson, RequestError } from '@/lib/client/fetcher'
 import { projectListSchema, type Project } from '@/lib/schemas/api'
+import { canEditProject } from '@/lib/schemas/rights'
 
 const newProject = 'new'
 const nameRule = z.string().trim().max(120, { error: 'At most 120 characters' })
@@ -73,7 +74,7 @@ function SaveForm({
   onClose,
   progressText,
 }: Omit<SaveDialogProps, 'isOpen' | 'onSignedOut'> & { projects: Project[] }) {
-  const writable = projects.filter((project) => project.role !== 'viewer')
+  const writable = projects.filter(canEditProject)
   const { register, handleSubmit, control, setError, formState } = useForm({
     resolver: zodResolver(saveSchema),
     defaultValues: { projectId: writable[0]?.id ?? newProject, ...defaults },

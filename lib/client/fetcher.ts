@@ -68,8 +68,9 @@ export function sendBytes<Schema extends z.ZodType>(
 }
 
 /** For requests that answer nothing (204). */
-export async function sendOnly(method: 'POST' | 'DELETE', url: string): Promise<void> {
-  const response = await reach(url, { method })
+export async function sendOnly(method: 'POST' | 'DELETE', url: string, body?: unknown): Promise<void> {
+  const json = { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) }
+  const response = await reach(url, { method, ...(body === undefined ? {} : json) })
   if (!response.ok) throw await refusal(response)
 }
 
@@ -99,7 +100,8 @@ async function reach(url: string, init: RequestInit): Promise<Response> {
   }
 }
 
-async function refusal(response: Response): Promise<RequestError> {
+/** What the answer of a refused request says. */
+export async function refusal(response: Response): Promise<RequestError> {
   const parsed = errorAnswerSchema.safeParse(await response.json().catch(() => undefined))
   if (parsed.success) {
     const { message, ...rest } = parsed.data.error

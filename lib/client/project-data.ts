@@ -9,6 +9,7 @@ import {
   correctionSchema,
   memberListSchema,
   opticsPresetListSchema,
+  projectContentsSchema,
   projectListSchema,
   projectSchema,
   runListSchema,
@@ -81,5 +82,22 @@ export function useOpticsPresets(projectId: string) {
   return useSWR<z.output<typeof opticsPresetListSchema>, Error>(
     `${projectKey(projectId)}/optics-presets`,
     (url: string) => getJson(url, opticsPresetListSchema),
+  )
+}
+
+/** What goes with the project when it is deleted; asked for while `isWanted`, and then afresh. */
+export function useProjectContents(projectId: string, isWanted: boolean) {
+  return useSWR<z.output<typeof projectContentsSchema>, Error>(
+    isWanted ? `${projectKey(projectId)}/contents` : null,
+    (url: string) => getJson(url, projectContentsSchema),
+  )
+}
+
+/** Asks again when the page is come back to: somebody may have put the project away or deleted it meanwhile. */
+export function useProjectStanding(projectId: string) {
+  return useSWR<z.output<typeof projectSchema>, Error>(
+    projectKey(projectId),
+    (url: string) => getJson(url, projectSchema),
+    { revalidateOnFocus: true, focusThrottleInterval: 2000 },
   )
 }

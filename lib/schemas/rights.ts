@@ -58,3 +58,8 @@ export function isHigherRole(role: Role, than: Role): boolean {
 export function aRole(role: Role): string {
   return role === 'viewer' ? 'a viewer' : `an ${role}`
 }
+
+/** Whether somebody of this role can change what is in the project now; nobody can while it is archived. */
+export function canEditProject({ role, archivedAt }: { role: Role; archivedAt: string | null }): boolean {
+  return RIGHTS[role].edit && archivedAt === null
+}

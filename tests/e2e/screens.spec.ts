@@ -107,6 +107,7 @@ const screens: Screen[] = [
     },
   },
   { ...visit('new project', '/projects/new'), isMembersOnly: true },
+  { ...visit('import of an archive', '/projects/import'), isMembersOnly: true },
   { ...visit('account', '/account'), isMembersOnly: true },
   memberVisit('overview', ''),
   memberVisit('drive train', '/drive'),

@@ -1,4 +1,5 @@
 import type { Metadata } from 'next'
+import { ProjectFrame } from '@/components/projects/project-frame'
 import { SwrFallback } from '@/components/shell/swr-fallback'
 import { currentUser, requireProjectPage } from '@/lib/server/current-user'
 import { loadProject } from '@/lib/server/load-projects'
@@ -16,5 +17,9 @@ export default async function ProjectLayout({ children, params }: LayoutProps<'/
   if (!(await currentUser())) return children
   const { access } = await requireProjectPage((await params).projectId)
   const project = await loadProject(access)
-  return <SwrFallback fallback={{ [`/api/projects/${project.id}`]: project }}>{children}</SwrFallback>
+  return (
+    <SwrFallback fallback={{ [`/api/projects/${project.id}`]: project }}>
+      <ProjectFrame projectId={project.id}>{children}</ProjectFrame>
+    </SwrFallback>
+  )
 }
