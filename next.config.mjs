@@ -5,8 +5,8 @@ const SECURITY_HEADERS = [
   { key: 'Permissions-Policy', value: 'camera=(), microphone=(), geolocation=()' },
 ]
 
-/** What a share link opens is for whoever holds the link: not for search engines, and its address goes nowhere else. */
-const SHARE_HEADERS = [
+/** Pages that whoever holds their link opens: not for search engines, and their address goes nowhere else. */
+const SECRET_LINK_HEADERS = [
   { key: 'Referrer-Policy', value: 'no-referrer' },
   { key: 'X-Robots-Tag', value: 'noindex, nofollow, noarchive' },
   { key: 'Cache-Control', value: 'private, no-store' },
@@ -18,8 +18,9 @@ const nextConfig = {
   // The later entry wins where two set the same header.
   headers: async () => [
     { source: '/:path*', headers: SECURITY_HEADERS },
-    { source: '/share/:path*', headers: SHARE_HEADERS },
-    { source: '/api/share/:path*', headers: SHARE_HEADERS },
+    { source: '/share/:path*', headers: SECRET_LINK_HEADERS },
+    { source: '/api/share/:path*', headers: SECRET_LINK_HEADERS },
+    { source: '/invite/:path*', headers: SECRET_LINK_HEADERS },
   ],
   reactStrictMode: true,
   serverExternalPackages: ['@node-rs/argon2', 'pg'],

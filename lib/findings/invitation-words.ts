@@ -1,5 +1,6 @@
 /** Why a link of an invitation opens nothing any more. */
-export type LinkEnd = 'expired' | 'used' | 'revoked' | 'replaced' | 'archived' | 'deleted' | 'unknown'
+export const LINK_ENDS = ['expired', 'used', 'revoked', 'replaced', 'archived', 'deleted', 'unknown'] as const
+export type LinkEnd = (typeof LINK_ENDS)[number]
 
 export interface LinkEndWords {
   /** What is so. */

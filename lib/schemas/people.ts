@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { LINK_ENDS } from '@/lib/findings/invitation-words'
 import { roleSchema, signUpSchema } from './api'
 
 const id = z.uuid()
@@ -36,6 +37,29 @@ export const acceptInvitationSchema = z.object({ token })
 /** POST /api/invitations/sign-up → 201 joinedSchema and a session; 409 `in-use` once the address has an account. */
 export const invitationSignUpSchema = signUpSchema.pick({ displayName: true, password: true }).extend({ token })
 export const joinedSchema = z.object({ projectId: id, role: roleSchema })
+
+/** What the page /invite/[token] tells; no handler gives it. */
+export const invitationLinkSchema = z.object({
+  /** Why it opens nothing; null: it can be followed. */
+  end: z.enum(LINK_ENDS).nullable(),
+  /** Null where it, or its project, is gone. */
+  invitation: z
+    .object({
+      projectId: id,
+      projectName: z.string(),
+      email: z.string(),
+      role: roleSchema,
+      invitedBy: z.string(),
+      expiresAt: instant,
+      /** Whether the invited address can sign in. */
+      hasAccount: z.boolean(),
+    })
+    .nullable(),
+  /** What the visitor is in the project already. */
+  memberRole: roleSchema.nullable(),
+})
+export type InvitationLink = z.infer<typeof invitationLinkSchema>
+export type OpenInvitation = NonNullable<InvitationLink['invitation']>
 
 // Members ---------------------------------------------------------------------------------------------------------------
 

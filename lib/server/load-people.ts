@@ -1,12 +1,11 @@
 import 'server-only'
 import { database } from '@/db'
 import { hasRight, type ProjectAccess } from '@/db/queries/access'
-import { findInvitationLink, type InvitationLink } from '@/db/queries/invitation-links'
+import { findInvitationLink } from '@/db/queries/invitation-links'
 import { listInvitations } from '@/db/queries/invitations'
 import { findMembership } from '@/db/queries/memberships'
 import { sha256Of } from '@/db/tokens'
-import type { Role } from '@/lib/schemas/api'
-import { invitationListSchema } from '@/lib/schemas/people'
+import { invitationLinkSchema, invitationListSchema, type InvitationLink } from '@/lib/schemas/people'
 import { plain } from './plain'
 
 export async function loadInvitations(access: ProjectAccess<'manage'>) {
@@ -18,14 +17,10 @@ export function isManaging(access: ProjectAccess): access is ProjectAccess<'mana
   return hasRight(access, 'manage')
 }
 
-export interface LinkForVisitor extends InvitationLink {
-  /** The visitor's own role in the project, if any. */
-  memberRole: Role | null
-}
-
-export async function loadInvitationLink(token: string, userId: string | null): Promise<LinkForVisitor> {
+/** What the link with this token stands for, to this visitor; changes nothing. */
+export async function loadInvitationLink(token: string, userId: string | null): Promise<InvitationLink> {
   const link = await findInvitationLink(database(), sha256Of(token))
   const projectId = link.invitation?.projectId
   const member = projectId && userId ? await findMembership(database(), { projectId, userId }) : undefined
-  return { ...link, memberRole: member?.role ?? null }
+  return plain(invitationLinkSchema, { ...link, memberRole: member?.role ?? null })
 }
