@@ -100,8 +100,18 @@ async function reach(url: string, init: RequestInit): Promise<Response> {
   }
 }
 
+type RefusalListener = (refused: { url: string; status: number }) => void
+const listeners = new Set<RefusalListener>()
+
+/** Tells of every refusal, whichever part of a page asked. @returns what ends the telling */
+export function onRefused(listener: RefusalListener): () => void {
+  listeners.add(listener)
+  return () => listeners.delete(listener)
+}
+
 /** What the answer of a refused request says. */
 export async function refusal(response: Response): Promise<RequestError> {
+  for (const listener of listeners) listener({ url: response.url, status: response.status })
   const parsed = errorAnswerSchema.safeParse(await response.json().catch(() => undefined))
   if (parsed.success) {
     const { message, ...rest } = parsed.data.error

@@ -1,5 +1,6 @@
 import type { Metadata } from 'next'
 import { ProjectFrame } from '@/components/projects/project-frame'
+import { ProjectGate } from '@/components/projects/project-gate'
 import { SwrFallback } from '@/components/shell/swr-fallback'
 import { currentUser, requireProjectPage } from '@/lib/server/current-user'
 import { loadProject } from '@/lib/server/load-projects'
@@ -19,7 +20,9 @@ export default async function ProjectLayout({ children, params }: LayoutProps<'/
   const project = await loadProject(access)
   return (
     <SwrFallback fallback={{ [`/api/projects/${project.id}`]: project }}>
-      <ProjectFrame projectId={project.id}>{children}</ProjectFrame>
+      <ProjectGate projectId={project.id}>
+        <ProjectFrame projectId={project.id}>{children}</ProjectFrame>
+      </ProjectGate>
     </SwrFallback>
   )
 }
