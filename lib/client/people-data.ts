@@ -1,5 +1,6 @@
 'use client'
 
+import { useEffect } from 'react'
 import useSWR from 'swr'
 import type { z } from 'zod'
 import { invitationListSchema } from '@/lib/schemas/people'
@@ -18,9 +19,16 @@ function refreshMs(list: InvitationList | undefined): number {
 
 /** Invitations that wait; only owners may ask, so nothing is asked for others. */
 export function useInvitations(projectId: string, mayAsk: boolean) {
-  return useSWR<InvitationList, Error>(
-    mayAsk ? invitationsUrl(projectId) : null,
-    (url: string) => getJson(url, invitationListSchema),
-    { refreshInterval: refreshMs },
+  const state = useSWR<InvitationList, Error>(mayAsk ? invitationsUrl(projectId) : null, (url: string) =>
+    getJson(url, invitationListSchema),
   )
+  const { data, mutate } = state
+  const waitMs = refreshMs(data)
+  // Not SWR's refreshInterval: once that has been zero it does not start again.
+  useEffect(() => {
+    if (waitMs === 0) return
+    const timer = setInterval(() => void mutate(), waitMs)
+    return () => clearInterval(timer)
+  }, [waitMs, mutate])
+  return state
 }
