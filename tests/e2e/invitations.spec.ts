@@ -122,7 +122,10 @@ test('a link that was used, replaced or revoked says so, and what to do', async 
   await expect(title(other)).toHaveText('This invitation was taken back')
   const response = await other.goto('/invite/no-such-token')
   await expect(title(other)).toHaveText('This link opens nothing')
-  expect(response?.headers()).toMatchObject({ 'referrer-policy': 'no-referrer', 'x-robots-tag': 'noindex, nofollow' })
+  expect(response?.headers()).toMatchObject({
+    'referrer-policy': 'no-referrer',
+    'x-robots-tag': 'noindex, nofollow, noarchive',
+  })
 })
 
 test('an address that waits already, or is here, is not invited twice', async ({ browser }) => {
