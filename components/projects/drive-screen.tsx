@@ -12,6 +12,7 @@ import { sendJson } from '@/lib/client/fetcher'
 import { useProject } from '@/lib/client/project-data'
 import { findingText } from '@/lib/findings/finding'
 import { driveFinding } from '@/lib/findings/drive-finding'
+import { counted } from '@/lib/findings/words'
 import { projectSchema, type Project } from '@/lib/schemas/api'
 import { canEditProject } from '@/lib/schemas/rights'
 import { DriveTrainEditor } from './drive-train-editor'
@@ -26,6 +27,11 @@ export function DriveScreen({ projectId }: { projectId: string }) {
       {(project) => <DriveForm project={project} onSaved={(saved) => void mutate(saved, { revalidate: false })} />}
     </DataState>
   )
+}
+
+/** In one line; the whole of it is seen when it is taken. */
+function theirDrive({ name, driveTrain }: Project): string {
+  return `“${name}”: ${driveTrain.wheelTeeth} teeth on the worm wheel, ${counted(driveTrain.stages.length, 'further stage')}`
 }
 
 function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: Project) => void }) {
@@ -69,6 +75,7 @@ function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: 
               thing="this project"
               fault={fault}
               conflict={conflict}
+              theirs={theirDrive}
               onKeepMine={({ version: newest }) => void send(newest)}
               onTakeTheirs={(theirs) => {
                 setTyped(theirs.driveTrain)

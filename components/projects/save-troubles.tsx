@@ -1,3 +1,4 @@
+import type { ReactNode } from 'react'
 import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { Notice } from '@/components/ui/notice'
 import { useDates } from '@/lib/client/display'
@@ -8,13 +9,15 @@ interface SaveTroublesProps<Thing> {
   thing: string
   fault: string | null
   conflict: SaveConflict<Thing> | null
+  /** What they made of it, in words. */
+  theirs?: (current: Thing) => ReactNode
   onKeepMine: (current: Thing) => void
   onTakeTheirs: (current: Thing) => void
 }
 
 /** What stands in the way of saving, as useSave tells it; nothing when all is well. */
 export function SaveTroubles<Thing>(props: SaveTroublesProps<Thing>) {
-  const { thing, fault, conflict, onKeepMine, onTakeTheirs } = props
+  const { thing, fault, conflict, theirs, onKeepMine, onTakeTheirs } = props
   const { minute } = useDates()
   return (
     <>
@@ -25,7 +28,9 @@ export function SaveTroubles<Thing>(props: SaveTroublesProps<Thing>) {
           changedAt={conflict.changedAt && minute(conflict.changedAt)}
           onKeepMine={() => onKeepMine(conflict.current)}
           onTakeTheirs={() => onTakeTheirs(conflict.current)}
-        />
+        >
+          {theirs ? <p>Theirs: {theirs(conflict.current)}</p> : null}
+        </ConflictNotice>
       ) : null}
       {fault ? (
         <Notice tone="error" title="Not saved" isLive>

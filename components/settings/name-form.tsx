@@ -44,6 +44,7 @@ export function NameForm({ project, onSaved }: { project: Project; onSaved: (pro
         thing="this project"
         fault={fields.name ? null : fault}
         conflict={conflict}
+        theirs={(theirs) => `“${theirs.name}”`}
         onKeepMine={({ version: newest }) => void send(newest)}
         onTakeTheirs={(theirs) => {
           dropConflict()

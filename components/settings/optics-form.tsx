@@ -12,7 +12,7 @@ import { TextInput } from '@/components/ui/text-input'
 import { sendJson } from '@/lib/client/fetcher'
 import type { OpticsPreset } from '@/lib/client/project-data'
 import { opticsFieldsSchema, opticsPresetSchema } from '@/lib/schemas/api'
-import { imageScaleArcsecPerPx } from '@/lib/units'
+import { formatNumber, imageScaleArcsecPerPx } from '@/lib/units'
 
 interface OpticsFormProps {
   url: string
@@ -140,6 +140,9 @@ export function OpticsForm({ url, preset, onSaved, onClose }: OpticsFormProps) {
         thing="these optics"
         fault={fault}
         conflict={conflict}
+        theirs={({ name, imageScaleArcsecPerPx: scale, imageScaleUncertaintyPercent: uncertainty }) =>
+          `“${name}”, ${formatNumber(scale, 3, { unit: '″/px' })} ± ${formatNumber(uncertainty, 1, { unit: '%' })}`
+        }
         onKeepMine={({ version: newest }) => void send(newest)}
         onTakeTheirs={() => {
           dropConflict()

@@ -1,4 +1,4 @@
-import type { KeptWork } from '@/lib/client/kept-work'
+import { newWorkId, type KeptWork } from '@/lib/client/kept-work'
 import { unknownRunFacts } from '@/lib/schemas/run-facts'
 import {
   SAMPLE_CONVERSION,
@@ -15,6 +15,7 @@ export async function loadSample(): Promise<KeptWork> {
   if (!response.ok) throw new Error('The sample run could not be fetched. Try again in a moment.')
   return {
     version: 1,
+    id: newWorkId(),
     fileName: `${SAMPLE_NAME}.csv`,
     bytes: new Uint8Array(await response.arrayBuffer()),
     settings: SAMPLE_IMPORT,

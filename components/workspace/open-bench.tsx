@@ -9,7 +9,15 @@ import { Button, ButtonLink } from '@/components/ui/button'
 import { Actions, Dialog } from '@/components/ui/dialog'
 import { Notice } from '@/components/ui/notice'
 import type { Recipe } from '@/lib/analysis/types'
-import { dropKeptWork, findKeptWork, keepWork, type KeptWork } from '@/lib/client/kept-work'
+import {
+  dropKeptWork,
+  findKeptWork,
+  isOfAnotherTab,
+  keepWork,
+  newWorkId,
+  tieTabTo,
+  type KeptWork,
+} from '@/lib/client/kept-work'
 import { RequestError } from '@/lib/client/fetcher'
 import { createWorkSaver } from '@/lib/client/save-work'
 import { useBenchAnalysis } from '@/lib/client/use-analysis'
@@ -37,12 +45,16 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
   const [recipe, setRecipe] = useState<Recipe | null>(null)
   const [isRestoring, setRestoring] = useState(true)
   const [isKept, setKept] = useState(true)
+  /** What another tab has kept in the place of what this one showed. */
+  const [replacing, setReplacing] = useState<KeptWork | null>(null)
   const [fault, setFault] = useState<string | null>(null)
   const [dialog, setDialog] = useState<'none' | 'account' | 'save'>('none')
   const analysis = useBenchAnalysis(recipe)
   const { loadFile } = analysis
 
   const open = useCallback((opened: KeptWork) => {
+    tieTabTo(opened.id ?? null)
+    setReplacing(null)
     setWork(opened)
     setRecipe(recipeOf(opened))
     setRestoring(false)
@@ -51,7 +63,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
   const onRead = useCallback(
     async (file: IntakeFile, { settings, conversion, facts, wheelTeeth }: ImportChoices) => {
       const driveTrain = { ...defaultRecipe().driveTrain, wheelTeeth }
-      const opened: KeptWork = { version: 1, ...file, settings, conversion, facts, driveTrain }
+      const opened: KeptWork = { version: 1, id: newWorkId(), ...file, settings, conversion, facts, driveTrain }
       forgetSettings()
       setKept(await keepWork(opened))
       open(opened)
@@ -84,6 +96,10 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
       const kept = await findKeptWork()
       if (parameters.has(SAMPLE_PARAMETER) && !parameters.has(SAVE_PARAMETER)) return openSample()
       if (!kept) return setRestoring(false)
+      if (isOfAnotherTab(kept)) {
+        setReplacing(kept)
+        return setRestoring(false)
+      }
       const loaded = await loadFile(kept.bytes, kept.settings)
       if (!loaded.ok) return setRestoring(false)
       open(kept)
@@ -95,6 +111,7 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
 
   const startOver = useCallback(async () => {
     if (work) await dropKeptWork(work)
+    tieTabTo(null)
     forgetSettings()
     file.startOver()
     setWork(null)
@@ -105,6 +122,14 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
   function askForAccount() {
     setDialog('account')
     if (work) void keepWork(work).then(setKept)
+  }
+
+  /** Shows what the other tab keeps, with its own settings: those in this address were made for another recording. */
+  async function openReplacing(kept: KeptWork) {
+    forgetSettings()
+    const loaded = await loadFile(kept.bytes, kept.settings)
+    if (loaded.ok) open(kept)
+    else setFault(loaded.fault.message)
   }
 
   const saver = useMemo(() => (work ? createWorkSaver() : null), [work])
@@ -135,6 +160,19 @@ export function OpenBench({ isSignedIn }: { isSignedIn: boolean }) {
         onSample={() => void openSample()}
         submitLabel="Show the worm"
       >
+        {replacing ? (
+          <Notice
+            tone="warning"
+            isLive
+            title="Another tab has replaced the recording that was open here"
+            actions={
+              <Button onClick={() => void openReplacing(replacing)}>Open {replacing.fileName} of the other tab</Button>
+            }
+          >
+            This browser keeps one recording at a time. Bring the file again; the settings that you had for it are still
+            in the address.
+          </Notice>
+        ) : null}
         {fault ? <Notice tone="error">{fault}</Notice> : null}
         <WorkerFault message={analysis.fault} kept={KEPT_ON_RELOAD} />
       </ReadingScreen>

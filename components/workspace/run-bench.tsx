@@ -19,6 +19,7 @@ import { defaultRecipe } from '@/lib/schemas/recipe'
 import { canEditProject } from '@/lib/schemas/rights'
 import { assertCurrent } from './assert-current'
 import { NameDialog } from './name-dialog'
+import { RenameAnalysis } from './rename-analysis'
 import { useRunNotes } from './use-run-notes'
 
 interface RunBenchProps {
@@ -40,6 +41,7 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
   const [recipe, setRecipe] = useState(base)
   const bench = useBenchAnalysis(recipe)
   const [isNaming, setNaming] = useState(false)
+  const [isRenaming, setRenaming] = useState(false)
   const [fault, setFault] = useState<string | null>(null)
   const { loadPacked } = bench
 
@@ -101,6 +103,7 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
               {analysis && !project.archivedAt ? (
                 <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} />
               ) : null}
+              {analysis && !project.archivedAt ? <Button onClick={() => setRenaming(true)}>Rename</Button> : null}
               {analysis && !isAsSaved ? (
                 <Button onClick={() => setRecipe(analysis.recipe)}>Back to the saved one</Button>
               ) : null}
@@ -131,6 +134,7 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
           </Notice>
         ) : null}
       </div>
+      {analysis ? <RenameAnalysis analysis={analysis} isOpen={isRenaming} onClose={() => setRenaming(false)} /> : null}
       <NameDialog
         isOpen={isNaming}
         onClose={() => setNaming(false)}

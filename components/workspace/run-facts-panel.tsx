@@ -100,15 +100,38 @@ function Fact({ term, children }: { term: string; children: ReactNode }) {
   )
 }
 
+/** Where theirs is not what stands in the form. */
+function theirFacts(theirs: Run, mine: { name: string; facts: RunFacts }): string {
+  const { facts } = theirs
+  const differs = (key: keyof RunFacts) => facts[key] !== mine.facts[key]
+  const shown = (value: number | null, unit: string) => (value === null ? 'not known' : degrees(value, unit))
+  const parts = [
+    theirs.name === mine.name ? null : `name “${theirs.name}”`,
+    ...(Object.keys(CHOICES) as Choice[]).map((key) =>
+      differs(key)
+        ? `${CHOICES[key].label} ${CHOICES[key].options.find(({ value }) => value === facts[key])?.label}`
+        : null,
+    ),
+    differs('startedAt') ? 'another start' : null,
+    differs('hourAngleDegrees') ? `hour angle ${shown(facts.hourAngleDegrees, '°')}` : null,
+    differs('temperatureCelsius') ? `temperature ${shown(facts.temperatureCelsius, '°C')}` : null,
+    differs('mountCorrectionTable') ? `table in the mount ${facts.mountCorrectionTable ?? 'not named'}` : null,
+    differs('loadAndBalance') ? `load and balance ${facts.loadAndBalance ?? 'not noted'}` : null,
+  ].filter((part) => part !== null)
+  return parts.length === 0 ? 'the same as yours' : parts.join('; ')
+}
+
 function FactsForm({ run, onClose }: { run: Run; onClose: () => void }) {
   const router = useRouter()
   const [name, setName] = useState(run.name)
+  // What the form was filled from: the page may learn of a newer one while it is open.
+  const [from, setFrom] = useState(run)
   const [facts, setFacts] = useState<RunFacts>(run.facts)
   const { save, isBusy, fault, conflict, dropConflict } = useSave(runSchema)
   const change = (part: Partial<RunFacts>) => setFacts((now) => ({ ...now, ...part }))
 
-  async function send(version: number) {
-    const body = { version, name, conversion: run.conversion, facts }
+  async function send({ version, conversion }: Run) {
+    const body = { version, name, conversion, facts }
     const saved = await save(() => sendJson('PATCH', `/api/projects/${run.projectId}/runs/${run.id}`, body, runSchema))
     if (!saved) return
     onClose()
@@ -121,7 +144,7 @@ function FactsForm({ run, onClose }: { run: Run; onClose: () => void }) {
       className="flex flex-col gap-4"
       onSubmit={(event) => {
         event.preventDefault()
-        if (!focusFirstInvalid(event.currentTarget)) void send(run.version)
+        if (!focusFirstInvalid(event.currentTarget)) void send(from)
       }}
     >
       <Field label="Name of the run" error={name.trim() === '' ? 'Give it a name' : null}>
@@ -183,8 +206,10 @@ function FactsForm({ run, onClose }: { run: Run; onClose: () => void }) {
         thing="this run"
         fault={fault}
         conflict={conflict}
-        onKeepMine={({ version: newest }) => void send(newest)}
+        theirs={(theirs) => theirFacts(theirs, { name, facts })}
+        onKeepMine={(theirs) => void send(theirs)}
         onTakeTheirs={(theirs) => {
+          setFrom(theirs)
           setName(theirs.name)
           setFacts(theirs.facts)
           dropConflict()

@@ -10,6 +10,8 @@ import { runFactsSchema } from '@/lib/schemas/run-facts'
  */
 const keptWorkSchema = z.object({
   version: z.literal(1),
+  /** Tells the work of one tab from that of another; work that an older version kept has none. */
+  id: z.string().optional(),
   fileName: z.string(),
   bytes: z.instanceof(Uint8Array<ArrayBuffer>),
   settings: importSettingsSchema,
@@ -20,6 +22,33 @@ const keptWorkSchema = z.object({
 export type KeptWork = z.infer<typeof keptWorkSchema>
 
 const key = 'turnwright-open-bench'
+const tabKey = 'turnwright-open-bench-work'
+
+/** An id for work that has just been opened. */
+export function newWorkId(): string {
+  // Not randomUUID: a browser has none over plain http.
+  return [...crypto.getRandomValues(new Uint8Array(12))].map((byte) => byte.toString(16).padStart(2, '0')).join('')
+}
+
+/** Ties this tab, and so the settings in its address, to the work that it shows; null: to none. */
+export function tieTabTo(id: string | null): void {
+  try {
+    if (id === null) window.sessionStorage.removeItem(tabKey)
+    else window.sessionStorage.setItem(tabKey, id)
+  } catch {
+    // Without storage nothing is kept either.
+  }
+}
+
+/** Whether another tab has put its own work in the place of what this tab showed: then this tab’s settings are not for it. */
+export function isOfAnotherTab(work: KeptWork): boolean {
+  try {
+    const shown = window.sessionStorage.getItem(tabKey)
+    return shown !== null && shown !== work.id
+  } catch {
+    return false
+  }
+}
 
 /** Keeps the work; false where the browser has no room or no storage for it (private windows), which loses comfort only. */
 export async function keepWork(work: KeptWork): Promise<boolean> {
@@ -45,7 +74,7 @@ export async function findKeptWork(): Promise<KeptWork | undefined> {
 export async function dropKeptWork(work: KeptWork): Promise<void> {
   try {
     const kept = await findKeptWork()
-    if (kept && isSameFile(kept, work)) await del(key)
+    if (kept && (work.id === undefined ? isSameFile(kept, work) : kept.id === work.id)) await del(key)
   } catch {
     // Nothing was kept where there is no storage.
   }
