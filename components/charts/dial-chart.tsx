@@ -21,8 +21,9 @@ interface DialChartProps {
   summary: string
   senseMark: string
   display?: Display
-  notes: readonly (ChartMark & { number: number; angleDegrees: number; isSettled: boolean })[]
-  markLink: MarkLink
+  /** Those with an id and a label can be pointed at, where there is a `markLink`. */
+  notes: readonly (Partial<ChartMark> & NoteMarkProps)[]
+  markLink?: MarkLink
   onPick?: (angleDegrees: number) => void
 }
 
@@ -58,9 +59,10 @@ export function DialChart({
         width={SIZE}
         height={SIZE}
         className="mx-auto max-w-100"
-        marks={notes.map((note) => {
-          const { x, y } = dialPoint(note.angleDegrees, MARK_RADIUS)
-          return { ...note, x: CENTRE + x, y: CENTRE + y }
+        marks={notes.flatMap(({ id, label, angleDegrees }) => {
+          if (id === undefined || label === undefined) return []
+          const { x, y } = dialPoint(angleDegrees, MARK_RADIUS)
+          return [{ id, label, x: CENTRE + x, y: CENTRE + y }]
         })}
         markLink={markLink}
         onPoint={(place) => setPointed(place && angleAt(place))}
@@ -116,7 +118,7 @@ export function DialChart({
             </text>
           ))}
           {notes.map((note) => (
-            <NoteMark key={note.id} {...note} />
+            <NoteMark key={note.number} {...note} />
           ))}
           {index === null ? null : (
             <circle
@@ -163,10 +165,10 @@ function Rim() {
 interface NoteMarkProps {
   number: number
   angleDegrees: number
-  isSettled: boolean
+  isSettled?: boolean
 }
 
-function NoteMark({ number, angleDegrees, isSettled }: NoteMarkProps) {
+function NoteMark({ number, angleDegrees, isSettled = false }: NoteMarkProps) {
   const from = dialPoint(angleDegrees, 0.2 * RIM)
   const to = dialPoint(angleDegrees, MARK_RADIUS)
   return (

@@ -1,4 +1,4 @@
-import { anchorText } from '@/components/bench/notes'
+import { anchorText } from '@/components/notes/note-types'
 import {
   GUIDING_OPTIONS,
   MOUNT_CORRECTION_OPTIONS,

@@ -1,7 +1,7 @@
 'use client'
 
 import { useState } from 'react'
-import { anchorText } from '@/components/bench/notes'
+import { anchorText } from '@/components/notes/note-types'
 import { Button } from '@/components/ui/button'
 import { Checkbox } from '@/components/ui/checkbox'
 import { Actions } from '@/components/ui/dialog'
