@@ -70,6 +70,19 @@ async function readBytes(archive: ArchiveFile, path: string, mostBytes: number):
   return { bytes: Buffer.concat(parts), sha256: hash.digest('hex') }
 }
 
+/** A recording, which may have 64 MB: written into its place at once, so that it is not in memory twice. */
+async function readRecording(archive: ArchiveFile, path: string, byteLength: number): Promise<Bytes> {
+  const hash = createHash('sha256')
+  const bytes = Buffer.alloc(Math.min(byteLength, MAX_FILE_BYTES))
+  let length = 0
+  await archive.read(path, bytes.length, (part) => {
+    hash.update(part)
+    bytes.set(part, length)
+    length += part.byteLength
+  })
+  return { bytes: bytes.subarray(0, length), sha256: hash.digest('hex') }
+}
+
 /** @throws {AppError} bad-archive that names the entry and the place in it */
 function parseJson<Schema extends z.ZodType>(path: string, bytes: Buffer, schema: Schema) {
   let raw: unknown
@@ -101,7 +114,7 @@ export async function readArchiveJson<Name extends ArchiveSchemaName>(
 
 /** An original file as a whole. */
 export async function readOriginal(archive: ArchiveFile, { file }: ArchiveRun): Promise<Buffer> {
-  return (await readBytes(archive, file.path, Math.min(file.byteLength, MAX_FILE_BYTES))).bytes
+  return (await readRecording(archive, file.path, file.byteLength)).bytes
 }
 
 async function readManifest(archive: ArchiveFile): Promise<Parsed<'manifest'>> {
@@ -244,7 +257,7 @@ async function checkOriginals(
   const checked: CheckedRun[] = []
   for (const [folder, run] of contents.runs) {
     const { path, byteLength, sha256 } = run.file
-    const { bytes, sha256: found } = await readBytes(archive, path, Math.min(byteLength, MAX_FILE_BYTES))
+    const { bytes, sha256: found } = await readRecording(archive, path, byteLength)
     if (bytes.length !== byteLength || found !== sha256 || found !== listed.get(path)?.sha256) {
       faults.add(path, 'it is not as it was written: its SHA-256 differs. Download the archive again.')
       continue
