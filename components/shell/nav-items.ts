@@ -3,10 +3,13 @@ export interface NavItem {
   label: string
 }
 
+/** Pages beside the projects that no project’s id can be. */
+const NO_PROJECTS = ['new', 'import']
+
 /** The project an address lies in; `/projects/new` is none. */
 export function projectIdIn(pathname: string): string | null {
   const id = /^\/projects\/([^/]+)/.exec(pathname)?.[1]
-  return id && id !== 'new' ? id : null
+  return id && !NO_PROJECTS.includes(id) ? id : null
 }
 
 export function navItems(pathname: string, isSignedIn: boolean): NavItem[] {

@@ -6,6 +6,7 @@ test.each([
   ['/projects/7/runs/3', '7'],
   ['/projects', null],
   ['/projects/new', null],
+  ['/projects/import', null],
   ['/bench', null],
 ])('%s lies in project %s', (pathname, projectId) => {
   expect(projectIdIn(pathname)).toBe(projectId)
