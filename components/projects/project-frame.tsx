@@ -1,15 +1,24 @@
 'use client'
 
-import type { ReactNode } from 'react'
+import { useEffect, type ReactNode } from 'react'
 import { ButtonLink } from '@/components/ui/button'
 import { Notice } from '@/components/ui/notice'
-import { RequestError } from '@/lib/client/fetcher'
-import { useProjectStanding } from '@/lib/client/project-data'
+import { onRefused, RequestError } from '@/lib/client/fetcher'
+import { projectKey, useProjectStanding } from '@/lib/client/project-data'
 
 /** Says above every page of a project when it is archived, or not there any more; what is on the page stays readable. */
 export function ProjectFrame({ projectId, children }: { projectId: string; children: ReactNode }) {
-  const { data, error } = useProjectStanding(projectId)
+  const { data, error, mutate } = useProjectStanding(projectId)
   const isGone = error instanceof RequestError && error.status === 404
+
+  // Whoever was removed, or lost a right, meets it at the next request of any part of the page.
+  useEffect(() => {
+    return onRefused(({ url, status }) => {
+      const path = URL.canParse(url) ? new URL(url).pathname : url
+      if (path.startsWith(`${projectKey(projectId)}/`) && (status === 403 || status === 404)) void mutate()
+    })
+  }, [projectId, mutate])
+
   return (
     <>
       {isGone ? (

@@ -200,7 +200,7 @@ test('roles change, people go, and an open page says so; the last owner stays', 
   await expect(owner.member('Mo Member')).toHaveCount(0)
 
   await guest.getByRole('button', { name: 'Save the drive train' }).click()
-  await expect(guest.getByText('You can no longer open this project')).toBeVisible()
+  await expect(guest.getByText('This project is not there any more')).toBeVisible()
   await expect(guest.getByLabel('Teeth of the worm wheel')).toHaveValue('160')
   expect((await guest.goto(owner.project.address))?.status()).toBe(404)
 })

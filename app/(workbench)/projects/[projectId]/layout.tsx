@@ -1,6 +1,5 @@
 import type { Metadata } from 'next'
 import { ProjectFrame } from '@/components/projects/project-frame'
-import { ProjectGate } from '@/components/projects/project-gate'
 import { SwrFallback } from '@/components/shell/swr-fallback'
 import { currentUser, requireProjectPage } from '@/lib/server/current-user'
 import { loadProject } from '@/lib/server/load-projects'
@@ -20,9 +19,7 @@ export default async function ProjectLayout({ children, params }: LayoutProps<'/
   const project = await loadProject(access)
   return (
     <SwrFallback fallback={{ [`/api/projects/${project.id}`]: project }}>
-      <ProjectGate projectId={project.id}>
-        <ProjectFrame projectId={project.id}>{children}</ProjectFrame>
-      </ProjectGate>
+      <ProjectFrame projectId={project.id}>{children}</ProjectFrame>
     </SwrFallback>
   )
 }
