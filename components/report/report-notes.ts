@@ -1,3 +1,4 @@
+import { anchorText } from '@/components/notes/note-types'
 import type { SharedNote } from '@/lib/schemas/share'
 
 export interface ReportNote {
@@ -16,12 +17,21 @@ export function numberReportNotes(notes: readonly SharedNote[]): ReportNote[] {
 export function noteMarks(notes: readonly ReportNote[]) {
   const times: { number: number; timeSeconds: number }[] = []
   const periods: { number: number; periodSeconds: number }[] = []
-  const angles: { number: number; angleDegrees: number }[] = []
+  const angles: { id: string; label: string; number: number; angleDegrees: number; isSettled: boolean }[] = []
   for (const { number, note } of notes) {
     if (number === null) continue
     if (note.anchor.kind === 'time') times.push({ number, timeSeconds: note.anchor.timeSeconds })
     if (note.anchor.kind === 'period') periods.push({ number, periodSeconds: note.anchor.periodSeconds })
-    if (note.anchor.kind === 'worm-angle') angles.push({ number, angleDegrees: note.anchor.angleDegrees })
+    if (note.anchor.kind === 'worm-angle') {
+      const { angleDegrees } = note.anchor
+      angles.push({
+        id: `note-${number}`,
+        label: `Note ${number}, ${anchorText(note.anchor)}`,
+        number,
+        angleDegrees,
+        isSettled: false,
+      })
+    }
   }
   return { times, periods, angles }
 }

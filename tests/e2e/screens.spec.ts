@@ -4,6 +4,7 @@ import { BenchPage } from './support/bench-page'
 import { expectNoAxeViolations } from './support/axe'
 import { expectOnlyRedPixels } from './support/night-pixels'
 import { demoPerson, signIn } from './support/people'
+import { reportIsDrawn, SharePanel } from './support/report-page'
 import { chooseTheme } from './support/themes'
 
 interface Screen {
@@ -66,6 +67,13 @@ function memberEntry(name: string, list: 'runs' | 'analyses' | 'corrections', is
   }
 }
 
+async function openFirstAnalysis(page: Page): Promise<void> {
+  await page.goto(`${await projectAddress(page)}/analyses`)
+  await page.getByRole('table').getByRole('link').first().click()
+  await page.waitForURL(/\/analyses\/[0-9a-f-]+/)
+  await benchIsDrawn(page)
+}
+
 const screens: Screen[] = [
   visit('landing', '/'),
   visit('sign-in', '/sign-in'),
@@ -117,6 +125,27 @@ const screens: Screen[] = [
   memberVisit('analyses', '/analyses'),
   memberEntry('analysis', 'analyses', true),
   memberVisit('corrections', '/corrections'),
+  {
+    name: 'share links',
+    isMembersOnly: true,
+    open: async (page) => {
+      await openFirstAnalysis(page)
+      const panel = new SharePanel(page)
+      await panel.open()
+      await panel.make('To look at')
+    },
+  },
+  {
+    name: 'report',
+    isMembersOnly: true,
+    open: async (page) => {
+      await openFirstAnalysis(page)
+      const panel = new SharePanel(page)
+      await panel.open()
+      await page.goto(await panel.make('To look at'))
+      await reportIsDrawn(page)
+    },
+  },
   memberEntry('correction', 'corrections', false),
   memberVisit('people', '/people'),
   memberVisit('settings', '/settings'),

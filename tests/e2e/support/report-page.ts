@@ -1,0 +1,48 @@
+import { expect, type Browser, type BrowserContext, type Page } from '@playwright/test'
+
+/** The bench's panel where links are made and taken back. */
+export class SharePanel {
+  constructor(readonly page: Page) {}
+
+  async open(): Promise<void> {
+    await this.page.getByRole('button', { name: 'Share', exact: true }).click()
+    await expect(this.page.getByRole('dialog', { name: 'Share this analysis' })).toBeVisible()
+  }
+
+  /** Makes a link for a week, and answers its address. */
+  async make(preface: string): Promise<string> {
+    const another = this.page.getByRole('button', { name: 'Make another link' })
+    const send = this.page.getByRole('button', { name: 'Make the link' })
+    await expect(another.or(send)).toBeVisible()
+    if (await another.isVisible()) await another.click()
+    await this.page.getByLabel('How long it lasts').selectOption('week')
+    await this.page.getByLabel('Words to the reader').fill(preface)
+    await send.click()
+    const address = this.page.getByLabel(/^Address of the link/).first()
+    await expect(address).toHaveValue(/\/share\/[\w-]{43}$/)
+    return address.inputValue()
+  }
+
+  async revokeNewest(): Promise<void> {
+    await this.page
+      .getByRole('button', { name: /^Revoke the link of/ })
+      .first()
+      .click()
+    await expect(this.page.getByText('Everyone who was given this link will no longer see the report')).toBeVisible()
+    await this.page.getByRole('button', { name: 'Revoke the link', exact: true }).click()
+    await expect(this.page.getByText(/^Revoked on/).first()).toBeVisible()
+  }
+}
+
+/** A reader who has the link and nothing else. */
+export async function strangersPage(browser: Browser): Promise<{ page: Page; context: BrowserContext }> {
+  const context = await browser.newContext()
+  return { page: await context.newPage(), context }
+}
+
+/** Pictures need the recording, a computation and a library. */
+export async function reportIsDrawn(page: Page): Promise<void> {
+  await expect(page.locator('.js-plotly-plot .main-svg').first()).toBeVisible({ timeout: 45_000 })
+  await expect(page.locator('.plotly-chart[aria-busy="true"]')).toHaveCount(0, { timeout: 45_000 })
+  await expect(page.getByRole('progressbar')).toHaveCount(0, { timeout: 45_000 })
+}
