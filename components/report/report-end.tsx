@@ -20,7 +20,11 @@ export function ReportNotes({ notes }: { notes: readonly ReportNote[] }) {
     <ReportSection title="Notes">
       <ul className="flex flex-col gap-3">
         {notes.map(({ number, note }, index) => (
-          <li key={index} className="border-l-3 border-plum py-0.5 pl-3">
+          <li
+            key={index}
+            id={number === null ? undefined : `note-${number}`}
+            className="border-l-3 border-plum py-0.5 pl-3"
+          >
             <p className="whitespace-pre-wrap wrap-anywhere">
               {number === null ? null : (
                 <span className="figures mr-1.5 inline-block rounded-[3px] border border-plum px-1.5 text-xs leading-4">

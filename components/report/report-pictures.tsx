@@ -19,6 +19,13 @@ import { turnFinding } from '@/lib/findings/turn-finding'
 import { senseMark } from '@/lib/findings/words'
 import type { NoteMarks } from './report-notes'
 
+/** A mark in a picture leads to its note further down. */
+const TO_NOTE = {
+  activeId: null,
+  onPoint: () => undefined,
+  onFollow: (id: string) => document.getElementById(id)?.scrollIntoView({ block: 'center' }),
+}
+
 export interface ReportPictureProps {
   result: AnalysisResult
   views: AnalysisViews
@@ -117,7 +124,13 @@ export function TurnPictures({ result, views, recipe, marks }: ReportPictureProp
   const summary = findingText(turnFinding(result))
   return (
     <div className="report-turn grid items-start gap-x-6 gap-y-4">
-      <DialChart turn={turn} summary={`${summary} As a dial.`} senseMark={sense} notes={marks.angles} />
+      <DialChart
+        turn={turn}
+        summary={`${summary} As a dial.`}
+        senseMark={sense}
+        notes={marks.angles}
+        markLink={TO_NOTE}
+      />
       <PlotlyChart
         name="turn"
         summary={summary}
