@@ -1,23 +1,27 @@
 'use client'
 
 import Link from 'next/link'
+import { useMemo } from 'react'
 import { unitText } from '@/components/corrections/table-words'
 import { PageHeading } from '@/components/shell/page-heading'
 import { ButtonLink } from '@/components/ui/button'
-import { DataState } from '@/components/ui/data-state'
-import { DataTable } from '@/components/ui/data-table'
-import type { DataColumn } from '@/components/ui/data-table-model'
 import { EmptyState } from '@/components/ui/empty-state'
-import { formatDay } from '@/lib/client/dates'
-import { useCorrections, useProject, type CorrectionRow } from '@/lib/client/project-data'
+import { FilterSelect } from '@/components/ui/filter-row'
+import type { ListColumn } from '@/components/ui/server-table-model'
+import type { Dates } from '@/lib/client/dates'
+import { useDates } from '@/lib/client/display'
+import { useProject } from '@/lib/client/project-data'
+import { useList, useListAddress } from '@/lib/client/use-list'
 import { findingText } from '@/lib/findings/finding'
 import { correctionsFinding } from '@/lib/findings/list-findings'
+import { correctionFilterWords } from '@/lib/findings/shown-sentence'
+import { correctionListSchema, correctionQuerySchema, listSearch, type CorrectionSummary } from '@/lib/schemas/lists'
+import { ListFrame } from './list-frame'
 
-const columns: readonly DataColumn<CorrectionRow>[] = [
+const columnsIn = ({ day }: Dates): readonly ListColumn<CorrectionSummary>[] => [
   {
     id: 'name',
     header: 'Correction table',
-    value: ({ name }) => name,
     cell: ({ id, projectId, name }) => (
       <Link className="link font-semibold" href={`/projects/${projectId}/corrections/${id}`}>
         {name}
@@ -28,7 +32,6 @@ const columns: readonly DataColumn<CorrectionRow>[] = [
     id: 'analysis',
     header: 'Made from',
     isSecondary: true,
-    value: ({ analysisName }) => analysisName,
     cell: ({ projectId, analysisId, analysisName }) => (
       <Link className="hover:underline" href={`/projects/${projectId}/analyses/${analysisId}`}>
         {analysisName}
@@ -39,63 +42,97 @@ const columns: readonly DataColumn<CorrectionRow>[] = [
     id: 'kind',
     header: 'Kind',
     isSecondary: true,
-    value: ({ kind }) => (kind === 'addition' ? 'added to the table in the mount' : 'stands alone'),
+    cell: ({ kind }) => (kind === 'addition' ? 'added to the table in the mount' : 'stands alone'),
   },
-  { id: 'bins', header: 'Bins', isSecondary: true, isNumeric: true, value: ({ settings }) => settings.binCount },
+  {
+    id: 'bins',
+    header: 'Bins',
+    isSecondary: true,
+    isNumeric: true,
+    startsDescending: true,
+    cell: ({ settings }) => settings.binCount,
+  },
   {
     id: 'unit',
     header: 'Values',
     isSecondary: true,
-    value: ({ settings }) => `${settings.meaning}, ${unitText(settings.unit)}`,
+    isSortable: false,
+    cell: ({ settings }) => `${settings.meaning}, ${unitText(settings.unit)}`,
   },
-  { id: 'sense', header: 'Sense', value: ({ senseBasis }) => senseBasis },
-  { id: 'by', header: 'Made by', isSecondary: true, value: ({ createdBy }) => createdBy },
+  { id: 'sense', header: 'Sense', cell: ({ senseBasis }) => senseBasis },
+  { id: 'by', header: 'Made by', isSecondary: true, cell: ({ createdBy }) => createdBy },
   {
-    id: 'on',
+    id: 'created',
     header: 'On',
     isSecondary: true,
-    value: ({ createdAt }) => createdAt,
-    cell: ({ createdAt }) => formatDay(createdAt),
+    startsDescending: true,
+    cell: ({ createdAt }) => day(createdAt),
   },
 ]
 
 export function CorrectionsScreen({ projectId }: { projectId: string }) {
   const project = useProject(projectId)
-  const { data, error, mutate } = useCorrections(projectId)
+  const address = useListAddress(correctionQuerySchema)
+  const { query, change } = address
+  const dates = useDates()
+  const columns = useMemo(() => columnsIn(dates), [dates])
+  const answer = useList(
+    `/api/projects/${projectId}/corrections${listSearch(correctionQuerySchema, query)}`,
+    correctionListSchema,
+  )
   return (
-    <DataState what="the correction tables" data={data} error={error} onRetry={() => void mutate()}>
-      {(corrections) => (
-        <>
-          <PageHeading
-            crumbs={[
-              { label: project.data?.name ?? 'Project', href: `/projects/${projectId}` },
-              { label: 'Corrections' },
-            ]}
-            title={findingText(correctionsFinding(corrections))}
-          />
-          {corrections.length === 0 ? (
-            <EmptyState
-              title="Make a table from a saved analysis"
-              actions={
-                <ButtonLink href={`/projects/${projectId}/analyses`} variant="primary">
-                  To the analyses
-                </ButtonLink>
-              }
-            >
-              The last stage of an analysis shows what a table would take out, rehearsed on turns that it was not made
-              from. If that is worth it, make the table there.
-            </EmptyState>
-          ) : (
-            <DataTable
-              caption="correction tables"
-              columns={columns}
-              rows={corrections}
-              rowId={({ id }) => id}
-              initialSort={{ id: 'on', desc: true }}
-            />
-          )}
-        </>
+    <ListFrame
+      noun={{ one: 'correction table', many: 'correction tables' }}
+      answer={answer}
+      address={address}
+      columns={columns}
+      rowsOf={({ corrections }) => corrections}
+      heading={(data) => (
+        <PageHeading
+          crumbs={[
+            { label: project.data?.name ?? 'Project', href: `/projects/${projectId}` },
+            { label: 'Corrections' },
+          ]}
+          title={findingText(correctionsFinding(data))}
+        />
       )}
-    </DataState>
+      nothingYet={
+        <EmptyState
+          title="Make a table from a saved analysis"
+          actions={
+            <ButtonLink href={`/projects/${projectId}/analyses`} variant="primary">
+              To the analyses
+            </ButtonLink>
+          }
+        >
+          The last stage of an analysis shows what a table would take out, rehearsed on turns that it was not made from.
+          If that is worth it, make the table there.
+        </EmptyState>
+      }
+      searched="name, analysis or person"
+      filtered={() => correctionFilterWords(query)}
+      filters={
+        <>
+          <FilterSelect
+            label="Kind"
+            value={query.kind}
+            options={[
+              { value: 'stand-alone', label: 'stands alone' },
+              { value: 'addition', label: 'added to the table in the mount' },
+            ]}
+            onValue={(kind) => change({ kind })}
+          />
+          <FilterSelect
+            label="Sense"
+            value={query.sense}
+            options={[
+              { value: 'proven', label: 'proven' },
+              { value: 'assumed', label: 'assumed' },
+            ]}
+            onValue={(sense) => change({ sense })}
+          />
+        </>
+      }
+    />
   )
 }

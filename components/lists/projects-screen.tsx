@@ -1,100 +1,137 @@
 'use client'
 
 import Link from 'next/link'
+import { useMemo } from 'react'
 import { wormPeriodText } from '@/components/projects/teeth'
 import { PageHeading } from '@/components/shell/page-heading'
 import { ButtonLink } from '@/components/ui/button'
-import { DataState } from '@/components/ui/data-state'
-import { DataTable } from '@/components/ui/data-table'
-import type { DataColumn } from '@/components/ui/data-table-model'
 import { EmptyState } from '@/components/ui/empty-state'
-import { formatDay } from '@/lib/client/dates'
-import { useProjects } from '@/lib/client/project-data'
+import { FilterSelect } from '@/components/ui/filter-row'
+import type { ListColumn } from '@/components/ui/server-table-model'
+import type { Dates } from '@/lib/client/dates'
+import { useDates } from '@/lib/client/display'
+import { projectsKey } from '@/lib/client/project-data'
+import { useList, useListAddress } from '@/lib/client/use-list'
 import { findingText } from '@/lib/findings/finding'
 import { projectsFinding } from '@/lib/findings/list-findings'
-import type { Project } from '@/lib/schemas/api'
+import { projectFilterWords } from '@/lib/findings/shown-sentence'
+import { listSearch, projectListSchema, projectQuerySchema, type ProjectSummary } from '@/lib/schemas/lists'
+import { ListFrame } from './list-frame'
 
-const columns: readonly DataColumn<Project>[] = [
+const columnsIn = ({ day }: Dates): readonly ListColumn<ProjectSummary>[] => [
   {
     id: 'name',
     header: 'Mount',
-    value: ({ name }) => name,
     cell: ({ id, name, archivedAt }) => (
-      <Link className="link font-semibold" href={`/projects/${id}`}>
-        {name}
-        {archivedAt ? <span className="font-normal text-soft"> (archived)</span> : null}
-      </Link>
+      <>
+        <Link className="link font-semibold" href={`/projects/${id}`}>
+          {name}
+        </Link>
+        {archivedAt ? <span className="ml-2 text-sm text-soft">archived</span> : null}
+      </>
     ),
   },
   {
     id: 'period',
     header: 'Worm period',
     isNumeric: true,
-    value: ({ driveTrain }) => driveTrain.wheelTeeth,
-    cell: ({ driveTrain }) => wormPeriodText(driveTrain.wheelTeeth, driveTrain.wormStarts),
+    cell: ({ wheelTeeth, wormStarts }) => wormPeriodText(wheelTeeth, wormStarts),
   },
-  { id: 'runs', header: 'Runs', isNumeric: true, value: ({ runCount }) => runCount },
+  { id: 'runs', header: 'Runs', isNumeric: true, startsDescending: true, cell: ({ runCount }) => runCount },
   {
     id: 'analyses',
     header: 'Analyses',
     isNumeric: true,
     isSecondary: true,
-    value: ({ analysisCount }) => analysisCount,
+    startsDescending: true,
+    cell: ({ analysisCount }) => analysisCount,
   },
-  { id: 'people', header: 'People', isNumeric: true, isSecondary: true, value: ({ memberCount }) => memberCount },
-  { id: 'role', header: 'You are', isSecondary: true, value: ({ role }) => role },
+  {
+    id: 'people',
+    header: 'People',
+    isNumeric: true,
+    isSecondary: true,
+    startsDescending: true,
+    cell: ({ memberCount }) => memberCount,
+  },
+  { id: 'role', header: 'You are', isSecondary: true, cell: ({ role }) => role },
   {
     id: 'changed',
     header: 'Changed',
     isSecondary: true,
-    value: ({ updatedAt }) => updatedAt,
-    cell: ({ updatedAt }) => formatDay(updatedAt),
+    startsDescending: true,
+    cell: ({ updatedAt }) => day(updatedAt),
   },
 ]
 
 export function ProjectsScreen() {
-  const { data, error, mutate } = useProjects()
+  const address = useListAddress(projectQuerySchema)
+  const { query, change } = address
+  const dates = useDates()
+  const columns = useMemo(() => columnsIn(dates), [dates])
+  const answer = useList(projectsKey + listSearch(projectQuerySchema, query), projectListSchema)
   return (
-    <DataState what="your projects" data={data} error={error} onRetry={() => void mutate()}>
-      {({ projects }) => (
-        <>
-          <PageHeading
-            title={findingText(projectsFinding(projects))}
-            actions={
-              <>
-                <ButtonLink href="/projects/import">Bring in an archive</ButtonLink>
-                <ButtonLink href="/projects/new" variant="primary">
-                  New project
-                </ButtonLink>
-              </>
-            }
-          />
-          {projects.length === 0 ? (
-            <EmptyState
-              title="Start with your mount"
-              actions={
-                <>
-                  <ButtonLink href="/projects/new" variant="primary">
-                    Make a project
-                  </ButtonLink>
-                  <ButtonLink href="/bench">Try the bench first</ButtonLink>
-                </>
-              }
-            >
-              A project keeps one mount’s recordings, what was found in them, and the correction tables made from them.
-              Give it a name and, if you know it, the number of teeth of the worm wheel.
-            </EmptyState>
-          ) : (
-            <DataTable
-              caption="projects"
-              columns={columns}
-              rows={projects}
-              rowId={({ id }) => id}
-              initialSort={{ id: 'changed', desc: true }}
-            />
-          )}
-        </>
+    <ListFrame
+      noun={{ one: 'project', many: 'projects' }}
+      answer={answer}
+      address={address}
+      columns={columns}
+      rowsOf={({ projects }) => projects}
+      heading={(data) => (
+        <PageHeading
+          title={findingText(projectsFinding(data))}
+          actions={
+            <>
+              <ButtonLink href="/projects/import">Bring in an archive</ButtonLink>
+              <ButtonLink href="/projects/new" variant="primary">
+                New project
+              </ButtonLink>
+            </>
+          }
+        />
       )}
-    </DataState>
+      nothingYet={
+        <EmptyState
+          title="Start with your mount"
+          actions={
+            <>
+              <ButtonLink href="/projects/new" variant="primary">
+                Make a project
+              </ButtonLink>
+              <ButtonLink href="/bench">Try the bench first</ButtonLink>
+            </>
+          }
+        >
+          A project keeps one mount’s recordings, what was found in them, and the correction tables made from them. Give
+          it a name and, if you know it, the number of teeth of the worm wheel.
+        </EmptyState>
+      }
+      searched="name"
+      filtered={() => projectFilterWords(query)}
+      filters={
+        <>
+          <FilterSelect
+            label="You are"
+            value={query.role}
+            options={[
+              { value: 'owner', label: 'owner' },
+              { value: 'editor', label: 'editor' },
+              { value: 'viewer', label: 'viewer' },
+            ]}
+            onValue={(role) => change({ role })}
+          />
+          <FilterSelect
+            label="Archived"
+            anyLabel="left out"
+            value={query.archived === 'no' ? undefined : query.archived}
+            options={[
+              { value: 'too', label: 'shown too' },
+              { value: 'only', label: 'shown alone' },
+            ]}
+            onValue={(archived) => change({ archived: archived ?? 'no' })}
+          />
+        </>
+      }
+    />
   )
 }

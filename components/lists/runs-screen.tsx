@@ -1,24 +1,28 @@
 'use client'
 
 import Link from 'next/link'
+import { useMemo } from 'react'
 import { PageHeading } from '@/components/shell/page-heading'
 import { ButtonLink } from '@/components/ui/button'
-import { DataState } from '@/components/ui/data-state'
-import { DataTable } from '@/components/ui/data-table'
-import type { DataColumn } from '@/components/ui/data-table-model'
 import { EmptyState } from '@/components/ui/empty-state'
-import { formatDayAndTime } from '@/lib/client/dates'
-import { useProject, useRuns, type RunRow } from '@/lib/client/project-data'
+import { FilterDay, FilterSelect } from '@/components/ui/filter-row'
+import type { ListColumn } from '@/components/ui/server-table-model'
+import type { Dates } from '@/lib/client/dates'
+import { useDates } from '@/lib/client/display'
+import { useProject } from '@/lib/client/project-data'
+import { useList, useListAddress } from '@/lib/client/use-list'
 import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
+import { runFilterWords } from '@/lib/findings/shown-sentence'
+import { listSearch, runListSchema, runQuerySchema, type RunSummary } from '@/lib/schemas/lists'
 import { canEditProject } from '@/lib/schemas/rights'
 import { formatBytes, formatCount } from '@/lib/units'
+import { ListFrame } from './list-frame'
 
-const columns: readonly DataColumn<RunRow>[] = [
+const columnsIn = ({ zoneName, dayAndTime }: Dates): readonly ListColumn<RunSummary>[] => [
   {
     id: 'name',
     header: 'Run',
-    value: ({ name }) => name,
     cell: ({ id, projectId, name, status }) => (
       <>
         <Link className="link font-semibold" href={`/projects/${projectId}/runs/${id}`}>
@@ -30,51 +34,51 @@ const columns: readonly DataColumn<RunRow>[] = [
   },
   {
     id: 'started',
-    header: 'Recorded, UTC',
-    value: ({ facts, createdAt }) => facts.startedAt ?? createdAt,
-    cell: ({ facts }) => (facts.startedAt ? formatDayAndTime(facts.startedAt) : 'time unknown'),
+    header: `Recorded, ${zoneName}`,
+    startsDescending: true,
+    cell: ({ startedAt }) => (startedAt ? dayAndTime(startedAt) : 'time unknown'),
   },
   {
     id: 'rows',
     header: 'Rows',
     isNumeric: true,
     isSecondary: true,
-    value: ({ rowCount }) => rowCount,
+    startsDescending: true,
     cell: ({ rowCount }) => (rowCount === null ? '–' : formatCount(rowCount)),
   },
   {
     id: 'correction',
     header: 'Correction in the mount',
     isSecondary: true,
-    value: ({ facts }) => facts.mountCorrection,
+    cell: ({ mountCorrection }) => mountCorrection,
   },
-  {
-    id: 'sense',
-    header: 'Sense',
-    isSecondary: true,
-    value: ({ conversion }) => conversion?.senseBasis ?? null,
-  },
+  { id: 'sense', header: 'Sense', isSecondary: true, cell: ({ senseBasis }) => senseBasis ?? '–' },
   {
     id: 'analyses',
     header: 'Analyses',
     isNumeric: true,
     isSecondary: true,
-    value: ({ analysisCount }) => analysisCount,
+    startsDescending: true,
+    cell: ({ analysisCount }) => analysisCount,
   },
   {
     id: 'size',
     header: 'File',
     isNumeric: true,
     isSecondary: true,
-    value: ({ byteLength }) => byteLength,
+    startsDescending: true,
     cell: ({ byteLength }) => formatBytes(byteLength),
   },
-  { id: 'by', header: 'Brought in by', isSecondary: true, value: ({ createdBy }) => createdBy },
+  { id: 'by', header: 'Brought in by', isSecondary: true, cell: ({ createdBy }) => createdBy },
 ]
 
 export function RunsScreen({ projectId }: { projectId: string }) {
   const project = useProject(projectId)
-  const { data, error, mutate } = useRuns(projectId)
+  const address = useListAddress(runQuerySchema)
+  const { query, change } = address
+  const dates = useDates()
+  const columns = useMemo(() => columnsIn(dates), [dates])
+  const answer = useList(`/api/projects/${projectId}/runs${listSearch(runQuerySchema, query)}`, runListSchema)
   const canEdit = project.data !== undefined && canEditProject(project.data)
   const upload = (
     <ButtonLink href={`/projects/${projectId}/runs/new`} variant="primary">
@@ -82,30 +86,71 @@ export function RunsScreen({ projectId }: { projectId: string }) {
     </ButtonLink>
   )
   return (
-    <DataState what="the runs" data={data} error={error} onRetry={() => void mutate()}>
-      {(runs) => (
-        <>
-          <PageHeading
-            crumbs={[{ label: project.data?.name ?? 'Project', href: `/projects/${projectId}` }, { label: 'Runs' }]}
-            title={findingText(runsFinding(runs))}
-            actions={canEdit && runs.length > 0 ? upload : null}
-          />
-          {runs.length === 0 ? (
-            <EmptyState title="Record a star for six turns of the worm" actions={canEdit ? upload : null}>
-              Let the mount track a star near the celestial equator and the meridian with guiding off and no correction
-              playing, and log its position every few seconds. Bring the log in as text; it is kept byte for byte.
-            </EmptyState>
-          ) : (
-            <DataTable
-              caption="runs"
-              columns={columns}
-              rows={runs}
-              rowId={({ id }) => id}
-              initialSort={{ id: 'started', desc: true }}
-            />
-          )}
-        </>
+    <ListFrame
+      noun={{ one: 'run', many: 'runs' }}
+      answer={answer}
+      address={address}
+      columns={columns}
+      rowsOf={({ runs }) => runs}
+      heading={(data) => (
+        <PageHeading
+          crumbs={[{ label: project.data?.name ?? 'Project', href: `/projects/${projectId}` }, { label: 'Runs' }]}
+          title={findingText(runsFinding(data))}
+          actions={canEdit && data.all > 0 ? upload : null}
+        />
       )}
-    </DataState>
+      nothingYet={
+        <EmptyState title="Record a star for six turns of the worm" actions={canEdit ? upload : null}>
+          Let the mount track a star near the celestial equator and the meridian with guiding off and no correction
+          playing, and log its position every few seconds. Bring the log in as text; it is kept byte for byte.
+        </EmptyState>
+      }
+      searched="name, file or person"
+      filtered={() => runFilterWords(query)}
+      filters={
+        <>
+          <FilterSelect
+            label="Correction in the mount"
+            value={query.correction}
+            options={[
+              { value: 'off', label: 'off' },
+              { value: 'on', label: 'on' },
+              { value: 'unknown', label: 'unknown' },
+            ]}
+            onValue={(correction) => change({ correction })}
+          />
+          <FilterSelect
+            label="Side of pier"
+            value={query.side}
+            options={[
+              { value: 'east', label: 'east' },
+              { value: 'west', label: 'west' },
+              { value: 'unknown', label: 'unknown' },
+            ]}
+            onValue={(side) => change({ side })}
+          />
+          <FilterSelect
+            label="Sense"
+            value={query.sense}
+            options={[
+              { value: 'proven', label: 'proven' },
+              { value: 'assumed', label: 'assumed' },
+            ]}
+            onValue={(sense) => change({ sense })}
+          />
+          <FilterSelect
+            label="File"
+            value={query.state}
+            options={[
+              { value: 'read', label: 'read' },
+              { value: 'unread', label: 'not read yet' },
+            ]}
+            onValue={(state) => change({ state })}
+          />
+          <FilterDay label="Recorded from, UTC" value={query.from} onValue={(from) => change({ from })} />
+          <FilterDay label="to, UTC" value={query.to} onValue={(to) => change({ to })} />
+        </>
+      }
+    />
   )
 }

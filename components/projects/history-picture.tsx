@@ -1,10 +1,11 @@
 import Link from 'next/link'
 import { useDates, useDisplay, usePreferences } from '@/lib/client/display'
-import { sizedSwing } from '@/lib/display-units'
+import { formatDisplacement, formatSwing } from '@/lib/display-units'
 import { historyMarks } from '@/lib/figures/history-marks'
-import type { HistoryPoint } from '@/lib/findings/project-history'
-import { arcsec } from '@/lib/findings/words'
+import { amplitudeOf, peakToPeakOf, type HistoryPoint } from '@/lib/findings/project-history'
 import { formatNumber } from '@/lib/units'
+
+const DIGITS = { significantDigits: 3 }
 
 interface HistoryPictureProps {
   projectId: string
@@ -19,7 +20,8 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
   const { day } = useDates()
   const { points, ticks } = historyMarks(history, display)
   const swingName = display.swingMeasure === 'amplitude' ? 'worm amplitude' : 'worm’s fundamental, peak to peak'
-  const line = (top: 'swingTop' | 'peakToPeakTop') => points.map((point) => `${point.left},${point[top]}`).join(' ')
+  const peakName = display.swingMeasure === 'amplitude' ? 'peak to peak' : 'whole worm'
+  const line = (of: 'swing' | 'peakToPeak') => points.map((point) => `${point.left},${point[of].top}`).join(' ')
   return (
     <figure className="text-sm" aria-label={summary}>
       <p className="figures mb-2 pl-12 text-xs text-soft" aria-hidden="true">
@@ -47,23 +49,29 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
               />
             ))}
             <polyline
-              points={line('peakToPeakTop')}
+              points={line('peakToPeak')}
               fill="none"
               strokeDasharray="4 4"
               className="stroke-steel"
               vectorEffect="non-scaling-stroke"
             />
             <polyline
-              points={line('swingTop')}
+              points={line('swing')}
               fill="none"
               strokeWidth="2"
               className="stroke-brass"
               vectorEffect="non-scaling-stroke"
             />
+            {points.map(({ left, swing, peakToPeak }, index) => (
+              <g key={history[index].analysisId}>
+                <ErrorBar left={left} span={peakToPeak.span} className="stroke-steel" />
+                <ErrorBar left={left} span={swing.span} className="stroke-brass" />
+              </g>
+            ))}
           </svg>
-          {points.map(({ left, swingTop, peakToPeakTop }, index) => {
+          {points.map(({ left, swing, peakToPeak }, index) => {
             const point = history[index]
-            const text = `${point.runName}, ${day(point.at)}: ${swingName} ${sizedSwing(point.wormAmplitudeArcsec, display)}, ${display.swingMeasure === 'amplitude' ? 'peak to peak' : 'whole worm'} ${arcsec(point.peakToPeakArcsec)}`
+            const text = `${point.runName}, ${day(point.at)}: ${swingName} ${formatSwing(amplitudeOf(point), display, DIGITS)}, ${peakName} ${formatDisplacement(peakToPeakOf(point), display, DIGITS)}`
             return (
               <Link
                 key={point.analysisId}
@@ -75,11 +83,11 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
               >
                 <span
                   className="absolute left-1/2 size-2.5 -translate-1/2 border-2 border-steel bg-card"
-                  style={{ top: `${100 * peakToPeakTop}%` }}
+                  style={{ top: `${100 * peakToPeak.top}%` }}
                 />
                 <span
                   className="absolute left-1/2 size-2.5 -translate-1/2 rounded-full bg-brass-fill"
-                  style={{ top: `${100 * swingTop}%` }}
+                  style={{ top: `${100 * swing.top}%` }}
                 />
               </Link>
             )
@@ -99,10 +107,32 @@ export function HistoryPicture({ projectId, history, summary }: HistoryPicturePr
           <span className="size-2.5 border-2 border-steel bg-card" aria-hidden="true" />
           peak to peak of the periodic part
         </li>
+        <li>bars: one standard error to either side</li>
       </ul>
       {isInPixels ? (
         <p className="mt-2 text-soft">The history stays in arc seconds: a pixel is not the same from run to run.</p>
       ) : null}
     </figure>
+  )
+}
+
+interface ErrorBarProps {
+  left: number
+  span: { top: number; bottom: number } | null
+  className: string
+}
+
+function ErrorBar({ left, span, className }: ErrorBarProps) {
+  if (!span) return null
+  return (
+    <line
+      x1={left}
+      x2={left}
+      y1={span.top}
+      y2={span.bottom}
+      strokeWidth="2"
+      className={className}
+      vectorEffect="non-scaling-stroke"
+    />
   )
 }

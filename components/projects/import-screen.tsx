@@ -8,7 +8,7 @@ import { Notice } from '@/components/ui/notice'
 import { ProgressBar } from '@/components/ui/progress-bar'
 import { RequestError } from '@/lib/client/fetcher'
 import { archiveFileFault, importArchive } from '@/lib/client/import-archive'
-import { projectsKey } from '@/lib/client/project-data'
+import { isProjectsKey } from '@/lib/client/project-data'
 import { counted } from '@/lib/findings/words'
 import type { Project } from '@/lib/schemas/api'
 import { ArchivePicker } from './archive-picker'
@@ -35,7 +35,7 @@ export function ImportScreen() {
     try {
       const onProgress = (fraction: number) => setState({ kind: 'sending', fileName: file.name, fraction })
       const project = await importArchive(file, { onProgress, signal: controller.signal })
-      await mutate(projectsKey)
+      await mutate(isProjectsKey)
       setState({ kind: 'done', project })
     } catch (error) {
       const message = error instanceof Error ? error.message : 'It could not be brought in. Try again.'

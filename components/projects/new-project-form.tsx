@@ -13,7 +13,7 @@ import { Notice } from '@/components/ui/notice'
 import { NumberInput } from '@/components/ui/number-input'
 import { TextInput } from '@/components/ui/text-input'
 import { sendJson } from '@/lib/client/fetcher'
-import { projectsKey } from '@/lib/client/project-data'
+import { isProjectsKey, projectsKey } from '@/lib/client/project-data'
 import { showServerFaults } from '@/lib/client/server-fields'
 import { newProjectSchema, projectSchema } from '@/lib/schemas/api'
 import { wormPeriodText } from './teeth'
@@ -41,7 +41,7 @@ export function NewProjectForm() {
     try {
       const driveTrain = { axisKind: 'worm', wheelTeeth: teeth, wormStarts: 1, stages: [] }
       const project = await sendJson('POST', projectsKey, { name, driveTrain }, projectSchema)
-      await mutate(projectsKey)
+      await mutate(isProjectsKey)
       router.push(`/projects/${project.id}`)
     } catch (error) {
       setFault(showServerFaults(error, ['name', 'wheelTeeth'], setError))

@@ -1,6 +1,7 @@
 'use client'
 
 import Link from 'next/link'
+import type { z } from 'zod'
 import { FindingText } from '@/components/findings/finding-text'
 import { PageHeading } from '@/components/shell/page-heading'
 import { ButtonLink } from '@/components/ui/button'
@@ -9,43 +10,36 @@ import { EmptyState } from '@/components/ui/empty-state'
 import { FigureStrip } from '@/components/ui/figure-strip'
 import { FactRow, SheetSection } from '@/components/ui/sheet-section'
 import { useDates, useDisplay } from '@/lib/client/display'
-import {
-  useAnalyses,
-  useAnalysis,
-  useMembers,
-  useProject,
-  useRuns,
-  type AnalysisRow,
-  type RunRow,
-} from '@/lib/client/project-data'
-import { swingFactor } from '@/lib/display-units'
+import { useAnalysis, useHistory, useLatestRuns, useMembers, useProject } from '@/lib/client/project-data'
+import { shownSwing } from '@/lib/display-units'
 import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
 import { historyFinding, overviewFinding } from '@/lib/findings/overview-finding'
-import { projectHistory, type HistoryPoint } from '@/lib/findings/project-history'
+import { amplitudeOf, peakToPeakOf, type HistoryPoint } from '@/lib/findings/project-history'
 import { counted } from '@/lib/findings/words'
 import type { Project } from '@/lib/schemas/api'
 import { overviewFiguresSchema } from '@/lib/schemas/kept-figures'
 import { canEditProject } from '@/lib/schemas/rights'
-import { formatNumber } from '@/lib/units'
+import type { historySchema, runListSchema } from '@/lib/schemas/lists'
+import { formatEstimate } from '@/lib/units'
 import { HistoryPicture } from './history-picture'
 import { overviewKeyFigures } from './overview-figures'
 import { wormPeriodText } from './teeth'
 
 export function OverviewScreen({ projectId }: { projectId: string }) {
   const project = useProject(projectId)
-  const runs = useRuns(projectId)
-  const analyses = useAnalyses(projectId)
+  const latestRuns = useLatestRuns(projectId)
+  const history = useHistory(projectId)
   const data =
-    project.data && runs.data && analyses.data
-      ? { project: project.data, runs: runs.data, analyses: analyses.data }
+    project.data && latestRuns.data && history.data
+      ? { project: project.data, latestRuns: latestRuns.data, history: history.data }
       : undefined
   return (
     <DataState
       what="the project"
       data={data}
-      error={project.error ?? runs.error ?? analyses.error}
-      onRetry={() => void Promise.all([project.mutate(), runs.mutate(), analyses.mutate()])}
+      error={project.error ?? latestRuns.error ?? history.error}
+      onRetry={() => void Promise.all([project.mutate(), latestRuns.mutate(), history.mutate()])}
     >
       {(all) => <Overview {...all} />}
     </DataState>
@@ -54,13 +48,12 @@ export function OverviewScreen({ projectId }: { projectId: string }) {
 
 interface OverviewProps {
   project: Project
-  runs: RunRow[]
-  analyses: AnalysisRow[]
+  latestRuns: z.output<typeof runListSchema>
+  history: z.output<typeof historySchema>
 }
 
-function Overview({ project, runs, analyses }: OverviewProps) {
+function Overview({ project, latestRuns, history: { points: history, total } }: OverviewProps) {
   const base = `/projects/${project.id}`
-  const history = projectHistory(analyses, runs)
   const last = history.at(-1)
   const kept = useAnalysis(project.id, last?.analysisId ?? null)
   const figures = overviewFiguresSchema.safeParse(kept.data?.result)
@@ -70,8 +63,8 @@ function Overview({ project, runs, analyses }: OverviewProps) {
   const canEdit = canEditProject(project)
   const title = overviewFinding({
     name: project.name,
-    runCount: runs.length,
-    analysisCount: analyses.length,
+    runCount: latestRuns.all,
+    analysisCount: project.analysisCount,
     history,
     latest,
     display,
@@ -87,12 +80,12 @@ function Overview({ project, runs, analyses }: OverviewProps) {
       <PageHeading
         crumbs={[{ label: 'Projects', href: '/projects' }, { label: project.name }]}
         title={findingText(title)}
-        actions={canEdit && runs.length > 0 ? upload : null}
+        actions={canEdit && latestRuns.all > 0 ? upload : null}
       />
       {latest?.worm && last ? (
         <FigureStrip figures={overviewKeyFigures(latest, display)} label="Figures of the latest run" />
       ) : null}
-      {runs.length === 0 ? (
+      {latestRuns.all === 0 ? (
         <EmptyState title="Bring in a first recording" actions={canEdit ? upload : null}>
           Record a star for six turns of the worm or more, {durationHint(project)}, with guiding off and no correction
           playing. The log of your guiding or imaging program will do, as long as it is text with a time and a position.
@@ -101,42 +94,43 @@ function Overview({ project, runs, analyses }: OverviewProps) {
         <SheetSection
           title="History"
           question="How has the worm behaved from run to run? The newest analysis of each run counts."
-          finding={<FindingText finding={historyFinding(history)} />}
+          finding={<FindingText finding={historyFinding(history, total)} />}
           aside={<HistoryTable projectId={project.id} history={history} />}
         >
           {history.length > 0 ? (
-            <HistoryPicture projectId={project.id} history={history} summary={findingText(historyFinding(history))} />
+            <HistoryPicture
+              projectId={project.id}
+              history={history}
+              summary={findingText(historyFinding(history, total))}
+            />
           ) : (
             <ButtonLink href={`${base}/runs`}>To the runs</ButtonLink>
           )}
         </SheetSection>
       )}
-      {runs.length > 0 ? (
+      {latestRuns.all > 0 ? (
         <SheetSection
           title="Runs"
           question="The latest recordings."
-          finding={<FindingText finding={runsFinding(runs)} />}
+          finding={<FindingText finding={runsFinding(latestRuns)} />}
           aside={<ProjectFacts project={project} />}
         >
           <ul>
-            {[...runs]
-              .sort((a, b) => b.createdAt.localeCompare(a.createdAt))
-              .slice(0, 5)
-              .map((run) => (
-                <li
-                  key={run.id}
-                  className="flex flex-wrap justify-between gap-x-4 border-b border-rule py-2 last:border-b-0"
-                >
-                  <Link className="link font-semibold pointer-coarse:py-2.5" href={`${base}/runs/${run.id}`}>
-                    {run.name}
-                  </Link>
-                  <span className="text-sm text-soft">
-                    {run.facts.startedAt ? `recorded ${day(run.facts.startedAt)}` : `brought in ${day(run.createdAt)}`}
-                    {', '}
-                    {counted(run.analysisCount, 'analysis', 'analyses')}
-                  </span>
-                </li>
-              ))}
+            {latestRuns.runs.map((run) => (
+              <li
+                key={run.id}
+                className="flex flex-wrap justify-between gap-x-4 border-b border-rule py-2 last:border-b-0"
+              >
+                <Link className="link font-semibold pointer-coarse:py-2.5" href={`${base}/runs/${run.id}`}>
+                  {run.name}
+                </Link>
+                <span className="text-sm text-soft">
+                  {run.startedAt ? `recorded ${day(run.startedAt)}` : `brought in ${day(run.createdAt)}`}
+                  {', '}
+                  {counted(run.analysisCount, 'analysis', 'analyses')}
+                </span>
+              </li>
+            ))}
           </ul>
         </SheetSection>
       ) : null}
@@ -187,9 +181,9 @@ function HistoryTable({ projectId, history }: { projectId: string; history: read
                 </Link>
               </th>
               <td className="figures py-1.5 pl-2 text-right">
-                {formatNumber(swingFactor(display) * point.wormAmplitudeArcsec, 2)}
+                {formatEstimate(shownSwing(amplitudeOf(point), display))}
               </td>
-              <td className="figures py-1.5 pl-2 text-right">{formatNumber(point.peakToPeakArcsec, 1)}</td>
+              <td className="figures py-1.5 pl-2 text-right">{formatEstimate(peakToPeakOf(point))}</td>
             </tr>
           ))}
       </tbody>

@@ -7,7 +7,7 @@ import { Button, ButtonAnchor } from '@/components/ui/button'
 import { ConfirmByName } from '@/components/ui/confirm-by-name'
 import { DataState } from '@/components/ui/data-state'
 import { sendOnly } from '@/lib/client/fetcher'
-import { projectsKey, useProjectContents } from '@/lib/client/project-data'
+import { isProjectsKey, useProjectContents } from '@/lib/client/project-data'
 import { contentsLost } from '@/lib/findings/contents-lost'
 import type { Project } from '@/lib/schemas/api'
 
@@ -37,7 +37,7 @@ export function DeleteSection({ project }: { project: Project }) {
         confirmLabel="Delete it"
         onConfirm={async () => {
           await sendOnly('DELETE', url, { name: project.name })
-          await mutate(projectsKey)
+          await mutate(isProjectsKey)
           router.push('/projects')
         }}
       >

@@ -1,6 +1,7 @@
 'use client'
 
 import { PageHeading } from '@/components/shell/page-heading'
+import { ButtonLink } from '@/components/ui/button'
 import { DataState } from '@/components/ui/data-state'
 import { SheetSection } from '@/components/ui/sheet-section'
 import { useOpticsPresets, useProject } from '@/lib/client/project-data'
@@ -50,6 +51,9 @@ export function SettingsScreen({ projectId }: { projectId: string }) {
               canEdit={canEditProject(shown)}
               onChanged={() => void presets.mutate()}
             />
+          </SheetSection>
+          <SheetSection title="Who did what" question="Every change to this project, with who made it and when.">
+            <ButtonLink href={`/projects/${projectId}/settings/trail`}>To the log</ButtonLink>
           </SheetSection>
           <SheetSection title="Download everything" question="A copy to keep, in formats that other programs read.">
             <DownloadSection projectId={projectId} />

@@ -11,7 +11,7 @@ import { Notice } from '@/components/ui/notice'
 import { Select } from '@/components/ui/select'
 import { TextInput } from '@/components/ui/text-input'
 import { getJson, RequestError } from '@/lib/client/fetcher'
-import { projectListSchema, type Project } from '@/lib/schemas/api'
+import { LARGEST_PAGE, projectListSchema, type ProjectSummary } from '@/lib/schemas/lists'
 import { canEditProject } from '@/lib/schemas/rights'
 
 const newProject = 'new'
@@ -50,9 +50,10 @@ interface SaveDialogProps {
 
 /** Asks under which mount and names the work on the open bench is to be kept. */
 export function SaveDialog({ isOpen, onClose, onSignedOut, ...rest }: SaveDialogProps) {
-  const { data, error } = useSWR<{ projects: Project[] }, Error>(
-    isOpen ? '/api/projects' : null,
-    (url: string) => getJson(url, projectListSchema),
+  const { data, error } = useSWR<{ projects: ProjectSummary[] }, Error>(
+    // The last changed ones; archived projects take nothing in.
+    isOpen ? `/api/projects?limit=${LARGEST_PAGE}` : null,
+    (url: string) => getJson(url, projectListSchema.pick({ projects: true })),
     { onError: (fault) => fault instanceof RequestError && fault.isSignedOut && onSignedOut() },
   )
   return (
@@ -73,7 +74,7 @@ function SaveForm({
   onSave,
   onClose,
   progressText,
-}: Omit<SaveDialogProps, 'isOpen' | 'onSignedOut'> & { projects: Project[] }) {
+}: Omit<SaveDialogProps, 'isOpen' | 'onSignedOut'> & { projects: ProjectSummary[] }) {
   const writable = projects.filter(canEditProject)
   const { register, handleSubmit, control, setError, formState } = useForm({
     resolver: zodResolver(saveSchema),

@@ -6,6 +6,7 @@ import * as analyses from './2026-12-01-04-analyses'
 import * as people from './2026-12-01-05-people'
 import * as pastInvitationLinks from './2026-12-01-06-past-invitation-links'
 import * as importedNoteNames from './2026-12-01-07-imported-note-names'
+import * as lists from './2026-12-01-08-lists'
 
 /** Every migration under its file's name, oldest first. A migration that has been merged is never edited. */
 export const migrations: Record<string, Migration> = {
@@ -16,4 +17,5 @@ export const migrations: Record<string, Migration> = {
   '2026-12-01-05-people': people,
   '2026-12-01-06-past-invitation-links': pastInvitationLinks,
   '2026-12-01-07-imported-note-names': importedNoteNames,
+  '2026-12-01-08-lists': lists,
 }

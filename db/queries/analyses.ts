@@ -5,7 +5,6 @@ import type { analysisResultSchema } from '@/lib/schemas/api'
 import type { Database } from '../schema'
 import type { ProjectAccess } from './access'
 import { changedMeanwhile } from './changed-meanwhile'
-import { decodeCursor, pageSize, toPage, type PageRequest } from './page'
 import { Refusal, unknownThing } from './refusal'
 
 function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
@@ -33,26 +32,6 @@ function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
       'analyses.updatedAt',
       sql<string>`coalesce(analyses.author_name, users.display_name)`.as('createdBy'),
     ])
-}
-
-/** Newest first, without recipes and results; of one run when it is named. */
-export async function listAnalyses(
-  db: Kysely<Database>,
-  access: ProjectAccess,
-  { runId, ...page }: PageRequest & { runId?: string },
-) {
-  const size = pageSize(page.limit)
-  const place = page.cursor ? decodeCursor(page.cursor) : null
-  let query = summariesOf(db, access)
-    .orderBy('analyses.createdAt', 'desc')
-    .orderBy('analyses.id', 'desc')
-    .limit(size + 1)
-  if (runId) query = query.where('analyses.runId', '=', runId)
-  if (place) {
-    query = query.where((eb) => eb(eb.refTuple('analyses.createdAt', 'analyses.id'), '<', eb.tuple(place.at, place.id)))
-  }
-  const { rows, nextCursor } = toPage(await query.execute(), size, ({ createdAt, id }) => ({ at: createdAt, id }))
-  return { analyses: rows, nextCursor }
 }
 
 export async function findAnalysis(db: Kysely<Database>, access: ProjectAccess, analysisId: string) {

@@ -1,11 +1,11 @@
 import { sql, type Kysely } from 'kysely'
+import type { AuditAction } from '@/lib/findings/audit-words'
 import type { Database } from '../schema'
 import type { ProjectAccess } from './access'
-import { decodeCursor, pageSize, toPage, type PageRequest } from './page'
 
 export interface AuditEntry {
   /** `run.delete` and the like: what, then what was done to it. */
-  action: `${string}.${string}`
+  action: AuditAction
   /** Which one, by the name that people know it by. */
   subject: string
 }
@@ -41,20 +41,4 @@ async function insertEvent(
         ]),
     )
     .execute()
-}
-
-/** Newest first. */
-export async function listAuditEvents(db: Kysely<Database>, access: ProjectAccess, page: PageRequest) {
-  const size = pageSize(page.limit)
-  const place = page.cursor ? decodeCursor(page.cursor) : null
-  let query = db
-    .selectFrom('auditEvents')
-    .select(['id', 'actorName', 'action', 'subject', 'at'])
-    .where('projectId', '=', access.projectId)
-    .orderBy('at', 'desc')
-    .orderBy('id', 'desc')
-    .limit(size + 1)
-  if (place) query = query.where((eb) => eb(eb.refTuple('at', 'id'), '<', eb.tuple(place.at, place.id)))
-  const { rows, nextCursor } = toPage(await query.execute(), size, ({ at, id }) => ({ at, id }))
-  return { events: rows, nextCursor }
 }

@@ -4,7 +4,6 @@ import type { TableResult } from '@/lib/analysis/types'
 import type { newCorrectionSchema } from '@/lib/schemas/api'
 import type { Database } from '../schema'
 import type { ProjectAccess } from './access'
-import { decodeCursor, pageSize, toPage, type PageRequest } from './page'
 import { unknownThing } from './refusal'
 
 function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
@@ -26,23 +25,6 @@ function summariesOf(db: Kysely<Database>, access: ProjectAccess) {
       'corrections.createdAt',
       sql<string>`coalesce(corrections.author_name, users.display_name)`.as('createdBy'),
     ])
-}
-
-/** Newest first, without the tables themselves. */
-export async function listCorrections(db: Kysely<Database>, access: ProjectAccess, page: PageRequest) {
-  const size = pageSize(page.limit)
-  const place = page.cursor ? decodeCursor(page.cursor) : null
-  let query = summariesOf(db, access)
-    .orderBy('corrections.createdAt', 'desc')
-    .orderBy('corrections.id', 'desc')
-    .limit(size + 1)
-  if (place) {
-    query = query.where((eb) =>
-      eb(eb.refTuple('corrections.createdAt', 'corrections.id'), '<', eb.tuple(place.at, place.id)),
-    )
-  }
-  const { rows, nextCursor } = toPage(await query.execute(), size, ({ createdAt, id }) => ({ at: createdAt, id }))
-  return { corrections: rows, nextCursor }
 }
 
 export async function findCorrection(db: Kysely<Database>, access: ProjectAccess, correctionId: string) {

@@ -53,12 +53,6 @@ function withDriveTrain({ axisKind, wheelTeeth, wormStarts, stages, ...project }
   return { ...project, driveTrain: { axisKind, wheelTeeth, wormStarts, stages } }
 }
 
-/** The person's projects, the last changed first. */
-export async function listProjects(db: Kysely<Database>, userId: string) {
-  const rows = await projectsOfMember(db, userId).orderBy('projects.updatedAt', 'desc').orderBy('projects.id').execute()
-  return rows.map(withDriveTrain)
-}
-
 export async function findProject(db: Kysely<Database>, access: ProjectAccess) {
   const row = await projectsOfMember(db, access.userId).where('projects.id', '=', access.projectId).executeTakeFirst()
   if (!row) throw unknownThing('project')

@@ -5,7 +5,6 @@ import { unknownRunFacts, type RunFacts } from '@/lib/schemas/run-facts'
 import type { Database } from '../schema'
 import type { ProjectAccess } from './access'
 import { changedMeanwhile } from './changed-meanwhile'
-import { decodeCursor, pageSize, toPage, type PageRequest } from './page'
 import { Refusal, unknownThing } from './refusal'
 import type { StoredFile } from './run-files'
 
@@ -33,21 +32,6 @@ function runsOf(db: Kysely<Database>, access: ProjectAccess) {
       sql<string>`coalesce(runs.author_name, users.display_name)`.as('createdBy'),
       sql<number>`(select count(*)::int from analyses where run_id = runs.id)`.as('analysisCount'),
     ])
-}
-
-/** Newest first. */
-export async function listRuns(db: Kysely<Database>, access: ProjectAccess, page: PageRequest) {
-  const size = pageSize(page.limit)
-  const place = page.cursor ? decodeCursor(page.cursor) : null
-  let query = runsOf(db, access)
-    .orderBy('runs.createdAt', 'desc')
-    .orderBy('runs.id', 'desc')
-    .limit(size + 1)
-  if (place) {
-    query = query.where((eb) => eb(eb.refTuple('runs.createdAt', 'runs.id'), '<', eb.tuple(place.at, place.id)))
-  }
-  const { rows, nextCursor } = toPage(await query.execute(), size, (run) => ({ at: run.createdAt, id: run.id }))
-  return { runs: rows, nextCursor }
 }
 
 export async function findRun(db: Kysely<Database>, access: ProjectAccess, runId: string) {

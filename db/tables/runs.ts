@@ -19,6 +19,8 @@ export interface RunsTable {
   importSettings: NullableJson<ImportSettings>
   conversion: NullableJson<Conversion>
   facts: Json<RunFacts>
+  /** The start among the facts, kept by PostgreSQL itself so that lists can be sorted by it. */
+  startedAt: ColumnType<Date | null, never, never>
   rowCount: number | null
   samplesSha256: string | null
   /** Who brought it in where it comes from, if not here. */

@@ -1,25 +1,19 @@
 'use client'
 
-import useSWR, { type SWRResponse } from 'swr'
+import useSWR from 'swr'
 import type { z } from 'zod'
 import {
-  analysisListSchema,
   analysisSchema,
-  correctionListSchema,
   correctionSchema,
   memberListSchema,
   opticsPresetListSchema,
   projectContentsSchema,
-  projectListSchema,
   projectSchema,
-  runListSchema,
 } from '@/lib/schemas/api'
+import { historySchema, runListSchema } from '@/lib/schemas/lists'
 import { getJson } from './fetcher'
-import { getAllPages } from './all-pages'
+import { latestRunsKey } from './list-keys'
 
-export type RunRow = z.output<typeof runListSchema>['runs'][number]
-export type AnalysisRow = z.output<typeof analysisListSchema>['analyses'][number]
-export type CorrectionRow = z.output<typeof correctionListSchema>['corrections'][number]
 export type Member = z.output<typeof memberListSchema>['members'][number]
 export type OpticsPreset = z.output<typeof opticsPresetListSchema>['presets'][number]
 
@@ -27,11 +21,8 @@ export const projectKey = (projectId: string) => `/api/projects/${projectId}`
 
 export const projectsKey = '/api/projects'
 
-export function useProjects() {
-  return useSWR<z.output<typeof projectListSchema>, Error>(projectsKey, (url: string) =>
-    getJson(url, projectListSchema),
-  )
-}
+/** Every view of the list of projects, for `mutate`: a project came, went or changed. */
+export const isProjectsKey = (key: unknown) => typeof key === 'string' && key.split('?')[0] === projectsKey
 
 export function useProject(projectId: string) {
   return useSWR<z.output<typeof projectSchema>, Error>(projectKey(projectId), (url: string) =>
@@ -39,15 +30,16 @@ export function useProject(projectId: string) {
   )
 }
 
-export function useRuns(projectId: string): SWRResponse<RunRow[], Error> {
-  return useSWR<RunRow[], Error>(`${projectKey(projectId)}/runs`, (url: string) =>
-    getAllPages(url, runListSchema, (page) => page.runs),
+/** The last runs that were brought in, and counts of all. */
+export function useLatestRuns(projectId: string) {
+  return useSWR<z.output<typeof runListSchema>, Error>(latestRunsKey(projectId), (url: string) =>
+    getJson(url, runListSchema),
   )
 }
 
-export function useAnalyses(projectId: string): SWRResponse<AnalysisRow[], Error> {
-  return useSWR<AnalysisRow[], Error>(`${projectKey(projectId)}/analyses`, (url: string) =>
-    getAllPages(url, analysisListSchema, (page) => page.analyses),
+export function useHistory(projectId: string) {
+  return useSWR<z.output<typeof historySchema>, Error>(`${projectKey(projectId)}/history`, (url: string) =>
+    getJson(url, historySchema),
   )
 }
 
@@ -56,12 +48,6 @@ export function useAnalysis(projectId: string, analysisId: string | null) {
   return useSWR<z.output<typeof analysisSchema>, Error>(
     analysisId ? `${projectKey(projectId)}/analyses/${analysisId}` : null,
     (url: string) => getJson(url, analysisSchema),
-  )
-}
-
-export function useCorrections(projectId: string): SWRResponse<CorrectionRow[], Error> {
-  return useSWR<CorrectionRow[], Error>(`${projectKey(projectId)}/corrections`, (url: string) =>
-    getAllPages(url, correctionListSchema, (page) => page.corrections),
   )
 }
 

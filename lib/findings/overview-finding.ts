@@ -1,8 +1,9 @@
 import { PLAIN_DISPLAY, formatDisplacement, sizedDisplacement, type Display } from '@/lib/display-units'
 import type { OverviewFigures } from '@/lib/schemas/kept-figures'
+import { formatEstimate } from '@/lib/units'
 import { finding, worm, type Finding } from './finding'
-import type { HistoryPoint } from './project-history'
-import { arcsec, capitalised, counted } from './words'
+import { peakToPeakOf, type HistoryPoint } from './project-history'
+import { capitalised, counted } from './words'
 
 interface OverviewState {
   name: string
@@ -31,10 +32,13 @@ export function overviewFinding(state: OverviewState): Finding {
 }
 
 /** The sentence over the history; it states the figures and leaves the verdict to a comparison. */
-export function historyFinding(history: readonly HistoryPoint[]): Finding {
+export function historyFinding(history: readonly HistoryPoint[], total = history.length): Finding {
   const [first, last] = [history.at(0), history.at(-1)]
   if (!first || !last) return finding`There is no history yet: save an analysis of a run to begin it.`
+  const swing = (point: HistoryPoint) => formatEstimate(peakToPeakOf(point), { unit: '″', significantDigits: 3 })
   if (history.length === 1)
-    return finding`One analysed run so far; the history begins with ${worm(arcsec(last.peakToPeakArcsec))} peak to peak.`
-  return finding`From the first to the last of ${counted(history.length, 'analysed run')} the peak-to-peak went from ${arcsec(first.peakToPeakArcsec)} to ${worm(arcsec(last.peakToPeakArcsec))}.`
+    return finding`One analysed run so far; the history begins with ${worm(swing(last))} peak to peak.`
+  const which =
+    total > history.length ? `the latest ${history.length} of ${total} analysed runs` : counted(total, 'analysed run')
+  return finding`From the first to the last of ${which} the peak-to-peak went from ${swing(first)} to ${worm(swing(last))}.`
 }

@@ -5,7 +5,7 @@ import { conversionSchema, driveTrainSchema, recipeSchema, tableSettingsSchema }
 import { runFactsSchema } from './run-facts'
 
 /*
- * Requests and answers of the route handlers, parsed on both sides. Every address below /api/projects/[projectId] answers
+ * Requests and answers of the route handlers, parsed on both sides; those of the lists stand in lists.ts. Every address below /api/projects/[projectId] answers
  * 401 without a session, 404 to strangers, 403 to members without the right. A changed thing carries `version`; a request
  * to change it names the version it was made from, and 409 `changed-meanwhile` tells who changed it and gives the current state.
  */
@@ -76,7 +76,6 @@ export const projectSchema = z.object({
   updatedAt: instant,
 })
 export type Project = z.infer<typeof projectSchema>
-export const projectListSchema = z.object({ projects: z.array(projectSchema) })
 /** PATCH /api/projects/[projectId] (owner). */
 export const projectChangeSchema = z.object({ version, name })
 /** PUT /api/projects/[projectId]/archived (owner) → 200 projectSchema. Archived: everybody reads on, nobody changes anything. */
@@ -132,7 +131,7 @@ export const opticsChangeSchema = opticsFieldsSchema.extend({ version })
  * at most 64 MB, streamed): 201 runSchema with status 'uploaded'. 413 `too-large` with the limit in words.
  * PUT  …/runs/[runId]/import  importRunSchema: reads the stored file with these settings: 200 runSchema, 'ready';
  *      422 with the ImportFault's message, code, row and column.
- * GET  …/runs (runListSchema), …/runs/[runId], …/runs/[runId]/columns (packed columns as a gzip file),
+ * GET  …/runs (lists.ts), …/runs/[runId], …/runs/[runId]/columns (packed columns as a gzip file),
  *      …/runs/[runId]/file (the original bytes). PATCH …/runs/[runId] changes name and facts. DELETE removes (editor).
  */
 export const runSchema = z.object({
@@ -155,8 +154,6 @@ export const runSchema = z.object({
   updatedAt: instant,
 })
 export type Run = z.infer<typeof runSchema>
-/** GET …/runs?cursor=&limit=: newest first; `nextCursor` is null on the last page. */
-export const runListSchema = z.object({ runs: z.array(runSchema), nextCursor: z.string().nullable() })
 export const importRunSchema = z.object({
   version,
   settings: importSettingsSchema,
@@ -177,7 +174,7 @@ export const analysisResultSchema = z.looseObject({
   used: z.number().int(),
 })
 export const newAnalysisSchema = z.object({ runId: id, name, recipe: recipeSchema, result: analysisResultSchema })
-export const analysisSummarySchema = z.object({
+export const analysisSchema = z.object({
   id,
   version,
   projectId: id,
@@ -186,7 +183,7 @@ export const analysisSummarySchema = z.object({
   name,
   engineVersion: z.string(),
   samplesSha256: z.string(),
-  /** For lists: null where there is no worm figure. */
+  /** Taken out of the result; null where it holds no worm figure. */
   wormPeriodSeconds: z.number().nullable(),
   wormPeriodStderrSeconds: z.number().nullable(),
   wormAmplitudeArcsec: z.number().nullable(),
@@ -196,13 +193,10 @@ export const analysisSummarySchema = z.object({
   createdAt: instant,
   createdBy: z.string(),
   updatedAt: instant,
+  recipe: recipeSchema,
+  result: analysisResultSchema,
 })
-export const analysisSchema = analysisSummarySchema.extend({ recipe: recipeSchema, result: analysisResultSchema })
 export type Analysis = z.infer<typeof analysisSchema>
-export const analysisListSchema = z.object({
-  analyses: z.array(analysisSummarySchema),
-  nextCursor: z.string().nullable(),
-})
 /** A saved recipe or result never changes; a changed recipe is a new analysis. Only the name does. */
 export const analysisChangeSchema = z.object({ version, name })
 
@@ -278,21 +272,3 @@ export const correctionSchema = z.object({
   createdBy: z.string(),
 })
 export type Correction = z.infer<typeof correctionSchema>
-export const correctionListSchema = z.object({
-  corrections: z.array(correctionSchema.omit({ table: true })),
-  nextCursor: z.string().nullable(),
-})
-
-/** GET …/audit-events?cursor= (members). */
-export const auditEventListSchema = z.object({
-  events: z.array(
-    z.object({
-      id,
-      actorName: z.string(),
-      action: z.string(),
-      subject: z.string(),
-      at: instant,
-    }),
-  ),
-  nextCursor: z.string().nullable(),
-})

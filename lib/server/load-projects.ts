@@ -1,22 +1,16 @@
 import 'server-only'
-import { z } from 'zod'
 import { database } from '@/db'
 import type { ProjectAccess } from '@/db/queries/access'
-import { listAuditEvents } from '@/db/queries/audit'
+import { listAuditEvents } from '@/db/queries/list-audit-events'
+import { listProjects } from '@/db/queries/list-projects'
 import { listOpticsPresets } from '@/db/queries/optics-presets'
-import type { PageRequest } from '@/db/queries/page'
-import { countContents, findProject, listMembers, listProjects } from '@/db/queries/projects'
-import {
-  auditEventListSchema,
-  memberListSchema,
-  opticsPresetListSchema,
-  projectContentsSchema,
-  projectSchema,
-} from '@/lib/schemas/api'
+import { countContents, findProject, listMembers } from '@/db/queries/projects'
+import { memberListSchema, opticsPresetListSchema, projectContentsSchema, projectSchema } from '@/lib/schemas/api'
+import { auditEventListSchema, projectListSchema, type AuditQuery, type ProjectQuery } from '@/lib/schemas/lists'
 import { plain } from './plain'
 
-export async function loadProjects(userId: string) {
-  return plain(z.array(projectSchema), await listProjects(database(), userId))
+export async function loadProjects(userId: string, query: ProjectQuery) {
+  return plain(projectListSchema, await listProjects(database(), userId, query))
 }
 
 export async function loadProject(access: ProjectAccess) {
@@ -31,8 +25,8 @@ export async function loadOpticsPresets(access: ProjectAccess) {
   return plain(opticsPresetListSchema.shape.presets, await listOpticsPresets(database(), access))
 }
 
-export async function loadAuditEvents(access: ProjectAccess, page: PageRequest) {
-  return plain(auditEventListSchema, await listAuditEvents(database(), access, page))
+export async function loadAuditEvents(access: ProjectAccess, query: AuditQuery) {
+  return plain(auditEventListSchema, await listAuditEvents(database(), access, query))
 }
 
 export async function loadContents(access: ProjectAccess) {

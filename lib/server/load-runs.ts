@@ -1,13 +1,14 @@
 import 'server-only'
 import { database } from '@/db'
 import type { ProjectAccess } from '@/db/queries/access'
-import type { PageRequest } from '@/db/queries/page'
-import { findRun, listRuns } from '@/db/queries/runs'
-import { runListSchema, runSchema } from '@/lib/schemas/api'
+import { listRuns } from '@/db/queries/list-runs'
+import { findRun } from '@/db/queries/runs'
+import { runSchema } from '@/lib/schemas/api'
+import { runListSchema, type RunQuery } from '@/lib/schemas/lists'
 import { plain } from './plain'
 
-export async function loadRuns(access: ProjectAccess, page: PageRequest) {
-  return plain(runListSchema, await listRuns(database(), access, page))
+export async function loadRuns(access: ProjectAccess, query: RunQuery) {
+  return plain(runListSchema, await listRuns(database(), access, query))
 }
 
 export async function loadRun(access: ProjectAccess, runId: string) {

@@ -2,7 +2,6 @@ import 'server-only'
 import { z } from 'zod'
 import { database } from '@/db'
 import { accessProject, type ProjectAccess, type Right } from '@/db/queries/access'
-import { decodeCursor } from '@/db/queries/page'
 import { requireUser, type SignedInUser } from './auth'
 import { bodyParts } from './body'
 import { AppError, errorResponse } from './errors'
@@ -98,15 +97,7 @@ export function answerNothing(): Response {
   return new Response(null, { status: 204 })
 }
 
-const pageQuerySchema = z.object({
-  cursor: z
-    .string()
-    .max(200)
-    .refine((cursor) => cursor === '' || decodeCursor(cursor), { error: 'This is no place in the list' })
-    .optional(),
-  limit: z.coerce.number().int().min(1).optional(),
-})
-
-export function pageOf(request: Request) {
-  return pageQuerySchema.parse(Object.fromEntries(new URL(request.url).searchParams))
+/** What a list is asked for: the query of the address, parsed. */
+export function queryOf<Schema extends z.ZodType>(request: Request, schema: Schema): z.output<Schema> {
+  return schema.parse(Object.fromEntries(new URL(request.url).searchParams))
 }

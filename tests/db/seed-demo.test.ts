@@ -2,23 +2,39 @@ import { createHash } from 'node:crypto'
 import { gunzipSync } from 'node:zlib'
 import { beforeAll, describe, expect, test } from 'vitest'
 import { accessProject, type ProjectAccess } from '@/db/queries/access'
-import { findAnalysis, listAnalyses } from '@/db/queries/analyses'
-import { findCorrection, listCorrections } from '@/db/queries/corrections'
+import { findAnalysis } from '@/db/queries/analyses'
+import { findCorrection } from '@/db/queries/corrections'
+import { listAnalyses } from '@/db/queries/list-analyses'
+import { listCorrections } from '@/db/queries/list-corrections'
+import { listProjects } from '@/db/queries/list-projects'
+import { listRuns } from '@/db/queries/list-runs'
 import { listNotes } from '@/db/queries/notes'
-import { listMembers, listProjects } from '@/db/queries/projects'
+import { listMembers } from '@/db/queries/projects'
 import { findRunColumns, readRunFile } from '@/db/queries/run-files'
-import { listRuns } from '@/db/queries/runs'
+import { findRun } from '@/db/queries/runs'
 import { insertUser } from '@/db/queries/users'
 import { seedDemo, type DemoUserIds } from '@/db/seed-demo'
 import { analyseAtOnce } from '@/lib/analysis/analyse'
 import { unpackColumns } from '@/lib/formats/packed-columns'
-import { analysisListSchema, correctionSchema, noteListSchema, runListSchema } from '@/lib/schemas/api'
+import { correctionSchema, noteListSchema } from '@/lib/schemas/api'
+import {
+  analysisListSchema,
+  analysisQuerySchema,
+  correctionQuerySchema,
+  projectQuerySchema,
+  runListSchema,
+  runQuerySchema,
+} from '@/lib/schemas/lists'
 import { DEMO_PEOPLE, DEMO_PROJECT_NAME, demoRuns } from '@/lib/simulate/demo'
 import { openTestDatabase } from '../support/test-database'
 
 const database = openTestDatabase()
 const demo = demoRuns()
 const wholePage = { limit: 50 }
+const allRuns = () => listRuns(database.db, access, runQuerySchema.parse({ ...wholePage, sort: 'created' }))
+const allAnalyses = () => listAnalyses(database.db, access, analysisQuerySchema.parse(wholePage))
+const projectsOf = async (userId: string) =>
+  (await listProjects(database.db, userId, projectQuerySchema.parse({}))).projects
 let users: DemoUserIds
 let access: ProjectAccess<'read'>
 
@@ -37,13 +53,13 @@ beforeAll(async () => {
   }
   users = Object.fromEntries(entries) as DemoUserIds
   expect(await seedDemo(database.db, users)).toBe(true)
-  const [project] = await listProjects(database.db, users.ines)
+  const [project] = await projectsOf(users.ines)
   access = await accessProject(database.db, { userId: users.ines, projectId: project.id, right: 'read' })
 }, 120_000)
 
 test('a second start stores nothing again', async () => {
   expect(await seedDemo(database.db, users)).toBe(false)
-  const projects = await listProjects(database.db, users.mira)
+  const projects = await projectsOf(users.mira)
   expect(projects.map(({ name }) => name)).toEqual([DEMO_PROJECT_NAME])
   expect(projects[0]).toMatchObject({ runCount: 8, analysisCount: 8, memberCount: 3, role: 'owner' })
 })
@@ -57,35 +73,38 @@ test('everyone has the role of the story', async () => {
 
 describe('runs', () => {
   test('are there, newest first, as the API answers them', async () => {
-    const list = await listRuns(database.db, access, wholePage)
+    const list = await allRuns()
     const { runs } = runListSchema.parse(answered(list))
     expect(runs.map(({ name }) => name)).toEqual(demo.map(({ name }) => name).reverse())
     for (const run of runs) expect(run.status).toBe('ready')
   })
 
   test('keep their files byte for byte', async () => {
-    const { runs } = await listRuns(database.db, access, wholePage)
+    const { runs } = await allRuns()
     for (const { fileName, text } of demo) {
       const run = runs.find((stored) => stored.fileName === fileName)!
       const parts: Buffer[] = []
       for await (const part of readRunFile(database.db, access, run.id)) parts.push(part)
       const bytes = Buffer.concat(parts)
       expect(bytes.toString('utf8') === text).toBe(true)
-      expect(createHash('sha256').update(bytes).digest('hex')).toBe(run.fileSha256)
+      expect(createHash('sha256').update(bytes).digest('hex')).toBe(
+        (await findRun(database.db, access, run.id)).fileSha256,
+      )
     }
   })
 })
 
 describe('analyses', () => {
   test('one of each run, of the samples that are stored', async () => {
-    const { analyses } = analysisListSchema.parse(answered(await listAnalyses(database.db, access, wholePage)))
-    const { runs } = await listRuns(database.db, access, wholePage)
+    const { analyses } = analysisListSchema.parse(answered(await allAnalyses()))
+    const { runs } = await allRuns()
     expect(analyses.map(({ runId }) => runId)).toEqual(runs.map(({ id }) => id))
     for (const analysis of analyses) {
-      const run = runs.find(({ id }) => id === analysis.runId)!
-      expect(analysis.samplesSha256).toBe(run.samplesSha256)
+      const run = await findRun(database.db, access, analysis.runId)
+      const { samplesSha256 } = await findAnalysis(database.db, access, analysis.id)
+      expect(samplesSha256).toBe(run.samplesSha256)
       const { bytes } = await findRunColumns(database.db, access, run.id)
-      expect(createHash('sha256').update(gunzipSync(bytes)).digest('hex')).toBe(analysis.samplesSha256)
+      expect(createHash('sha256').update(gunzipSync(bytes)).digest('hex')).toBe(samplesSha256)
     }
   })
 
@@ -93,7 +112,7 @@ describe('analyses', () => {
     'a saved one comes out the same when it is computed again from what is stored',
     { timeout: 60_000 },
     async () => {
-      const { analyses } = await listAnalyses(database.db, access, wholePage)
+      const { analyses } = await allAnalyses()
       const { recipe, result, runId } = await findAnalysis(database.db, access, analyses[0].id)
       const { bytes } = await findRunColumns(database.db, access, runId)
       const again = analyseAtOnce(unpackColumns(gunzipSync(bytes)).columns, recipe)
@@ -102,8 +121,8 @@ describe('analyses', () => {
   )
 
   test('find the truth that the simulator put in, within four standard errors', async () => {
-    const { analyses } = await listAnalyses(database.db, access, wholePage)
-    const { runs } = await listRuns(database.db, access, wholePage)
+    const { analyses } = await allAnalyses()
+    const { runs } = await allRuns()
     for (const { fileName, truth } of demo) {
       const run = runs.find((stored) => stored.fileName === fileName)!
       const { id } = analyses.find(({ runId }) => runId === run.id)!
@@ -122,7 +141,7 @@ describe('analyses', () => {
   })
 
   test('carry notes of every kind', async () => {
-    const { analyses } = await listAnalyses(database.db, access, wholePage)
+    const { analyses } = await allAnalyses()
     const kinds = new Set<string>()
     for (const { id } of analyses) {
       const { notes } = noteListSchema.parse(answered({ notes: await listNotes(database.db, access, id) }))
@@ -133,7 +152,7 @@ describe('analyses', () => {
 })
 
 test('there is one correction table, made after the mesh was eased; it closes over a turn', async () => {
-  const { corrections } = await listCorrections(database.db, access, wholePage)
+  const { corrections } = await listCorrections(database.db, access, correctionQuerySchema.parse(wholePage))
   expect(corrections).toHaveLength(1)
   const correction = correctionSchema.parse(answered(await findCorrection(database.db, access, corrections[0].id)))
   expect(correction.table.bins).toHaveLength(240)

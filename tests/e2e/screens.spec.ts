@@ -149,6 +149,8 @@ const screens: Screen[] = [
   memberEntry('correction', 'corrections', false),
   memberVisit('people', '/people'),
   memberVisit('settings', '/settings'),
+  memberVisit('log of the project', '/settings/trail'),
+  memberVisit('runs, none of which matches', '/runs?q=no-such-run'),
 ]
 
 for (const isMembersOnly of [false, true]) {

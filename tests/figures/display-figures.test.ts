@@ -105,17 +105,18 @@ describe.each([
 })
 
 test('in the history only the fundamental doubles, and stays within the picture', () => {
+  const noErrors = { wormAmplitudeStderrArcsec: null, peakToPeakStderrArcsec: null }
   const history = [
-    { at: '2026-09-01T00:00:00Z', wormAmplitudeArcsec: 8, peakToPeakArcsec: 15 },
-    { at: '2026-10-01T00:00:00Z', wormAmplitudeArcsec: 4, peakToPeakArcsec: 10 },
+    { at: '2026-09-01T00:00:00Z', wormAmplitudeArcsec: 8, peakToPeakArcsec: 15, ...noErrors },
+    { at: '2026-10-01T00:00:00Z', wormAmplitudeArcsec: 4, peakToPeakArcsec: 10, ...noErrors },
   ]
   const heights = (display?: Display) => {
     const { points, ticks } = historyMarks(history, display)
     const perTop = (ticks[1].value - ticks[0].value) / (ticks[0].top - ticks[1].top)
-    return points.map(({ swingTop, peakToPeakTop }) => [(1 - swingTop) * perTop, (1 - peakToPeakTop) * perTop])
+    return points.map(({ swing, peakToPeak }) => [(1 - swing.top) * perTop, (1 - peakToPeak.top) * perTop])
   }
   const flat = (rows: number[][]) => rows.flat().map((value) => Number(value.toFixed(6)))
   expect(flat(heights())).toEqual([8, 15, 4, 10])
   expect(flat(heights(peak))).toEqual([16, 15, 8, 10])
-  expect(historyMarks(history, peak).points.every(({ swingTop }) => swingTop >= 0)).toBe(true)
+  expect(historyMarks(history, peak).points.every(({ swing }) => swing.top >= 0)).toBe(true)
 })

@@ -91,7 +91,9 @@ describe.each(Object.entries(expected))('shown as %s', (name, figures) => {
       at: '2026-11-14T21:40:00.000Z',
       isRecordingTimeKnown: true,
       wormAmplitudeArcsec: 7.35,
+      wormAmplitudeStderrArcsec: null,
       peakToPeakArcsec: 16.02,
+      peakToPeakStderrArcsec: null,
       wormPeriodSeconds: 567.28,
     }
     const sentence = findingText(

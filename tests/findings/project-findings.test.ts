@@ -1,9 +1,14 @@
 import { describe, expect, test } from 'vitest'
 import { driveFinding } from '@/lib/findings/drive-finding'
 import { findingText } from '@/lib/findings/finding'
-import { analysesFinding, correctionsFinding, projectsFinding, runsFinding } from '@/lib/findings/list-findings'
+import {
+  analysesFinding,
+  auditFinding,
+  correctionsFinding,
+  projectsFinding,
+  runsFinding,
+} from '@/lib/findings/list-findings'
 import { historyFinding, overviewFinding } from '@/lib/findings/overview-finding'
-import { projectHistory } from '@/lib/findings/project-history'
 import { closureFinding, tableFinding } from '@/lib/findings/table-finding'
 
 // The wheel of the demo: 86164.0905 s / 152 = 566.8690 s (sidereal day after Aoki et al. 1982, A&A 105, 359).
@@ -15,41 +20,28 @@ test('driveFinding states the worm period of the teeth', () => {
   expect(findingText(driveFinding({ ...hillside, wheelTeeth: null }))).toContain('not known yet')
 })
 
-const analysis = (id: string, runId: string, createdAt: string, peakToPeakArcsec: number | null) => ({
-  id,
-  name: id,
-  runId,
-  runName: `run ${runId}`,
-  createdAt,
-  updatedAt: createdAt,
-  wormPeriodSeconds: 566.9,
-  wormAmplitudeArcsec: peakToPeakArcsec === null ? null : peakToPeakArcsec / 2,
+const point = (id: string, at: string, peakToPeakArcsec: number, peakToPeakStderrArcsec: number | null = null) => ({
+  analysisId: id,
+  runId: id,
+  runName: `run ${id}`,
+  analysisName: id,
+  at,
+  isRecordingTimeKnown: true,
+  wormAmplitudeArcsec: peakToPeakArcsec / 2,
+  wormAmplitudeStderrArcsec: null,
   peakToPeakArcsec,
+  peakToPeakStderrArcsec,
+  wormPeriodSeconds: 566.9,
 })
-const run = (id: string, startedAt: string | null) => ({ id, createdAt: '2026-12-01T00:00:00Z', facts: { startedAt } })
 
-describe('projectHistory', () => {
-  const analyses = [
-    analysis('late', 'b', '2026-11-30T10:00:00Z', 15),
-    analysis('old', 'a', '2026-11-20T10:00:00Z', 20),
-    analysis('new', 'a', '2026-11-21T10:00:00Z', 16),
-    analysis('none', 'c', '2026-11-22T10:00:00Z', null),
-  ]
-  const runs = [run('b', '2026-11-14T23:00:00+02:00'), run('a', '2026-11-14T20:00:00Z'), run('c', null)]
-
-  test('takes the newest analysis of each run, in the order of recording, and skips runs without a figure', () => {
-    expect(projectHistory(analyses, runs).map(({ analysisId }) => analysisId)).toEqual(['new', 'late'])
-  })
-
-  test('a run whose start nobody noted stands where it was brought in, and says so', () => {
-    const [, last] = projectHistory(analyses.slice(0, 2), [runs[0], run('a', null)])
-    expect(last).toMatchObject({ runId: 'a', at: '2026-12-01T00:00:00Z', isRecordingTimeKnown: false })
-  })
+describe('the history', () => {
+  const history = [point('new', '2026-11-14T20:00:00Z', 16, 0.13), point('late', '2026-11-14T21:00:00Z', 15)]
 
   test('historyFinding states both ends', () => {
-    expect(findingText(historyFinding(projectHistory(analyses, runs)))).toBe(
-      'From the first to the last of two analysed runs the peak-to-peak went from 16.0″ to 15.0″.',
+    expect(findingText(historyFinding(history))).toBe(
+      'From the first to the last of two analysed runs the peak-to-peak went from 16.00 ± 0.13″ to 15.0″.',
     )
+    expect(findingText(historyFinding(history, 310))).toContain('the latest 2 of 310 analysed runs')
     expect(findingText(historyFinding([]))).toContain('no history yet')
   })
 
@@ -59,7 +51,6 @@ describe('projectHistory', () => {
     expect(findingText(overviewFinding({ ...state, runCount: 1 }))).toBe(
       'One run of Hillside waits for a first analysis',
     )
-    const history = projectHistory(analyses, runs)
     const latest = {
       worm: {
         periodSeconds: { value: 567.28, stderr: 0.27 },
@@ -76,31 +67,51 @@ describe('projectHistory', () => {
 })
 
 describe('sentences over lists', () => {
+  const noRuns = { unread: 0, withoutAnalysis: 0, assumedSense: 0 }
+  const noSwing = { leastPeakToPeakArcsec: null, mostPeakToPeakArcsec: null }
+
   test('empty lists say so', () => {
-    const findings = [projectsFinding([]), runsFinding([]), analysesFinding([]), correctionsFinding([])]
-    for (const finding of findings) expect(findingText(finding)).toMatch(/^No .* yet$/)
+    const findings = [
+      projectsFinding({ all: 0, overview: { archived: 0, lastChangedName: null } }),
+      runsFinding({ all: 0, overview: noRuns }),
+      analysesFinding({ all: 0, overview: noSwing }),
+      correctionsFinding({ all: 0, overview: { assumedSense: 0 } }),
+      auditFinding({ all: 0 }),
+    ]
+    for (const finding of findings) expect(findingText(finding)).toMatch(/^No.* yet$/)
+  })
+
+  test('projectsFinding tells of archived ones', () => {
+    const text = (all: number, archived: number) =>
+      findingText(projectsFinding({ all, overview: { archived, lastChangedName: 'Hillside' } }))
+    expect(text(1, 0)).toBe('You work on one mount, Hillside')
+    expect(text(1, 1)).toBe('You work on one mount, Hillside, which is archived')
+    expect(text(3, 0)).toBe('You work on three mounts; Hillside changed last')
+    expect(text(3, 2)).toBe('You work on three mounts, two of them archived; Hillside changed last')
   })
 
   test('runsFinding counts what is left to do', () => {
-    const done = { status: 'ready' as const, analysisCount: 1, conversion: { senseBasis: 'proven' as const } }
-    expect(findingText(runsFinding([done, done]))).toBe('Two runs, all read and analysed')
-    const unread = { status: 'uploaded' as const, analysisCount: 0, conversion: null }
-    const assumed = { status: 'ready' as const, analysisCount: 0, conversion: { senseBasis: 'assumed' as const } }
-    expect(findingText(runsFinding([done, unread, assumed]))).toBe(
-      'Three runs, one not read yet, one without an analysis, one with the sense only assumed',
+    expect(findingText(runsFinding({ all: 2, overview: noRuns }))).toBe('Two runs, all read and analysed')
+    const overview = { unread: 1, withoutAnalysis: 1, assumedSense: 14 }
+    expect(findingText(runsFinding({ all: 30, overview }))).toBe(
+      '30 runs, one not read yet, one without an analysis, 14 with the sense only assumed',
     )
   })
 
   test('analysesFinding gives the range of the swing', () => {
-    const list = [analysis('x', 'a', '2026-11-20T10:00:00Z', 16), analysis('y', 'b', '2026-11-20T10:00:00Z', 14.6)]
-    expect(findingText(analysesFinding(list))).toBe('Two analyses: the worm’s swing lies between 14.6″ and 16.0″')
+    const text = (least: number | null, most: number | null) =>
+      findingText(analysesFinding({ all: 2, overview: { leastPeakToPeakArcsec: least, mostPeakToPeakArcsec: most } }))
+    expect(text(14.6, 16)).toBe('Two analyses: the worm’s swing lies between 14.6″ and 16.0″')
+    expect(text(16, 16)).toBe('Two analyses: the worm swings the axis by 16.0″')
+    expect(text(null, null)).toBe('Two analyses, none with a figure for the worm')
   })
 
   test('correctionsFinding tells how many rest on an assumed sense', () => {
-    const table = (senseBasis: 'proven' | 'assumed') => ({ name: 't', createdAt: '2026-11-20T10:00:00Z', senseBasis })
-    expect(findingText(correctionsFinding([table('proven')]))).toContain('proven')
-    expect(findingText(correctionsFinding([table('proven'), table('assumed')]))).toContain('one of them')
-    expect(findingText(correctionsFinding([table('assumed'), table('assumed')]))).toContain('only assumed')
+    const text = (all: number, assumedSense: number) =>
+      findingText(correctionsFinding({ all, overview: { assumedSense } }))
+    expect(text(1, 0)).toContain('proven')
+    expect(text(2, 1)).toContain('one of them')
+    expect(text(2, 2)).toContain('only assumed')
   })
 })
 

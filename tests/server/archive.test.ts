@@ -13,6 +13,7 @@ import { GET as listEvents } from '@/app/api/projects/[projectId]/audit-events/r
 import { GET as listPresets } from '@/app/api/projects/[projectId]/optics-presets/route'
 import { GET as listRuns } from '@/app/api/projects/[projectId]/runs/route'
 import { GET as getColumns } from '@/app/api/projects/[projectId]/runs/[runId]/columns/route'
+import { GET as getRun } from '@/app/api/projects/[projectId]/runs/[runId]/route'
 import { GET as getFile } from '@/app/api/projects/[projectId]/runs/[runId]/file/route'
 import { seedDemo } from '@/db/seed-demo'
 import { makeNastyProject } from '../support/nasty-project'
@@ -48,15 +49,17 @@ function withoutIds(value: unknown): unknown {
 
 /** Everything that the API answers of a project, in the order in which it lists it. */
 async function everything(projectId: string, cookie: string) {
-  const ask = async (handler: unknown, params: Record<string, string> = {}) => {
-    const response = await call(handler, '/?limit=200', { projectId, ...params }, { cookie })
+  const ask = async (handler: unknown, params: Record<string, string> = {}, query = '') => {
+    const response = await call(handler, `/?limit=200${query}`, { projectId, ...params }, { cookie })
     expect(response.status).toBe(200)
     return response
   }
-  const json = async (handler: unknown, params?: Record<string, string>) => (await ask(handler, params)).json()
+  const json = async (handler: unknown, params?: Record<string, string>, query?: string) =>
+    (await ask(handler, params, query)).json()
   const hashOf = async (handler: unknown, params: Record<string, string>) =>
     sha256(new Uint8Array(await (await ask(handler, params)).arrayBuffer()))
-  const { runs } = await json(listRuns)
+  const { runs: listed } = await json(listRuns, {}, '&sort=created')
+  const runs = await Promise.all(listed.map(({ id: runId }: { id: string }) => json(getRun, { runId })))
   const { analyses } = await json(listAnalyses)
   const { corrections } = await json(listCorrections)
   const { events } = await json(listEvents)

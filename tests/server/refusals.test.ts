@@ -11,6 +11,7 @@ import * as invitations from '@/app/api/projects/[projectId]/invitations/route'
 import * as invitation from '@/app/api/projects/[projectId]/invitations/[invitationId]/route'
 import * as resend from '@/app/api/projects/[projectId]/invitations/[invitationId]/resend/route'
 import * as auditEvents from '@/app/api/projects/[projectId]/audit-events/route'
+import * as history from '@/app/api/projects/[projectId]/history/route'
 import * as presets from '@/app/api/projects/[projectId]/optics-presets/route'
 import * as preset from '@/app/api/projects/[projectId]/optics-presets/[presetId]/route'
 import * as runs from '@/app/api/projects/[projectId]/runs/route'
@@ -173,6 +174,7 @@ const cases: [string, Case][] = [
   ['DELETE invitations/…', { method: 'DELETE', module: invitation, may: MANAGE, status: 204, fresh: 'invitationId' }],
   ['POST invitations/…/resend', { method: 'POST', module: resend, may: MANAGE, status: 200, fresh: 'invitationId' }],
   ['GET audit-events', { method: 'GET', module: auditEvents, may: READ, status: 200 }],
+  ['GET history', { method: 'GET', module: history, may: READ, status: 200 }],
   ['GET optics-presets', { method: 'GET', module: presets, may: READ, status: 200 }],
   ['POST optics-presets', { method: 'POST', module: presets, may: EDIT, status: 201, body: () => OPTICS }],
   [
@@ -391,5 +393,6 @@ test('projects are listed to their members, and made by whoever is signed in', a
   const list = async () => (await (await call(projects.GET, '/', {}, newcomer)).json()).projects
   expect(await list()).toEqual([])
   const made = await call(projects.POST, '/', {}, { method: 'POST', body, cookie: newcomer.cookie })
-  expect(await list()).toEqual([await made.json()])
+  const { id, name } = await made.json()
+  expect(await list()).toEqual([expect.objectContaining({ id, name, role: 'owner', runCount: 0, memberCount: 1 })])
 })

@@ -348,7 +348,7 @@ test('the list is paged newest first, without a gap or a repetition', async () =
   const seen: string[] = []
   let cursor: string | null = ''
   while (cursor !== null) {
-    const query: string = `/?limit=2${cursor && `&cursor=${cursor}`}`
+    const query: string = `/?sort=created&limit=2${cursor && `&cursor=${cursor}`}`
     const page = await (await call(runs.GET, query, { projectId: listed }, where)).json()
     seen.push(...page.runs.map(({ id }: { id: string }) => id))
     cursor = page.nextCursor

@@ -1,15 +1,16 @@
 import { database } from '@/db'
 import { insertAuditEvent } from '@/db/queries/audit'
 import { findProject, insertProject } from '@/db/queries/projects'
-import { newProjectSchema, projectListSchema, projectSchema } from '@/lib/schemas/api'
+import { newProjectSchema, projectSchema } from '@/lib/schemas/api'
+import { projectListSchema, projectQuerySchema } from '@/lib/schemas/lists'
 import { requireUser } from '@/lib/server/auth'
 import { loadProjects } from '@/lib/server/load-projects'
-import { answer, readJson, respond, respondToMutation } from '@/lib/server/respond'
+import { answer, queryOf, readJson, respond, respondToMutation } from '@/lib/server/respond'
 
 export function GET(request: Request) {
   return respond(async () => {
     const user = await requireUser(request)
-    return answer(projectListSchema, { projects: await loadProjects(user.id) })
+    return answer(projectListSchema, await loadProjects(user.id, queryOf(request, projectQuerySchema)))
   })
 }
 

@@ -1,31 +1,24 @@
 import { OverviewScreen } from '@/components/projects/overview-screen'
 import { SwrFallback } from '@/components/shell/swr-fallback'
-import { projectHistory } from '@/lib/findings/project-history'
+import { LATEST_RUNS, latestRunsKey } from '@/lib/client/list-keys'
 import { requireProjectPage } from '@/lib/server/current-user'
-import { loadAnalyses, loadAnalysis } from '@/lib/server/load-analyses'
+import { loadAnalysis, loadHistory } from '@/lib/server/load-analyses'
 import { loadMembers } from '@/lib/server/load-projects'
 import { loadRuns } from '@/lib/server/load-runs'
-import { everyPage } from './every-page'
 
 export default async function OverviewPage({ params }: PageProps<'/projects/[projectId]'>) {
   const { projectId } = await params
   const { access } = await requireProjectPage(projectId)
-  const [runs, analyses, members] = await Promise.all([
-    everyPage(
-      (page) => loadRuns(access, page),
-      (page) => page.runs,
-    ),
-    everyPage(
-      (page) => loadAnalyses(access, page),
-      (page) => page.analyses,
-    ),
+  const [runs, history, members] = await Promise.all([
+    loadRuns(access, LATEST_RUNS),
+    loadHistory(access),
     loadMembers(access),
   ])
   const base = `/api/projects/${projectId}`
-  const last = runs && analyses ? projectHistory(analyses, runs).at(-1) : undefined
+  const last = history.points.at(-1)
   const fallback = {
-    [`${base}/runs`]: runs,
-    [`${base}/analyses`]: analyses,
+    [latestRunsKey(projectId)]: runs,
+    [`${base}/history`]: history,
     [`${base}/members`]: { members },
     ...(last ? { [`${base}/analyses/${last.analysisId}`]: await loadAnalysis(access, last.analysisId) } : {}),
   }

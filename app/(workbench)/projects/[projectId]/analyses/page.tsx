@@ -1,21 +1,20 @@
 import type { Metadata } from 'next'
 import { AnalysesScreen } from '@/components/lists/analyses-screen'
 import { SwrFallback } from '@/components/shell/swr-fallback'
+import { lenientQuery, listSearch, analysisQuerySchema } from '@/lib/schemas/lists'
 import { requireProjectPage } from '@/lib/server/current-user'
+import { firstView } from '@/lib/server/first-view'
 import { loadAnalyses } from '@/lib/server/load-analyses'
-import { everyPage } from '../every-page'
 
 export const metadata: Metadata = { title: 'Analyses' }
 
-export default async function AnalysesPage({ params }: PageProps<'/projects/[projectId]/analyses'>) {
+export default async function AnalysesPage({ params, searchParams }: PageProps<'/projects/[projectId]/analyses'>) {
   const { projectId } = await params
   const { access } = await requireProjectPage(projectId, `/projects/${projectId}/analyses`)
-  const analyses = await everyPage(
-    (page) => loadAnalyses(access, page),
-    (page) => page.analyses,
-  )
+  const query = lenientQuery(analysisQuerySchema, await searchParams)
+  const list = await firstView(loadAnalyses(access, query))
   return (
-    <SwrFallback fallback={{ [`/api/projects/${projectId}/analyses`]: analyses }}>
+    <SwrFallback fallback={{ [`/api/projects/${projectId}/analyses${listSearch(analysisQuerySchema, query)}`]: list }}>
       <AnalysesScreen projectId={projectId} />
     </SwrFallback>
   )

@@ -1,21 +1,20 @@
 import type { Metadata } from 'next'
 import { RunsScreen } from '@/components/lists/runs-screen'
 import { SwrFallback } from '@/components/shell/swr-fallback'
+import { lenientQuery, listSearch, runQuerySchema } from '@/lib/schemas/lists'
 import { requireProjectPage } from '@/lib/server/current-user'
+import { firstView } from '@/lib/server/first-view'
 import { loadRuns } from '@/lib/server/load-runs'
-import { everyPage } from '../every-page'
 
 export const metadata: Metadata = { title: 'Runs' }
 
-export default async function RunsPage({ params }: PageProps<'/projects/[projectId]/runs'>) {
+export default async function RunsPage({ params, searchParams }: PageProps<'/projects/[projectId]/runs'>) {
   const { projectId } = await params
   const { access } = await requireProjectPage(projectId, `/projects/${projectId}/runs`)
-  const runs = await everyPage(
-    (page) => loadRuns(access, page),
-    (page) => page.runs,
-  )
+  const query = lenientQuery(runQuerySchema, await searchParams)
+  const list = await firstView(loadRuns(access, query))
   return (
-    <SwrFallback fallback={{ [`/api/projects/${projectId}/runs`]: runs }}>
+    <SwrFallback fallback={{ [`/api/projects/${projectId}/runs${listSearch(runQuerySchema, query)}`]: list }}>
       <RunsScreen projectId={projectId} />
     </SwrFallback>
   )

@@ -1,9 +1,9 @@
-import { auditEventListSchema } from '@/lib/schemas/api'
+import { auditEventListSchema, auditQuerySchema } from '@/lib/schemas/lists'
 import { loadAuditEvents } from '@/lib/server/load-projects'
-import { answer, pageOf, respondInProject, type RouteContext } from '@/lib/server/respond'
+import { answer, queryOf, respondInProject, type RouteContext } from '@/lib/server/respond'
 
 export function GET(request: Request, context: RouteContext<'projectId'>) {
   return respondInProject({ request, context, right: 'read' }, async ({ access }) =>
-    answer(auditEventListSchema, await loadAuditEvents(access, pageOf(request))),
+    answer(auditEventListSchema, await loadAuditEvents(access, queryOf(request, auditQuerySchema))),
   )
 }

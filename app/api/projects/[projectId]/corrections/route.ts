@@ -1,13 +1,14 @@
-import { correctionListSchema, correctionSchema, newCorrectionSchema } from '@/lib/schemas/api'
+import { correctionSchema, newCorrectionSchema } from '@/lib/schemas/api'
+import { correctionListSchema, correctionQuerySchema } from '@/lib/schemas/lists'
 import { loadCorrections } from '@/lib/server/load-analyses'
 import { makeCorrection } from '@/lib/server/make-correction'
-import { answer, pageOf, readJson, respondInProject, type RouteContext } from '@/lib/server/respond'
+import { answer, queryOf, readJson, respondInProject, type RouteContext } from '@/lib/server/respond'
 
 type Context = RouteContext<'projectId'>
 
 export function GET(request: Request, context: Context) {
   return respondInProject({ request, context, right: 'read' }, async ({ access }) =>
-    answer(correctionListSchema, await loadCorrections(access, pageOf(request))),
+    answer(correctionListSchema, await loadCorrections(access, queryOf(request, correctionQuerySchema))),
   )
 }
 

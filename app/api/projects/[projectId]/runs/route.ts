@@ -1,13 +1,14 @@
-import { runListSchema, runSchema } from '@/lib/schemas/api'
+import { runSchema } from '@/lib/schemas/api'
+import { runListSchema, runQuerySchema } from '@/lib/schemas/lists'
 import { loadRuns } from '@/lib/server/load-runs'
-import { answer, pageOf, respondInProject, type RouteContext } from '@/lib/server/respond'
+import { answer, queryOf, respondInProject, type RouteContext } from '@/lib/server/respond'
 import { uploadRun } from '@/lib/server/upload-run'
 
 type Context = RouteContext<'projectId'>
 
 export function GET(request: Request, context: Context) {
   return respondInProject({ request, context, right: 'read' }, async ({ access }) =>
-    answer(runListSchema, await loadRuns(access, pageOf(request))),
+    answer(runListSchema, await loadRuns(access, queryOf(request, runQuerySchema))),
   )
 }
 
