@@ -53,8 +53,11 @@ test('an owner invites an editor without and a viewer with an account, who join 
   const bench = new BenchPage(editorPage)
   await bench.choose(visitorRecording().file)
   await bench.measuredOnTheAxis()
+  const stored = editorPage.waitForResponse((response) => response.url().endsWith('/import'), { timeout: 45_000 })
   await editorPage.getByRole('button', { name: 'Store this run' }).click()
-  await expect(editorPage).toHaveURL(/\/runs\/[0-9a-f-]{36}/, { timeout: 45_000 })
+  expect((await stored).status()).toBe(200)
+  await editorPage.goto(`${owner.project.address}/runs`)
+  await expect(editorPage.getByRole('link', { name: 'visitor-run' })).toBeVisible()
 
   const viewerPage = await freshPage(browser)
   await viewerPage.goto(await owner.linkFor(viewer.email))

@@ -88,6 +88,7 @@ const screens: Screen[] = [
     },
   },
   visit('not-found', '/no-such-page'),
+  visit('invitation that opens nothing', '/invite/no-such-link'),
   visit('bench intake', '/bench'),
   {
     name: 'column mapper',
