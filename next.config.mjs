@@ -21,6 +21,7 @@ const nextConfig = {
     { source: '/share/:path*', headers: SECRET_LINK_HEADERS },
     { source: '/api/share/:path*', headers: SECRET_LINK_HEADERS },
     { source: '/invite/:path*', headers: SECRET_LINK_HEADERS },
+    { source: '/(verify-email|reset-password)', headers: SECRET_LINK_HEADERS },
   ],
   reactStrictMode: true,
   serverExternalPackages: ['@node-rs/argon2', 'pg'],

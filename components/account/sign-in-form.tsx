@@ -1,6 +1,7 @@
 'use client'
 
 import { zodResolver } from '@hookform/resolvers/zod'
+import Link from 'next/link'
 import { useState } from 'react'
 import { useForm } from 'react-hook-form'
 import type { z } from 'zod'
@@ -44,10 +45,13 @@ export function SignInForm({ next }: { next: string }) {
           {fault}
         </Notice>
       ) : null}
-      <div>
+      <div className="flex flex-wrap items-center gap-x-4 gap-y-2">
         <Button type="submit" variant="primary" disabled={formState.isSubmitting}>
           Sign in
         </Button>
+        <Link className="link" href="/reset-password">
+          Forgot the password?
+        </Link>
       </div>
     </form>
   )

@@ -1,4 +1,4 @@
-import { sql, type Kysely } from 'kysely'
+import { sql, type Kysely, type Transaction } from 'kysely'
 import { DEFAULT_PREFERENCES, type Preferences, type PreferencesChange } from '@/lib/schemas/preferences'
 import type { Database } from '../schema'
 
@@ -50,4 +50,58 @@ export function updatePreferences(
     .where('id', '=', userId)
     .returning(['theme', 'swingMeasure', 'displacementUnit', 'timeZone'])
     .executeTakeFirst()
+}
+
+/** For asking for the password again; undefined for a deleted account. */
+export async function findPasswordHash(db: Kysely<Database>, userId: string): Promise<string | undefined> {
+  const row = await db.selectFrom('users').select('passwordHash').where('id', '=', userId).executeTakeFirst()
+  return row?.passwordHash ?? undefined
+}
+
+export async function updateDisplayName(db: Kysely<Database>, userId: string, displayName: string): Promise<void> {
+  await db.updateTable('users').set({ displayName }).where('id', '=', userId).where('deletedAt', 'is', null).execute()
+}
+
+/** False for an account that was deleted meanwhile. */
+export async function updatePasswordHash(db: Kysely<Database>, userId: string, passwordHash: string): Promise<boolean> {
+  const row = await db
+    .updateTable('users')
+    .set({ passwordHash })
+    .where('id', '=', userId)
+    .where('deletedAt', 'is', null)
+    .returning('id')
+    .executeTakeFirst()
+  return row !== undefined
+}
+
+/**
+ * Gives an account a proven address. Its answer is the one it had, or undefined when the new one belongs to another account
+ * (in whatever case) or this account is gone.
+ */
+export async function updateEmail(
+  trx: Transaction<Database>,
+  userId: string,
+  email: string,
+): Promise<string | undefined> {
+  const before = await trx
+    .selectFrom('users')
+    .select(sql<string>`email`.as('email'))
+    .where('id', '=', userId)
+    .where('deletedAt', 'is', null)
+    .forUpdate()
+    .executeTakeFirst()
+  if (!before) return undefined
+  const other = await trx
+    .selectFrom('users')
+    .select('id')
+    .where(sql<string>`lower(email)`, '=', email.toLowerCase())
+    .where('id', '<>', userId)
+    .executeTakeFirst()
+  if (other) return undefined
+  await trx
+    .updateTable('users')
+    .set({ email, emailVerifiedAt: sql<Date>`now()` })
+    .where('id', '=', userId)
+    .execute()
+  return before.email
 }

@@ -67,7 +67,7 @@ export function sendBytes<Schema extends z.ZodType>(
   return ask(url, { method: 'POST', headers: { 'content-type': 'application/octet-stream' }, body: bytes }, schema)
 }
 
-/** For requests that answer nothing (204). */
+/** For requests that answer nothing (204), with a body as JSON or without one. */
 export async function sendOnly(method: 'POST' | 'DELETE', url: string, body?: unknown): Promise<void> {
   const json = { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body) }
   const response = await reach(url, { method, ...(body === undefined ? {} : json) })

@@ -36,7 +36,7 @@ export const errorAnswerSchema = z.object({
 
 // Accounts ------------------------------------------------------------------------------------------------------------
 
-/** POST /api/auth/sign-up → 201 meSchema; 422 with fields.email where the address is taken. */
+/** What a new account needs; lib/schemas/accounts.ts holds what is asked and answered about accounts. */
 export const signUpSchema = z.object({
   displayName: z.string().trim().min(1, { error: 'Tell us what to call you' }).max(80),
   email: z.email({ error: 'This is not an e-mail address' }).max(254),

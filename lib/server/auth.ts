@@ -1,7 +1,8 @@
 import 'server-only'
 import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql'
 import { Lucia, TimeSpan } from 'lucia'
-import { databasePool } from '@/db'
+import { database, databasePool } from '@/db'
+import { touchSession } from '@/db/queries/sessions'
 import { newToken, sha256Of } from '@/db/tokens'
 import type { DisplacementUnit, Preferences, SwingMeasure, ThemeName } from '@/lib/schemas/preferences'
 import { environment } from './environment'
@@ -18,7 +19,7 @@ declare module 'lucia' {
       displacement_unit: DisplacementUnit
       time_zone: string | null
     }
-    DatabaseSessionAttributes: { user_agent: string | null }
+    DatabaseSessionAttributes: { user_agent: string | null; last_seen_at: Date }
   }
 }
 
@@ -31,6 +32,14 @@ export interface SignedInUser {
 
 export const SESSION_COOKIE = 'turnwright_session'
 
+/** Attributes of every cookie of ours that opens something. */
+export function cookieAttributes() {
+  return { sameSite: 'lax', path: '/', secure: environment().baseOrigin?.startsWith('https:') ?? false } as const
+}
+
+/** A session that is used is noted at most this often, so that reading pages does not write each time. */
+const SEEN_EVERY_MS = 5 * 60_000
+
 /**
  * The cookie has no expiry of its own that matters (`expires: false`): Lucia extends the row even while a page renders,
  * where no cookie can be set, so a cookie that ran out would sign active people out.
@@ -42,8 +51,9 @@ function createLucia() {
     sessionCookie: {
       name: SESSION_COOKIE,
       expires: false,
-      attributes: { sameSite: 'lax', path: '/', secure: environment().baseOrigin?.startsWith('https:') ?? false },
+      attributes: cookieAttributes(),
     },
+    getSessionAttributes: ({ last_seen_at }) => ({ lastSeenAt: last_seen_at }),
     getUserAttributes: ({ display_name, email, theme, swing_measure, displacement_unit, time_zone }) => ({
       displayName: display_name,
       email,
@@ -67,12 +77,19 @@ function lucia() {
 /** The person whose session this token opens, or null. */
 export async function validateToken(token: string | null | undefined): Promise<SignedInUser | null> {
   if (!token) return null
-  const { user } = await lucia().validateSession(sha256Of(token))
+  const { user, session } = await lucia().validateSession(sha256Of(token))
+  if (session && Date.now() - session.lastSeenAt.getTime() > SEEN_EVERY_MS) await touchSession(database(), session.id)
   return user && { id: user.id, displayName: user.displayName, email: user.email, preferences: user.preferences }
 }
 
 function tokenOf(request: Request): string | null {
   return lucia().readSessionCookie(request.headers.get('cookie') ?? '')
+}
+
+/** The key of the session that a request carries, or claims to carry; null without one. */
+export function sessionIdOf(request: Request): string | null {
+  const token = tokenOf(request)
+  return token ? sha256Of(token) : null
 }
 
 export function validateRequest(request: Request): Promise<SignedInUser | null> {
@@ -91,7 +108,7 @@ export async function openSession(request: Request, userId: string): Promise<str
   const token = newToken()
   await lucia().deleteExpiredSessions()
   const userAgent = request.headers.get('user-agent')?.slice(0, 300) ?? null
-  await lucia().createSession(userId, { user_agent: userAgent }, { sessionId: sha256Of(token) })
+  await lucia().createSession(userId, { user_agent: userAgent, last_seen_at: new Date() }, { sessionId: sha256Of(token) })
   return lucia().createSessionCookie(token).serialize()
 }
 

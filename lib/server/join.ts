@@ -3,26 +3,16 @@ import type { z } from 'zod'
 import { database } from '@/db'
 import { insertAccountEvent } from '@/db/queries/audit'
 import { acceptInvitation, findInvitationLink, lockInvitation, openInvitation } from '@/db/queries/invitation-links'
-import { returnAttempt } from '@/db/queries/rate-limits'
 import { insertUser } from '@/db/queries/users'
 import { sha256Of } from '@/db/tokens'
 import type { invitationSignUpSchema } from '@/lib/schemas/people'
 import { AppError } from './errors'
 import { hashPassword } from './passwords'
-import { addressLimit, takeAttempt } from './rate-limit'
-
-/** Counts what is tried with tokens before it is looked at; what worked was no guess and is taken back. */
-async function unlessGuessing<T>(request: Request, work: () => Promise<T>): Promise<T> {
-  const limit = addressLimit('invitation link address', request)
-  await takeAttempt(limit)
-  const done = await work()
-  await returnAttempt(database(), limit.key)
-  return done
-}
+import { addressLimit, unlessGuessing } from './rate-limit'
 
 /** Takes the invitation for a person who is signed in, with whichever address: it is the holder's link. */
 export function joinWithLink(request: Request, userId: string, token: string) {
-  return unlessGuessing(request, () =>
+  return unlessGuessing(addressLimit('invitation link address', request), () =>
     database()
       .transaction()
       .execute(async (trx) => acceptInvitation(trx, await lockInvitation(trx, sha256Of(token)), userId)),
@@ -33,7 +23,7 @@ export function joinWithLink(request: Request, userId: string, token: string) {
 export function signUpWithLink(request: Request, form: z.output<typeof invitationSignUpSchema>) {
   const { token, displayName, password } = form
   const tokenSha256 = sha256Of(token)
-  return unlessGuessing(request, async () => {
+  return unlessGuessing(addressLimit('invitation link address', request), async () => {
     openInvitation(await findInvitationLink(database(), tokenSha256))
     const passwordHash = await hashPassword(password)
     return database()

@@ -1,7 +1,7 @@
 import 'server-only'
 import { createHash } from 'node:crypto'
 import { database } from '@/db'
-import { countAttempt, type Limit } from '@/db/queries/rate-limits'
+import { countAttempt, returnAttempt, type Limit } from '@/db/queries/rate-limits'
 import { askerOf } from './client-address'
 import { AppError } from './errors'
 
@@ -10,9 +10,17 @@ const HOUR = 3600
 
 /** How often within how many seconds. Addresses that can't be told apart share one count, so it is larger. */
 const LIMITS = {
-  'sign-in account': { most: 10, windowSeconds: QUARTER_HOUR },
+  'sign-in account': { most: 5, windowSeconds: QUARTER_HOUR },
   'sign-in address': { most: 50, windowSeconds: QUARTER_HOUR },
+  'sign-up account': { most: 5, windowSeconds: HOUR },
   'sign-up address': { most: 20, windowSeconds: HOUR },
+  'reset account': { most: 5, windowSeconds: HOUR },
+  'reset address': { most: 20, windowSeconds: HOUR },
+  'change-email account': { most: 5, windowSeconds: HOUR },
+  'change-email address': { most: 20, windowSeconds: HOUR },
+  'password account': { most: 5, windowSeconds: QUARTER_HOUR },
+  'mail link account': { most: 5, windowSeconds: QUARTER_HOUR },
+  'mail link address': { most: 30, windowSeconds: QUARTER_HOUR },
   'invite account': { most: 40, windowSeconds: HOUR },
   'invite address': { most: 80, windowSeconds: HOUR },
   'invite project': { most: 60, windowSeconds: HOUR },
@@ -47,15 +55,30 @@ export function accountLimit(name: LimitName, account: string): Limit {
   return limitOf(name, account.toLowerCase())
 }
 
-function tooMany(secondsLeft: number): AppError {
+function tooMany(secondsLeft: number, remedy: string): AppError {
   const minutes = Math.max(1, Math.ceil(secondsLeft / 60))
-  return new AppError('too-many-attempts', `Too many attempts. Try again in ${minutes} min.`, {
+  return new AppError('too-many-attempts', `Too many attempts. Try again in ${minutes} min${remedy}.`, {
     retryAfterSeconds: secondsLeft,
   })
 }
 
-/** Counts an attempt and refuses the ones past the limit. */
-export async function takeAttempt(limit: Limit): Promise<void> {
+/**
+ * Counts an attempt and refuses the ones past the limit.
+ *
+ * @param remedy what can be done instead of waiting, as the end of a sentence: “, or …”
+ */
+export async function takeAttempt(limit: Limit, remedy = ''): Promise<void> {
   const { isOver, secondsLeft } = await countAttempt(database(), limit)
-  if (isOver) throw tooMany(secondsLeft)
+  if (isOver) throw tooMany(secondsLeft, remedy)
+}
+
+/**
+ * Counts what is tried before it is looked at, so that guesses made at once find the limit too; what worked was no guess
+ * and is taken back.
+ */
+export async function unlessGuessing<T>(limit: Limit, work: () => Promise<T>, remedy?: string): Promise<T> {
+  await takeAttempt(limit, remedy)
+  const done = await work()
+  await returnAttempt(database(), limit.key)
+  return done
 }

@@ -3,31 +3,12 @@ import type { z } from 'zod'
 import { database } from '@/db'
 import { insertAccountEvent } from '@/db/queries/audit'
 import { deleteExpiredLimits, forgetAttempts, returnAttempt } from '@/db/queries/rate-limits'
-import { findPreferences, findUserForSignIn, insertUser } from '@/db/queries/users'
-import type { signInSchema, signUpSchema } from '@/lib/schemas/api'
-import { DEFAULT_PREFERENCES } from '@/lib/schemas/preferences'
+import { findPreferences, findUserForSignIn } from '@/db/queries/users'
+import type { signInSchema } from '@/lib/schemas/api'
 import type { SignedInUser } from './auth'
 import { AppError } from './errors'
-import { hashPassword, isPasswordRight } from './passwords'
+import { isPasswordRight } from './passwords'
 import { accountLimit, addressLimit, takeAttempt } from './rate-limit'
-
-/** Makes an account. @throws {AppError} not-valid with fields.email when the address has one */
-export async function signUp(request: Request, form: z.output<typeof signUpSchema>): Promise<SignedInUser> {
-  await takeAttempt(addressLimit('sign-up address', request))
-  const passwordHash = await hashPassword(form.password)
-  const { displayName, email } = form
-  return database()
-    .transaction()
-    .execute(async (trx) => {
-      const user = await insertUser(trx, { displayName, email, passwordHash })
-      if (!user) {
-        const taken = 'There is an account with this address already. Sign in instead.'
-        throw new AppError('not-valid', taken, { fields: { email: taken } })
-      }
-      await insertAccountEvent(trx, user.id, { action: 'account.sign-up', subject: email })
-      return { ...user, preferences: DEFAULT_PREFERENCES }
-    })
-}
 
 /**
  * Only failures count towards the limits; an attempt is counted before the password is looked at, so that guesses made at
@@ -36,7 +17,7 @@ export async function signUp(request: Request, form: z.output<typeof signUpSchem
 export async function signIn(request: Request, form: z.output<typeof signInSchema>): Promise<SignedInUser> {
   const ofAccount = accountLimit('sign-in account', form.email)
   const ofAddress = addressLimit('sign-in address', request)
-  await takeAttempt(ofAccount)
+  await takeAttempt(ofAccount, ', or set a new password with a link that we send you')
   await takeAttempt(ofAddress)
   const found = await findUserForSignIn(database(), form.email)
   if (!(await isPasswordRight(found?.passwordHash, form.password)) || !found) {
