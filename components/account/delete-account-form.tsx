@@ -44,7 +44,9 @@ export function DeleteAccountForm({ email, onClose, onBlocked }: DeleteAccountFo
   return (
     <form method="post" noValidate onSubmit={handleSubmit(submit)} className="mt-4 flex flex-col gap-3">
       <Field label={`Type ${email} to confirm`} error={errors.email?.message}>
-        {(control) => <TextInput {...control} type="email" autoComplete="off" {...register('email', { validate: isSame })} />}
+        {(control) => (
+          <TextInput {...control} type="email" autoComplete="off" {...register('email', { validate: isSame })} />
+        )}
       </Field>
       <Field label="Your password" error={errors.password?.message}>
         {(control) => (

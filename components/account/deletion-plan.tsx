@@ -46,13 +46,13 @@ export function DeletionPlan({ plan: { blocking, lost, left } }: { plan: Deletio
       ) : null}
       {left.length > 0 ? (
         <p>
-          {listed(left.map(quoted))} {left.length === 1 ? 'goes' : 'go'} on without you. What you made there stays, under
-          the name “Former member”; the record of who did what keeps your name as it was written.
+          {listed(left.map(quoted))} {left.length === 1 ? 'goes' : 'go'} on without you. What you made there stays,
+          under the name “Former member”; the record of who did what keeps your name as it was written.
         </p>
       ) : null}
       <p>
-        Your address, your password and your sessions are deleted, and invitations of yours that nobody has taken yet are
-        revoked.{lost.length === 0 ? ' No project is lost.' : ''}
+        Your address, your password and your sessions are deleted, and invitations of yours that nobody has taken yet
+        are revoked.{lost.length === 0 ? ' No project is lost.' : ''}
       </p>
     </div>
   )

@@ -9,7 +9,12 @@ export function NewPasswordInput(props: Omit<ComponentProps<typeof TextInput>, '
   const [isShown, setShown] = useState(false)
   return (
     <span className="flex gap-2">
-      <TextInput {...props} type={isShown ? 'text' : 'password'} autoComplete="new-password" className="min-w-0 flex-1" />
+      <TextInput
+        {...props}
+        type={isShown ? 'text' : 'password'}
+        autoComplete="new-password"
+        className="min-w-0 flex-1"
+      />
       <Button onClick={() => setShown(!isShown)}>
         {isShown ? 'Hide' : 'Show'}
         <span className="sr-only"> what is typed</span>

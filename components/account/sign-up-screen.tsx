@@ -25,9 +25,7 @@ export function SignUpScreen({ next }: { next: string }) {
   }
 
   if (isSent && values) {
-    return (
-      <AwaitMail email={values.email} next={next} onAgain={() => send(values)} onOther={() => setSent(false)} />
-    )
+    return <AwaitMail email={values.email} next={next} onAgain={() => send(values)} onOther={() => setSent(false)} />
   }
   return (
     <>

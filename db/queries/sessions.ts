@@ -13,7 +13,13 @@ export async function touchSession(db: Kysely<Database>, sessionId: string): Pro
 export function listSessions(db: Kysely<Database>, { userId, present }: { userId: string; present: string | null }) {
   return db
     .selectFrom('sessions')
-    .select(['publicId as id', 'userAgent', 'createdAt', 'lastSeenAt', sql<boolean>`id is not distinct from ${present}`.as('isThis')])
+    .select([
+      'publicId as id',
+      'userAgent',
+      'createdAt',
+      'lastSeenAt',
+      sql<boolean>`id is not distinct from ${present}`.as('isThis'),
+    ])
     .where('userId', '=', userId)
     .where('expiresAt', '>', sql<Date>`now()`)
     .orderBy('isThis', 'desc')

@@ -108,7 +108,11 @@ export async function openSession(request: Request, userId: string): Promise<str
   const token = newToken()
   await lucia().deleteExpiredSessions()
   const userAgent = request.headers.get('user-agent')?.slice(0, 300) ?? null
-  await lucia().createSession(userId, { user_agent: userAgent, last_seen_at: new Date() }, { sessionId: sha256Of(token) })
+  await lucia().createSession(
+    userId,
+    { user_agent: userAgent, last_seen_at: new Date() },
+    { sessionId: sha256Of(token) },
+  )
   return lucia().createSessionCookie(token).serialize()
 }
 

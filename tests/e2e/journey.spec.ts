@@ -4,6 +4,7 @@ import Papa from 'papaparse'
 import { z } from 'zod'
 import { pixelRecording, semicolonRecording, visitorRecording } from './fixtures/recordings'
 import { BenchPage, firstNumber } from './support/bench-page'
+import { newcomer, signUp } from './support/people'
 
 /** A wheel of 180 teeth: 86164.0905 s of a sidereal day / 180 (Aoki et al. 1982, A&A 105, 359). */
 const WORM_PERIOD_SECONDS = 478.6894
@@ -13,16 +14,9 @@ const writtenTableSchema = z.object({
   bins: z.array(z.object({ bin: z.number(), wormAngle: z.number(), value: z.number() })),
 })
 
-const newcomer = () => ({
-  name: 'Runa Velde',
-  email: `runa.${Date.now()}.${Math.floor(Math.random() * 1e6)}@visitor.example`,
-  password: 'eight quiet turns',
-})
-
 test('a visitor drops a file, signs up, saves, re-opens and takes a correction table away', async ({ page }) => {
   const bench = new BenchPage(page)
   const recording = visitorRecording()
-  const person = newcomer()
 
   await bench.open()
   await bench.drop(recording.file)
@@ -43,10 +37,7 @@ test('a visitor drops a file, signs up, saves, re-opens and takes a correction t
 
   await page.getByRole('button', { name: 'Save analysis' }).click()
   await page.getByRole('link', { name: 'Sign up' }).last().click()
-  await page.getByLabel('Name', { exact: true }).fill(person.name)
-  await page.getByLabel('E-mail').fill(person.email)
-  await page.getByLabel('Password', { exact: true }).fill(person.password)
-  await page.getByRole('button', { name: 'Make an account' }).click()
+  await signUp(page, newcomer())
 
   const dialog = page.getByRole('dialog', { name: 'Save this analysis' })
   await expect(dialog).toBeVisible({ timeout: 45_000 })

@@ -1,7 +1,7 @@
 import { expect, test, type Browser, type Page } from '@playwright/test'
 import { visitorRecording } from './fixtures/recordings'
 import { BenchPage } from './support/bench-page'
-import { demoPerson, signIn, type DemoPerson } from './support/people'
+import { demoPerson, newcomer, signIn, signUp, type DemoPerson } from './support/people'
 
 const HILLSIDE = 'Hillside club mount'
 
@@ -83,10 +83,7 @@ test('a stranger finds no project, a visitor is asked to sign in', async ({ brow
   await expect(visitor).toHaveURL(/\/sign-in\?next=/)
 
   await visitor.goto('/sign-up')
-  await visitor.getByLabel('Name', { exact: true }).fill('Oda Stranger')
-  await visitor.getByLabel('E-mail').fill(`oda.${Date.now()}@visitor.example`)
-  await visitor.getByLabel('Password', { exact: true }).fill('a quiet evening')
-  await visitor.getByRole('button', { name: 'Make an account' }).click()
+  await signUp(visitor, newcomer('Oda Stranger'))
   await expect(visitor).toHaveURL(/\/projects$/)
   expect((await visitor.goto(address))?.status()).toBe(404)
   await expect(visitor.getByText(HILLSIDE)).toHaveCount(0)

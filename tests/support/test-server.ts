@@ -62,14 +62,20 @@ export interface Person extends Asker {
   email: string
 }
 
+/** An account whose address has been proven. */
+export async function makeAccount({ password, ...fields }: { displayName: string; email: string; password: string }) {
+  const user = await insertUser(database(), { ...fields, passwordHash: await hashPassword(password) })
+  if (!user) throw new Error(`There is an account for ${fields.email} already`)
+  return user
+}
+
 let counter = 0
 
 /** A new account with an open session. */
 export async function signUpPerson(displayName: string): Promise<Person> {
   counter += 1
   const email = `${displayName.toLowerCase().replaceAll(' ', '.')}.${counter}@example.org`
-  const user = await insertUser(database(), { displayName, email, passwordHash: await hashPassword(PASSWORD) })
-  if (!user) throw new Error(`There is an account for ${email} already`)
+  const user = await makeAccount({ displayName, email, password: PASSWORD })
   const [cookie] = (await openSession(makeRequest('/'), user.id)).split(';')
   return { id: user.id, cookie, displayName, email }
 }

@@ -1,6 +1,7 @@
 import { readFileSync } from 'node:fs'
 import { expect, type Page } from '@playwright/test'
 import { z } from 'zod'
+import { waitForMail } from './mail'
 
 const signInsSchema = z.array(
   z.object({
@@ -27,4 +28,53 @@ export async function signIn(page: Page, { email, password }: Pick<DemoPerson, '
   await page.getByLabel('Password', { exact: true }).fill(password)
   await page.getByRole('button', { name: 'Sign in' }).click()
   await expect(page).toHaveURL(/\/projects$/)
+}
+
+export interface Newcomer {
+  displayName: string
+  email: string
+  password: string
+}
+
+let newcomerCount = 0
+
+/** Somebody of this test's own, for whatever ends sessions, uses limits up or deletes. */
+export function newcomer(displayName = 'Runa Velde'): Newcomer {
+  newcomerCount += 1
+  const name = displayName.toLowerCase().replaceAll(' ', '.')
+  return {
+    displayName,
+    email: `${name}.${Date.now()}.${process.pid}.${newcomerCount}@visitor.example`,
+    password: 'eight quiet turns',
+  }
+}
+
+/** Fills and sends the form on the sign-up page, and waits for the link in the mail. */
+export async function askToSignUp(page: Page, { displayName, email, password }: Newcomer): Promise<string> {
+  await page.getByLabel('Name', { exact: true }).fill(displayName)
+  await page.getByLabel('E-mail').fill(email)
+  await page.getByLabel('Password', { exact: true }).fill(password)
+  await page.getByRole('button', { name: 'Make an account' }).click()
+  await expect(page.getByRole('heading', { level: 1 })).toHaveText('Look into your mail')
+  const { links } = await waitForMail(page.request, { to: email, subject: 'Confirm your address' })
+  return localLink(links, 'verify-email')
+}
+
+/** A link of a mail as a path: the server under test may be reached under another address than its mails name. */
+export function localLink(links: readonly string[], page: string): string {
+  const link = links.find((each) => new URL(each).pathname === `/${page}`)
+  if (!link) throw new Error(`The mail has no link to /${page}, only ${links.join(', ')}`)
+  const { pathname, search } = new URL(link)
+  return pathname + search
+}
+
+/** Makes the account with the link of the mail, in another tab; the page that signed up goes on by itself. */
+export async function signUp(page: Page, person: Newcomer): Promise<void> {
+  const link = await askToSignUp(page, person)
+  const tab = await page.context().newPage()
+  await tab.goto(link)
+  await tab.getByRole('button', { name: 'Make my account' }).click()
+  await expect(tab).not.toHaveURL(/verify-email/)
+  await tab.close()
+  await expect(page).not.toHaveURL(/sign-up/, { timeout: 15_000 })
 }
