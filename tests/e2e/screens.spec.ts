@@ -3,7 +3,7 @@ import { visitorRecording } from './fixtures/recordings'
 import { BenchPage } from './support/bench-page'
 import { expectNoAxeViolations } from './support/axe'
 import { expectOnlyRedPixels } from './support/night-pixels'
-import { demoPerson, signIn } from './support/people'
+import { askToSignUp, demoPerson, newcomer, signIn } from './support/people'
 import { reportIsDrawn, SharePanel } from './support/report-page'
 import { chooseTheme } from './support/themes'
 
@@ -87,6 +87,27 @@ const screens: Screen[] = [
       await expect(page.getByText('Getting the')).toHaveCount(0)
     },
   },
+  {
+    name: 'sign-up, waiting for the mail',
+    isMembersOnly: false,
+    open: async (page) => {
+      await page.goto('/sign-up')
+      await askToSignUp(page, newcomer())
+    },
+  },
+  {
+    name: 'link of a sign-up in another browser',
+    isMembersOnly: false,
+    open: async (page) => {
+      await page.goto('/sign-up')
+      const link = await askToSignUp(page, newcomer())
+      await page.context().clearCookies()
+      await page.goto(link)
+      await expect(page.getByRole('button', { name: 'Make my account' })).toBeVisible()
+    },
+  },
+  visit('link that has ended', '/verify-email?token=unknown'),
+  visit('reset by mail', '/reset-password'),
   visit('not-found', '/no-such-page'),
   visit('invitation that opens nothing', '/invite/no-such-link'),
   visit('bench intake', '/bench'),

@@ -3,6 +3,7 @@ import * as account from '@/app/api/account/route'
 import * as deletion from '@/app/api/account/deletion/route'
 import * as accountEmail from '@/app/api/account/email/route'
 import * as accountPassword from '@/app/api/account/password/route'
+import * as preferences from '@/app/api/account/preferences/route'
 import * as sessions from '@/app/api/account/sessions/route'
 import * as session from '@/app/api/account/sessions/[sessionId]/route'
 import * as reset from '@/app/api/auth/reset-password/route'
@@ -20,6 +21,9 @@ import * as localMailHtml from '@/app/api/local-mail/[mailName]/html/route'
 import * as localMailRefusing from '@/app/api/local-mail/refusing/route'
 import * as me from '@/app/api/me/route'
 import * as projects from '@/app/api/projects/route'
+import * as projectImport from '@/app/api/projects/import/route'
+import * as share from '@/app/api/share/[token]/route'
+import * as shareColumns from '@/app/api/share/[token]/columns/route'
 import { openTestDatabase } from '../support/test-database'
 import { DRIVE_TRAIN } from '../support/test-project'
 import { call, PASSWORD, signUpPerson, type Person } from '../support/test-server'
@@ -74,6 +78,10 @@ const cases: [string, Case][] = [
       body: () => ({ password: PASSWORD, newPassword: PASSWORD }),
     },
   ],
+  [
+    'PATCH account/preferences',
+    { method: 'PATCH', module: preferences, ...forSignedIn(200), body: () => ({ theme: 'dusk' }) },
+  ],
   ['GET account/sessions', { method: 'GET', module: sessions, ...forSignedIn(200) }],
   ['DELETE account/sessions', { method: 'DELETE', module: sessions, ...forSignedIn(204) }],
   [
@@ -118,6 +126,11 @@ const cases: [string, Case][] = [
     'POST projects',
     { method: 'POST', module: projects, ...forSignedIn(201), body: () => ({ name: 'M', driveTrain: DRIVE_TRAIN }) },
   ],
+  // An empty body is no archive.
+  ['POST projects/import', { method: 'POST', module: projectImport, ...forSignedIn(422) }],
+  // Whoever holds the link reads what it shares; this one is nobody’s.
+  ['GET share/…', { method: 'GET', module: share, ...forAnyone(404), params: { token: 'unknown' } }],
+  ['GET share/…/columns', { method: 'GET', module: shareColumns, ...forAnyone(404), params: { token: 'unknown' } }],
 ]
 
 function ask({ method, module, params, body }: Case, person: Person | null, origin?: string | null) {
