@@ -16,7 +16,7 @@ export function paperStyle({ topLeft, topRight, bottomLeft }: PaperWords): strin
   const box = "font: 8.5pt 'Atkinson Hyperlegible Next Variable', sans-serif; color: #54625d;"
   return [
     '@page {',
-    'margin: 20mm 16mm 19mm;',
+    'margin: 17mm 16mm 16mm;',
     `@top-left { content: ${cssString(topLeft)}; ${box} }`,
     `@top-right { content: ${cssString(topRight)}; ${box} text-align: right; }`,
     `@bottom-left { content: ${cssString(bottomLeft)}; ${box} }`,

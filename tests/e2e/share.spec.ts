@@ -76,7 +76,7 @@ test('a link made by an editor opens the report without an account, on screen an
   }
 
   await page.bringToFront()
-  await panel.revokeNewest()
+  await panel.revoke(address)
   const ended = await reader.goto(address)
   expect(ended?.status()).toBe(410)
   await expect(reader.getByRole('heading', { level: 1 })).toHaveText('This link has ended')

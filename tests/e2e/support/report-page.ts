@@ -23,14 +23,13 @@ export class SharePanel {
     return address.inputValue()
   }
 
-  async revokeNewest(): Promise<void> {
-    await this.page
-      .getByRole('button', { name: /^Revoke the link of/ })
-      .first()
-      .click()
-    await expect(this.page.getByText('Everyone who was given this link will no longer see the report')).toBeVisible()
-    await this.page.getByRole('button', { name: 'Revoke the link', exact: true }).click()
-    await expect(this.page.getByText(/^Revoked on/).first()).toBeVisible()
+  /** Ends when the panel shows the address no more. */
+  async revoke(address: string): Promise<void> {
+    const entry = this.page.getByRole('listitem').filter({ has: this.page.locator(`input[value="${address}"]`) })
+    await entry.getByRole('button', { name: /^Revoke the link of/ }).click()
+    await expect(entry.getByText('Everyone who was given this link will no longer see the report')).toBeVisible()
+    await entry.getByRole('button', { name: 'Revoke the link', exact: true }).click()
+    await expect(entry).toHaveCount(0)
   }
 }
 
