@@ -40,6 +40,10 @@ export const AUDIT_WORDS = {
   'account.sign-up': 'made the account',
   'account.preferences': 'chose how to see things',
   'account.sign-in': 'signed in as',
+  'account.rename': 'took the name',
+  'account.change-email': 'changed the address to',
+  'account.change-password': 'changed the password of',
+  'account.reset-password': 'set a new password by mail for',
 } as const satisfies Record<`${string}.${string}`, string>
 
 export type AuditAction = keyof typeof AUDIT_WORDS
