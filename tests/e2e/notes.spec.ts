@@ -17,7 +17,8 @@ test('an editor pins a note by clicking a picture and names the owner, who gets 
   const text = track.getByRole('textbox', { name: 'Note' })
   const mark = `gust ${Date.now()}`
   await text.pressSequentially(`A ${mark}, @${mira.displayName.slice(0, 3).toLowerCase()}`)
-  await expect(track.getByRole('option')).toHaveText([mira.displayName])
+  const members = track.getByRole('listbox', { name: 'Members to name' })
+  await expect(members.getByRole('option')).toHaveText([mira.displayName])
   await editor.keyboard.press('Enter')
   await editor.keyboard.type('please look')
   await track.getByRole('button', { name: 'Add note' }).click()

@@ -30,6 +30,8 @@ test('two people change one note: both texts are seen, and the second person dec
   await startChange(editor, text, `${text}, says Tomas`)
   await saveNote(owner)
   await expect(noteWith(owner, `${text}, says Mira`)).toBeVisible()
+  // She goes on from what she has just saved, before he decides about his.
+  await startChange(owner, text, `${text}, says Mira again`)
   await saveNote(editor)
   await expect(editor.getByText(`${mira} changed this note meanwhile`)).toBeVisible()
   await expect(editor.getByText(`${text}, says Mira`)).toBeVisible()
@@ -37,8 +39,7 @@ test('two people change one note: both texts are seen, and the second person dec
   await editor.getByRole('button', { name: 'Save mine instead' }).click()
   await expect(noteWith(editor, `${text}, says Tomas`).getByText(`by ${tomas}`)).toBeVisible()
 
-  // The other way round: the owner’s page is older now, and she takes what he wrote.
-  await startChange(owner, text, `${text}, says Mira again`)
+  // Now hers is the older one, whatever her page has learnt meanwhile; she takes what he wrote.
   await saveNote(owner)
   await expect(owner.getByText(`${tomas} changed this note meanwhile`)).toBeVisible()
   await owner.getByRole('button', { name: 'Take theirs' }).click()
@@ -132,7 +133,8 @@ test('a second tab of the open bench replaces the kept recording: the first says
   page,
 }) => {
   const first = new BenchPage(page)
-  await page.goto('/bench?sample=1')
+  await first.open()
+  await page.getByRole('button', { name: 'Take the sample run' }).click()
   const figures = await first.allFigures()
   await page.reload()
   expect(await first.allFigures()).toBe(figures)
