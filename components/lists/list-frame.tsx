@@ -1,7 +1,6 @@
 'use client'
 
 import type { ReactNode } from 'react'
-import type { SWRResponse } from 'swr'
 import { Button } from '@/components/ui/button'
 import { FilterRow } from '@/components/ui/filter-row'
 import { Notice } from '@/components/ui/notice'
@@ -9,13 +8,13 @@ import { ProgressBar } from '@/components/ui/progress-bar'
 import { ServerTable } from '@/components/ui/server-table'
 import type { ListColumn } from '@/components/ui/server-table-model'
 import { RequestError } from '@/lib/client/fetcher'
-import type { ListAddress } from '@/lib/client/use-list'
+import type { ListAddress, ListAnswer } from '@/lib/client/use-list'
 import { shownSentence, type Noun } from '@/lib/findings/shown-sentence'
 import { PAGE_SIZES, type ListQuery, type PageFacts } from '@/lib/schemas/lists'
 
 interface ListFrameProps<Answer extends PageFacts, Row extends { id: string }, Query extends ListQuery> {
   noun: Noun
-  answer: SWRResponse<Answer, Error>
+  answer: ListAnswer<Answer>
   address: ListAddress<Query>
   columns: readonly ListColumn<Row>[]
   rowsOf: (answer: Answer) => readonly Row[]
@@ -36,7 +35,7 @@ export function ListFrame<Answer extends PageFacts, Row extends { id: string }, 
 ) {
   const { noun, answer, address, columns, rowsOf, heading, nothingYet, searched, filtered, filters } = props
   const { query, change, type, showAll } = address
-  const { data, error, isLoading } = answer
+  const { data, error, isBusy } = answer
   const fault = error ? (
     <ListFault noun={noun} error={error} answer={answer} onStart={() => change({} as Partial<Query>)} />
   ) : null
@@ -52,7 +51,7 @@ export function ListFrame<Answer extends PageFacts, Row extends { id: string }, 
       ) : (
         <>
           <p className="sr-only" role="status">
-            {isLoading ? '' : shownSentence(data, noun, words)}
+            {isBusy ? '' : shownSentence(data, noun, words)}
           </p>
           <ServerTable
             caption={noun.many}
@@ -62,11 +61,11 @@ export function ListFrame<Answer extends PageFacts, Row extends { id: string }, 
             sort={{ id: query.sort, desc: query.direction === 'desc' }}
             onSort={({ id, desc }) => change({ sort: id, direction: desc ? 'desc' : 'asc' } as Partial<Query>)}
             page={data}
-            onCursor={(cursor) => change({ cursor } as Partial<Query>)}
+            onCursor={(cursor) => change({ ...query, cursor })}
             pageSize={query.limit}
             pageSizes={PAGE_SIZES}
             onPageSize={(limit) => change({ limit } as Partial<Query>)}
-            isBusy={isLoading}
+            isBusy={isBusy}
             top={
               <>
                 <FilterRow
@@ -109,7 +108,7 @@ export function ListFrame<Answer extends PageFacts, Row extends { id: string }, 
 interface ListFaultProps {
   noun: Noun
   error: Error
-  answer: Pick<SWRResponse, 'mutate'>
+  answer: { mutate: () => Promise<unknown> }
   onStart: () => void
 }
 

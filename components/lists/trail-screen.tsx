@@ -19,7 +19,16 @@ import { ListFrame } from './list-frame'
 const columnsIn = ({ zoneName, dayAndTime }: Dates): readonly ListColumn<AuditEvent>[] => [
   { id: 'person', header: 'Who', cell: ({ actorName }) => actorName },
   { id: 'action', header: 'Did what', cell: ({ action }) => auditWords(action) },
-  { id: 'subject', header: 'To what', cell: ({ subject }) => <span className="break-words">{subject}</span> },
+  {
+    id: 'subject',
+    header: 'To what',
+    cell: ({ subject, at }) => (
+      <>
+        <span className="break-words">{subject}</span>
+        <span className="block text-sm text-soft sm:hidden">{dayAndTime(at)}</span>
+      </>
+    ),
+  },
   {
     id: 'at',
     header: `When, ${zoneName}`,

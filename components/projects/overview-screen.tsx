@@ -19,9 +19,10 @@ import { amplitudeOf, peakToPeakOf, type HistoryPoint } from '@/lib/findings/pro
 import { counted } from '@/lib/findings/words'
 import type { Project } from '@/lib/schemas/api'
 import { overviewFiguresSchema } from '@/lib/schemas/kept-figures'
+import type { Estimate } from '@/lib/analysis/types'
 import { canEditProject } from '@/lib/schemas/rights'
 import type { historySchema, runListSchema } from '@/lib/schemas/lists'
-import { formatEstimate } from '@/lib/units'
+import { estimateParts } from '@/lib/units'
 import { HistoryPicture } from './history-picture'
 import { overviewKeyFigures } from './overview-figures'
 import { wormPeriodText } from './teeth'
@@ -181,13 +182,26 @@ function HistoryTable({ projectId, history }: { projectId: string; history: read
                 </Link>
               </th>
               <td className="figures py-1.5 pl-2 text-right">
-                {formatEstimate(shownSwing(amplitudeOf(point), display))}
+                <Stacked estimate={shownSwing(amplitudeOf(point), display)} />
               </td>
-              <td className="figures py-1.5 pl-2 text-right">{formatEstimate(peakToPeakOf(point))}</td>
+              <td className="figures py-1.5 pl-2 text-right">
+                <Stacked estimate={peakToPeakOf(point)} />
+              </td>
             </tr>
           ))}
       </tbody>
     </table>
+  )
+}
+
+/** A value with its error below it: side by side they are too wide for this column. */
+function Stacked({ estimate }: { estimate: Estimate }) {
+  const { value, error } = estimateParts(estimate)
+  return (
+    <>
+      {value}
+      {error === null ? null : <span className="block text-xs whitespace-nowrap text-soft">± {error}</span>}
+    </>
   )
 }
 

@@ -76,13 +76,18 @@ export function ServerTable<Row extends RowData>(props: ServerTableProps<Row>) {
     if (body) rowLinks(body).at(0)?.focus()
   }, [isBusy, rows])
 
+  /** Not while busy: the cursors are still those of the view before. */
+  function turn(cursor: string | null) {
+    if (cursor === null || isBusy) return false
+    onCursor(cursor)
+    return true
+  }
+
   function pressed(event: KeyboardEvent<HTMLTableSectionElement>) {
     if (event.key !== 'PageDown' && event.key !== 'PageUp') return moveBetweenRows(event)
     const cursor = event.key === 'PageDown' ? page.nextCursor : page.previousCursor
     event.preventDefault()
-    if (cursor === null || isBusy) return
-    isTurnedByKey.current = true
-    onCursor(cursor)
+    if (turn(cursor)) isTurnedByKey.current = true
   }
 
   const isPaged = page.total > Math.min(...props.pageSizes)
@@ -128,16 +133,10 @@ export function ServerTable<Row extends RowData>(props: ServerTableProps<Row>) {
               />
             </div>
             <div className="flex gap-2">
-              <Button
-                disabled={page.previousCursor === null}
-                onClick={() => page.previousCursor !== null && onCursor(page.previousCursor)}
-              >
+              <Button disabled={page.previousCursor === null} onClick={() => turn(page.previousCursor)}>
                 Back
               </Button>
-              <Button
-                disabled={page.nextCursor === null}
-                onClick={() => page.nextCursor !== null && onCursor(page.nextCursor)}
-              >
+              <Button disabled={page.nextCursor === null} onClick={() => turn(page.nextCursor)}>
                 Next
               </Button>
             </div>

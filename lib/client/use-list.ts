@@ -2,7 +2,7 @@
 
 import { usePathname, useSearchParams } from 'next/navigation'
 import { useCallback, useMemo } from 'react'
-import useSWR from 'swr'
+import useSWR, { useSWRConfig } from 'swr'
 import type { z } from 'zod'
 import { lenientQuery, listSearch, type ListSchema, type PageFacts } from '@/lib/schemas/lists'
 import { getJson } from './fetcher'
@@ -50,7 +50,24 @@ export function useListAddress<Schema extends ListSchema>(schema: Schema): ListA
   return { query, change, type, showAll }
 }
 
+export interface ListAnswer<Answer> {
+  data: Answer | undefined
+  error: Error | undefined
+  mutate: () => Promise<unknown>
+  /** Whether the data are still those of another view. */
+  isBusy: boolean
+}
+
 /** One page of a list; the rows of the page before stay until the next ones are there. */
-export function useList<Schema extends z.ZodType<PageFacts>>(address: string, schema: Schema) {
-  return useSWR<z.output<Schema>, Error>(address, (url: string) => getJson(url, schema), { keepPreviousData: true })
+export function useList<Schema extends z.ZodType<PageFacts>>(
+  address: string,
+  schema: Schema,
+): ListAnswer<z.output<Schema>> {
+  const { fallback } = useSWRConfig()
+  const answer = useSWR<z.output<Schema>, Error>(address, (url: string) => getJson(url, schema), {
+    keepPreviousData: true,
+  })
+  // What the page was sent with is this very view, though SWR calls it loading until it has asked once itself.
+  const isBusy = answer.isLoading && fallback[address] === undefined
+  return { data: answer.data, error: answer.error, mutate: () => answer.mutate(), isBusy }
 }

@@ -85,10 +85,13 @@ describe('ServerTable', () => {
     expect(screen.queryByRole('navigation')).toBeNull()
   })
 
-  test('the rows before stay, marked as busy, until the next ones are there', () => {
-    const { rerender } = render(<ServerTable {...props({ isBusy: true })} />)
+  test('the rows before stay, marked as busy, until the next ones are there; nobody pages on from them', async () => {
+    const busy = props({ isBusy: true })
+    const { rerender } = render(<ServerTable {...busy} />)
     expect(screen.getByRole('table').getAttribute('aria-busy')).toBe('true')
     expect(screen.getAllByRole('rowheader')).toHaveLength(3)
+    await userEvent.click(button('Next'))
+    expect(busy.onCursor).not.toHaveBeenCalled()
     rerender(<ServerTable {...props()} />)
     expect(screen.getByRole('table').getAttribute('aria-busy')).toBe('false')
   })
