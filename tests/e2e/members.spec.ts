@@ -51,6 +51,7 @@ test('an editor pins notes; a viewer reads them and can change nothing', async (
   await editor.getByRole('button', { name: 'Save', exact: true }).click()
   await expect(editor.getByText(`${text}, later calm`)).toBeVisible()
   await editor.getByRole('listitem').filter({ hasText: text }).getByRole('button', { name: 'Remove' }).click()
+  await editor.getByRole('dialog').getByRole('button', { name: 'Remove' }).click()
   await expect(editor.getByText(text)).toHaveCount(0)
 })
 
