@@ -85,6 +85,7 @@ test('after five wrong passwords the sixth is told how long, and a reset by mail
   await expect(other.getByText(/Try again in 1[45] min, or set a new password/)).toBeVisible()
 
   await other.getByRole('link', { name: 'Forgot the password?' }).click()
+  await expect(other.getByRole('heading', { level: 1 })).toHaveText('Set a new password by mail')
   await other.getByLabel('E-mail').fill(person.email)
   await other.getByRole('button', { name: 'Send the link' }).click()
   await expect(other.getByText('has an account, a link to set a new password is on its way')).toBeVisible()
