@@ -13,6 +13,7 @@ const zones = [
   { target: './lib/findings', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/mail', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './lib/schemas', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
+  { target: './lib/cli', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
   { target: './workers', from: ['./app', './components', './db', './lib/client', './lib/server'] },
   { target: './db', from: ['./app', './components', './lib/client', './lib/server', './workers'] },
   { target: './lib/server', from: ['./app', './components', './lib/client', './workers'] },

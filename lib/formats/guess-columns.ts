@@ -138,6 +138,15 @@ export function guessRoles(columns: ColumnFacts[]): Map<number, Role> {
   return roles
 }
 
+/** The unit that a column has in each role that it may be given, by its name, its unit and its numbers. */
+export function guessUnits(column: ColumnFacts): PreviewColumn['unitIf'] {
+  return {
+    time: guessTimeUnit(column),
+    displacement: guessDisplacementUnit(column),
+    wormAngle: guessWormAngleUnit(column),
+  }
+}
+
 /** The choice that the guesses make, null unless both time and displacement were found. */
 export function suggestChoice(columns: ColumnFacts[], roles: Map<number, Role>): ColumnChoice | null {
   const of = (role: Role) => columns.find((column) => roles.get(column.index) === role)

@@ -1,7 +1,7 @@
 import { columnHeads } from './column-names'
 import { binaryFault, emptyFault, noColumnsFault } from './faults'
 import { wholeFileFault } from './file-kind'
-import { columnFacts, guessRoles, suggestChoice } from './guess-columns'
+import { columnFacts, guessRoles, guessUnits, suggestChoice } from './guess-columns'
 import { guessLayout } from './guess-layout'
 import { readMetadata } from './preamble'
 import { SAMPLE_BYTES, guessEncoding, isBinary } from './text-encoding'
@@ -44,14 +44,15 @@ export function previewTable(bytes: Uint8Array, layout: Partial<TextLayout> = {}
     ok: true,
     preview: {
       layout: used,
-      columns: facts.map(({ index, name, unitText, isNumeric, smallest, largest }) => ({
-        index,
-        name,
-        unitText,
-        guess: roles.get(index) ?? null,
-        isNumeric,
-        smallest,
-        largest,
+      columns: facts.map((column) => ({
+        index: column.index,
+        name: column.name,
+        unitText: column.unitText,
+        guess: roles.get(column.index) ?? null,
+        unitIf: guessUnits(column),
+        isNumeric: column.isNumeric,
+        smallest: column.smallest,
+        largest: column.largest,
       })),
       rows: rows.slice(0, SHOWN_ROWS),
       preamble,

@@ -39,6 +39,8 @@ export interface PreviewColumn {
   unitText: string | null
   /** What the column may be, by its name, unit and numbers; null when it looks like nothing we read. */
   guess: 'time' | 'displacement' | 'declination' | 'worm-angle' | null
+  /** Its likely unit, should it be taken for that. */
+  unitIf: { time: TimeUnit; displacement: DisplacementUnit; wormAngle: WormAngleUnit }
   isNumeric: boolean
   smallest: number | null
   largest: number | null
