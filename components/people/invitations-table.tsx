@@ -16,10 +16,12 @@ import { RevokeDialog } from './revoke-dialog'
 interface InvitationsTableProps {
   projectId: string
   invitations: readonly Invitation[]
+  /** Nobody can join an archived project: its invitations can be revoked, not sent. */
+  isArchived: boolean
 }
 
 /** Invitations that wait for an answer; what happens to the mail is read out as it happens. */
-export function InvitationsTable({ projectId, invitations }: InvitationsTableProps) {
+export function InvitationsTable({ projectId, invitations, isArchived }: InvitationsTableProps) {
   const dates = useDates()
   const { mutate } = useSWRConfig()
   const [busyId, setBusyId] = useState<string | null>(null)
@@ -97,14 +99,16 @@ export function InvitationsTable({ projectId, invitations }: InvitationsTablePro
         value: () => null,
         cell: (invitation) => (
           <div className="flex flex-wrap justify-end gap-2">
-            <Button
-              size="small"
-              aria-label={`Send again to ${invitation.email}`}
-              disabled={busyId === invitation.id}
-              onClick={() => void resend(invitation)}
-            >
-              Send again
-            </Button>
+            {isArchived ? null : (
+              <Button
+                size="small"
+                aria-label={`Send again to ${invitation.email}`}
+                disabled={busyId === invitation.id}
+                onClick={() => void resend(invitation)}
+              >
+                Send again
+              </Button>
+            )}
             <Button
               size="small"
               aria-label={`Revoke the invitation of ${invitation.email}`}
@@ -116,7 +120,7 @@ export function InvitationsTable({ projectId, invitations }: InvitationsTablePro
         ),
       },
     ]
-  }, [busyId, dates, mutate, url])
+  }, [busyId, dates, isArchived, mutate, url])
 
   return (
     <>

@@ -18,14 +18,14 @@ interface MembersTableProps {
   project: { id: string; name: string }
   /** Who looks. */
   userId: string
-  isOwner: boolean
+  canManage: boolean
   members: readonly Member[]
 }
 
 type Asked = { member: Member; role: Role } | { member: Member; role: null }
 
 /** Who is here. Owners choose roles and remove people in it; everyone finds the way out in their own row. */
-export function MembersTable({ project, userId, isOwner, members }: MembersTableProps) {
+export function MembersTable({ project, userId, canManage, members }: MembersTableProps) {
   const dates = useDates()
   const [asked, setAsked] = useState<Asked | null>(null)
   const columns = useMemo<DataColumn<Member>[]>(
@@ -46,7 +46,7 @@ export function MembersTable({ project, userId, isOwner, members }: MembersTable
         header: 'Role',
         value: ({ role }) => role,
         cell: (member) =>
-          isOwner ? (
+          canManage ? (
             <Select
               aria-label={`Role of ${member.displayName}`}
               options={ROLE_OPTIONS}
@@ -73,7 +73,7 @@ export function MembersTable({ project, userId, isOwner, members }: MembersTable
         value: () => null,
         cell: (member) => {
           const isSelf = member.userId === userId
-          if (!isSelf && !isOwner) return null
+          if (!isSelf && !canManage) return null
           return (
             <div className="text-right">
               <Button
@@ -88,7 +88,7 @@ export function MembersTable({ project, userId, isOwner, members }: MembersTable
         },
       },
     ],
-    [dates, isOwner, userId],
+    [dates, canManage, userId],
   )
   const isLastOwner = asked?.member.role === 'owner' && members.filter(({ role }) => role === 'owner').length === 1
   const dialog = {

@@ -7,7 +7,7 @@ import { Notice } from '@/components/ui/notice'
 import { useMembers, useProject, type Member } from '@/lib/client/project-data'
 import { useInvitations } from '@/lib/client/people-data'
 import { capitalised, counted } from '@/lib/findings/words'
-import { aRole, mayDo } from '@/lib/schemas/rights'
+import { aRole, canManageProject, mayDo } from '@/lib/schemas/rights'
 import { InvitationsTable } from './invitations-table'
 import { InviteForm } from './invite-form'
 import { MembersTable } from './members-table'
@@ -21,8 +21,8 @@ interface PeopleScreenProps {
 export function PeopleScreen({ projectId, userId }: PeopleScreenProps) {
   const project = useProject(projectId)
   const { data, error, mutate } = useMembers(projectId)
-  const isOwner = project.data?.role === 'owner'
-  const invitations = useInvitations(projectId, isOwner)
+  const canManage = project.data !== undefined && canManageProject(project.data)
+  const invitations = useInvitations(projectId, canManage)
   const name = project.data?.name ?? 'Project'
   return (
     <DataState what="the people" data={data} error={error} onRetry={() => void mutate()}>
@@ -33,8 +33,8 @@ export function PeopleScreen({ projectId, userId }: PeopleScreenProps) {
             title={titleOf(members, invitations.data?.invitations.length ?? 0)}
             lead={project.data ? `You are ${aRole(project.data.role)} and may ${mayDo(project.data.role)}.` : undefined}
           />
-          <MembersTable project={{ id: projectId, name }} userId={userId} isOwner={isOwner} members={members} />
-          {isOwner ? (
+          <MembersTable project={{ id: projectId, name }} userId={userId} canManage={canManage} members={members} />
+          {canManage ? (
             <>
               <DataState
                 what="the invitations"
@@ -44,14 +44,19 @@ export function PeopleScreen({ projectId, userId }: PeopleScreenProps) {
               >
                 {(list) =>
                   list.invitations.length > 0 ? (
-                    <InvitationsTable projectId={projectId} invitations={list.invitations} />
+                    <InvitationsTable
+                      projectId={projectId}
+                      invitations={list.invitations}
+                      isArchived={project.data?.archivedAt != null}
+                    />
                   ) : null
                 }
               </DataState>
               <TitledCard title="Invite somebody" className="max-w-3xl">
                 {project.data?.archivedAt ? (
                   <Notice>
-                    This project is archived, so nobody can join. Open it again in its settings to invite people.
+                    This project is archived, so nobody can join. Open it again in its settings to invite people, or to
+                    send an invitation again.
                   </Notice>
                 ) : (
                   <InviteForm projectId={projectId} />

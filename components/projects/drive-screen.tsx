@@ -14,7 +14,7 @@ import { findingText } from '@/lib/findings/finding'
 import { driveFinding } from '@/lib/findings/drive-finding'
 import { counted } from '@/lib/findings/words'
 import { projectSchema, type Project } from '@/lib/schemas/api'
-import { canEditProject } from '@/lib/schemas/rights'
+import { whyNoEdit } from '@/lib/schemas/rights'
 import { DriveTrainEditor } from './drive-train-editor'
 import { PredictedOrdersTable } from './predicted-orders-table'
 import { SaveTroubles } from './save-troubles'
@@ -38,7 +38,8 @@ function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: 
   const [typed, setTyped] = useState<DriveTrain>(project.driveTrain)
   const [version, setVersion] = useState(project.version)
   const { save, isBusy, isSaved, fault, conflict, dropConflict } = useSave(projectSchema)
-  const isReadOnly = !canEditProject(project)
+  const reason = whyNoEdit(project)
+  const isReadOnly = reason !== null
   const isChanged = JSON.stringify(typed) !== JSON.stringify(project.driveTrain)
 
   async function send(fromVersion: number) {
@@ -90,11 +91,7 @@ function DriveForm({ project, onSaved }: { project: Project; onSaved: (project: 
               </Notice>
             ) : null}
             {isReadOnly ? (
-              <p className="text-sm text-soft">
-                {project.archivedAt
-                  ? 'This project is archived; nothing in it changes until an owner opens it again.'
-                  : 'You can read this project; its owner and editors change it.'}
-              </p>
+              <p className="text-sm text-soft">{reason}</p>
             ) : (
               <div>
                 <Button type="submit" variant="primary" disabled={isBusy || !isChanged}>

@@ -5,6 +5,7 @@ import { ButtonLink } from '@/components/ui/button'
 import { Notice } from '@/components/ui/notice'
 import { onRefused, RequestError } from '@/lib/client/fetcher'
 import { projectKey, useProjectStanding } from '@/lib/client/project-data'
+import { canManageProject } from '@/lib/schemas/rights'
 
 /** Says above every page of a project when it is archived, or not there any more; what is on the page stays readable. */
 export function ProjectFrame({ projectId, children }: { projectId: string; children: ReactNode }) {
@@ -34,7 +35,7 @@ export function ProjectFrame({ projectId, children }: { projectId: string; child
       ) : data?.archivedAt ? (
         <Notice title="This project is archived">
           Everything can be read and downloaded, and its share links still open. Nothing in it can be changed
-          {data.role === 'owner' ? '; you can open it again in its settings.' : ' until an owner opens it again.'}
+          {canManageProject(data) ? '; you can open it again in its settings.' : ' until an owner opens it again.'}
         </Notice>
       ) : null}
       {children}

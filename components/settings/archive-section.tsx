@@ -5,6 +5,7 @@ import { useSave } from '@/components/projects/use-save'
 import { Button } from '@/components/ui/button'
 import { sendJson } from '@/lib/client/fetcher'
 import { projectSchema, type Project } from '@/lib/schemas/api'
+import { canManageProject } from '@/lib/schemas/rights'
 
 /** Puts the project away so that nothing in it changes, or opens it again. */
 export function ArchiveSection({ project, onSaved }: { project: Project; onSaved: (project: Project) => void }) {
@@ -34,7 +35,7 @@ export function ArchiveSection({ project, onSaved }: { project: Project; onSaved
           onSaved(theirs)
         }}
       />
-      {project.role === 'owner' ? (
+      {canManageProject(project) ? (
         <div>
           <Button disabled={isBusy} onClick={() => void send(project.version)}>
             {isArchived ? 'Open it again' : 'Archive this project'}

@@ -10,6 +10,7 @@ import { sendOnly } from '@/lib/client/fetcher'
 import { isProjectsKey, useProjectContents } from '@/lib/client/project-data'
 import { contentsLost } from '@/lib/findings/contents-lost'
 import type { Project } from '@/lib/schemas/api'
+import { canManageProject } from '@/lib/schemas/rights'
 
 /** Deletes the project for good, after its owner has seen what goes and typed its name. */
 export function DeleteSection({ project }: { project: Project }) {
@@ -19,7 +20,7 @@ export function DeleteSection({ project }: { project: Project }) {
   const contents = useProjectContents(project.id, isAsking)
   const url = `/api/projects/${project.id}`
 
-  if (project.role !== 'owner') return <p className="text-soft">Only an owner deletes a project.</p>
+  if (!canManageProject(project)) return <p className="text-soft">Only an owner deletes a project.</p>
 
   return (
     <div className="flex max-w-[65ch] flex-col gap-3">

@@ -8,13 +8,14 @@ import { Field } from '@/components/ui/field'
 import { TextInput } from '@/components/ui/text-input'
 import { sendJson } from '@/lib/client/fetcher'
 import { projectChangeSchema, projectSchema, type Project } from '@/lib/schemas/api'
+import { canManageProject } from '@/lib/schemas/rights'
 
 export function NameForm({ project, onSaved }: { project: Project; onSaved: (project: Project) => void }) {
   const [name, setName] = useState(project.name)
   const [nameFault, setNameFault] = useState<string | null>(null)
   const { save, isBusy, fault, fields, conflict, dropConflict } = useSave(projectSchema)
 
-  if (project.role !== 'owner') return <p>{project.name} – only its owner changes the name.</p>
+  if (!canManageProject(project)) return <p>{project.name} – only its owner changes the name.</p>
   if (project.archivedAt) return <p>{project.name} – an archived project keeps its name.</p>
 
   async function send(version: number) {

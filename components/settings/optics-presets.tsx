@@ -12,11 +12,12 @@ import { OpticsForm } from './optics-form'
 interface OpticsPresetsProps {
   projectId: string
   presets: readonly OpticsPreset[]
-  canEdit: boolean
+  /** Why nothing can be changed here; null where it can. */
+  whyReadOnly: string | null
   onChanged: () => void
 }
 
-export function OpticsPresets({ projectId, presets, canEdit, onChanged }: OpticsPresetsProps) {
+export function OpticsPresets({ projectId, presets, whyReadOnly, onChanged }: OpticsPresetsProps) {
   const [edited, setEdited] = useState<OpticsPreset | 'new' | null>(null)
   const [removed, setRemoved] = useState<OpticsPreset | null>(null)
   const url = `/api/projects/${projectId}/optics-presets`
@@ -45,7 +46,7 @@ export function OpticsPresets({ projectId, presets, canEdit, onChanged }: Optics
                 </span>
                 <span className="block text-sm text-soft">{opticsText(preset)}</span>
               </span>
-              {canEdit ? (
+              {whyReadOnly === null ? (
                 <span className="flex gap-2">
                   <Button onClick={() => setEdited(preset)} aria-label={`Change ${preset.name}`}>
                     Change
@@ -59,11 +60,13 @@ export function OpticsPresets({ projectId, presets, canEdit, onChanged }: Optics
           ))}
         </ul>
       )}
-      {canEdit ? (
+      {whyReadOnly === null ? (
         <div className="mt-4">
           <Button onClick={() => setEdited('new')}>Add optics</Button>
         </div>
-      ) : null}
+      ) : (
+        <p className="mt-4 text-sm text-soft">{whyReadOnly}</p>
+      )}
 
       <Dialog
         isOpen={edited !== null}

@@ -6,7 +6,7 @@ import { DataState } from '@/components/ui/data-state'
 import { SheetSection } from '@/components/ui/sheet-section'
 import { useOpticsPresets, useProject } from '@/lib/client/project-data'
 import { capitalised, counted } from '@/lib/findings/words'
-import { canEditProject } from '@/lib/schemas/rights'
+import { whyNoEdit } from '@/lib/schemas/rights'
 import { ArchiveSection } from './archive-section'
 import { DeleteSection } from './delete-section'
 import { DownloadSection } from './download-section'
@@ -48,7 +48,7 @@ export function SettingsScreen({ projectId }: { projectId: string }) {
             <OpticsPresets
               projectId={projectId}
               presets={list}
-              canEdit={canEditProject(shown)}
+              whyReadOnly={whyNoEdit(shown)}
               onChanged={() => void presets.mutate()}
             />
           </SheetSection>

@@ -100,10 +100,8 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
         actions={
           isReadOnly ? null : (
             <>
-              {analysis && !project.archivedAt ? (
-                <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} />
-              ) : null}
-              {analysis && !project.archivedAt ? <Button onClick={() => setRenaming(true)}>Rename</Button> : null}
+              {analysis ? <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} /> : null}
+              {analysis ? <Button onClick={() => setRenaming(true)}>Rename</Button> : null}
               {analysis && !isAsSaved ? (
                 <Button onClick={() => setRecipe(analysis.recipe)}>Back to the saved one</Button>
               ) : null}

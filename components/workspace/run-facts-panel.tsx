@@ -34,8 +34,8 @@ const CHOICES: Record<Choice, { label: string; options: readonly SelectOption[] 
   guiding: { label: 'Guiding', options: GUIDING_OPTIONS },
 }
 
-/** What is known of a stored run beside its numbers, and its original file. */
-export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) {
+/** What is known of a stored run beside its numbers, and its original file; or why nobody may change that here now. */
+export function RunFactsPanel({ run, whyReadOnly }: { run: Run; whyReadOnly: string | null }) {
   const [isEditing, setEditing] = useState(false)
   const { facts } = run
   const { dayAndTimeWithZone } = useDates()
@@ -45,7 +45,7 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
         title="About this run"
         actions={
           <div className="no-print flex flex-wrap gap-2">
-            {canEdit ? <Button onClick={() => setEditing(true)}>Change what is known</Button> : null}
+            {whyReadOnly === null ? <Button onClick={() => setEditing(true)}>Change what is known</Button> : null}
             <ButtonAnchor href={`/api/projects/${run.projectId}/runs/${run.id}/file`}>
               Download the original
             </ButtonAnchor>
@@ -78,6 +78,7 @@ export function RunFactsPanel({ run, canEdit }: { run: Run; canEdit: boolean }) 
             <span className="figures text-sm break-all">{run.fileSha256}</span>
           </Fact>
         </dl>
+        {whyReadOnly === null ? null : <p className="no-print mt-3 text-sm text-soft">{whyReadOnly}</p>}
       </TitledCard>
       <Dialog isOpen={isEditing} onClose={() => setEditing(false)} title="What is known of this run">
         <FactsForm run={run} onClose={() => setEditing(false)} />

@@ -11,7 +11,7 @@ import { Notice } from '@/components/ui/notice'
 import { importRun } from '@/lib/client/save-run'
 import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import type { Project, Run } from '@/lib/schemas/api'
-import { canEditProject } from '@/lib/schemas/rights'
+import { canEditProject, whyNoEdit } from '@/lib/schemas/rights'
 import { ReadingScreen } from './reading-screen'
 import { RunBench } from './run-bench'
 import { RunFactsPanel } from './run-facts-panel'
@@ -30,7 +30,7 @@ export function RunScreen({ project, run, userId }: { project: Project; run: Run
   return (
     <>
       <RunBench project={project} run={run} userId={userId} analysis={null} savedResult={null} />
-      <RunFactsPanel run={run} canEdit={canEditProject(project)} />
+      <RunFactsPanel run={run} whyReadOnly={whyNoEdit(project)} />
     </>
   )
 }

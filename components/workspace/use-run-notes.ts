@@ -6,6 +6,7 @@ import type { NoteActions } from '@/components/notes/note-types'
 import { getJson, sendJson, sendOnly } from '@/lib/client/fetcher'
 import { useMembers } from '@/lib/client/project-data'
 import { noteListSchema, noteSchema, type Note, type Project } from '@/lib/schemas/api'
+import { canManageProject } from '@/lib/schemas/rights'
 
 /** How often notes of other people are asked for while the page is seen. */
 const REFRESH_MS = 30_000
@@ -27,7 +28,7 @@ export function useRunNotes({ project, analysisId, userId }: RunNotesOptions): {
     revalidateOnFocus: true,
   })
   const { data: members } = useMembers(project.id)
-  const isOwner = project.role === 'owner'
+  const canManage = canManageProject(project)
 
   const actions = useMemo((): NoteActions => {
     if (!key || !analysisId) return {}
@@ -46,12 +47,12 @@ export function useRunNotes({ project, analysisId, userId }: RunNotesOptions): {
       onDelete: ({ id }) => andRefresh(sendOnly('DELETE', `${base}/notes/${id}`)),
       onResolve: ({ id, version }, isResolved) =>
         andRefresh(sendJson('PUT', `${base}/notes/${id}/resolution`, { version, isResolved }, noteSchema)),
-      canChange: ({ authorId }) => isOwner || authorId === userId,
+      canChange: ({ authorId }) => canManage || authorId === userId,
       people: members?.members.filter((member) => member.userId !== userId),
       presentIds: data?.notes.map(({ id }) => id),
       draftScope: analysisId,
     }
-  }, [key, analysisId, base, isOwner, userId, members, data, mutate])
+  }, [key, analysisId, base, canManage, userId, members, data, mutate])
 
   return { notes: data?.notes ?? [], actions }
 }

@@ -63,3 +63,16 @@ export function aRole(role: Role): string {
 export function canEditProject({ role, archivedAt }: { role: Role; archivedAt: string | null }): boolean {
   return RIGHTS[role].edit && archivedAt === null
 }
+
+/** Why somebody who reads the project changes nothing in it now; null where they can. */
+export function whyNoEdit(project: { role: Role; archivedAt: string | null }): string | null {
+  if (canEditProject(project)) return null
+  return project.archivedAt === null
+    ? 'You can read this project; its owners and editors change it.'
+    : 'This project is archived; nothing in it changes until an owner opens it again.'
+}
+
+/** Whether somebody of this role decides about the project itself and its people, archived or not. */
+export function canManageProject({ role }: { role: Role }): boolean {
+  return RIGHTS[role].manage
+}
