@@ -14,7 +14,7 @@ import { useList, useListAddress } from '@/lib/client/use-list'
 import { findingText } from '@/lib/findings/finding'
 import { runsFinding } from '@/lib/findings/list-findings'
 import { runFilterWords } from '@/lib/findings/shown-sentence'
-import { listSearch, runListSchema, runQuerySchema, type RunSummary } from '@/lib/schemas/lists'
+import { inZone, listSearch, runListSchema, runQuerySchema, type RunSummary } from '@/lib/schemas/lists'
 import { canEditProject } from '@/lib/schemas/rights'
 import { formatBytes, formatCount } from '@/lib/units'
 import { ListFrame } from './list-frame'
@@ -78,7 +78,10 @@ export function RunsScreen({ projectId }: { projectId: string }) {
   const { query, change } = address
   const dates = useDates()
   const columns = useMemo(() => columnsIn(dates), [dates])
-  const answer = useList(`/api/projects/${projectId}/runs${listSearch(runQuerySchema, query)}`, runListSchema)
+  const answer = useList(
+    `/api/projects/${projectId}/runs${listSearch(runQuerySchema, inZone(query, dates.timeZone))}`,
+    runListSchema,
+  )
   const canEdit = project.data !== undefined && canEditProject(project.data)
   const upload = (
     <ButtonLink href={`/projects/${projectId}/runs/new`} variant="primary">
@@ -147,8 +150,12 @@ export function RunsScreen({ projectId }: { projectId: string }) {
             ]}
             onValue={(state) => change({ state })}
           />
-          <FilterDay label="Recorded from, UTC" value={query.from} onValue={(from) => change({ from })} />
-          <FilterDay label="to, UTC" value={query.to} onValue={(to) => change({ to })} />
+          <FilterDay
+            label={`Recorded from, ${dates.zoneName}`}
+            value={query.from}
+            onValue={(from) => change({ from })}
+          />
+          <FilterDay label={`to, ${dates.zoneName}`} value={query.to} onValue={(to) => change({ to })} />
         </>
       }
     />

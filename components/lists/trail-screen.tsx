@@ -13,7 +13,7 @@ import { auditThings, auditWords } from '@/lib/findings/audit-words'
 import { findingText } from '@/lib/findings/finding'
 import { auditFinding } from '@/lib/findings/list-findings'
 import { auditFilterWords } from '@/lib/findings/shown-sentence'
-import { auditEventListSchema, auditQuerySchema, listSearch, type AuditEvent } from '@/lib/schemas/lists'
+import { auditEventListSchema, auditQuerySchema, inZone, listSearch, type AuditEvent } from '@/lib/schemas/lists'
 import { ListFrame } from './list-frame'
 
 const columnsIn = ({ zoneName, dayAndTime }: Dates): readonly ListColumn<AuditEvent>[] => [
@@ -47,7 +47,7 @@ export function TrailScreen({ projectId }: { projectId: string }) {
   const dates = useDates()
   const columns = useMemo(() => columnsIn(dates), [dates])
   const answer = useList(
-    `/api/projects/${projectId}/audit-events${listSearch(auditQuerySchema, query)}`,
+    `/api/projects/${projectId}/audit-events${listSearch(auditQuerySchema, inZone(query, dates.timeZone))}`,
     auditEventListSchema,
   )
   const people = members.data?.members ?? []
@@ -93,8 +93,8 @@ export function TrailScreen({ projectId }: { projectId: string }) {
             options={auditThings()}
             onValue={(thing) => change({ thing })}
           />
-          <FilterDay label="From, UTC" value={query.from} onValue={(from) => change({ from })} />
-          <FilterDay label="to, UTC" value={query.to} onValue={(to) => change({ to })} />
+          <FilterDay label={`From, ${dates.zoneName}`} value={query.from} onValue={(from) => change({ from })} />
+          <FilterDay label={`to, ${dates.zoneName}`} value={query.to} onValue={(to) => change({ to })} />
         </>
       }
     />

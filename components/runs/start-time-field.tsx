@@ -6,7 +6,7 @@ import { Segmented } from '@/components/ui/segmented'
 import { TextInput } from '@/components/ui/text-input'
 import { shortZone } from '@/lib/client/dates'
 import { useDates } from '@/lib/client/display'
-import { readWallTime, wallTimeOf } from '@/lib/client/wall-time'
+import { readWallTime, wallTimeOf } from '@/lib/wall-time'
 
 interface StartTimeFieldProps {
   /** ISO 8601, or null where it is not known. */

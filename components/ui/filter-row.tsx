@@ -1,6 +1,7 @@
 'use client'
 
 import { useEffect, useId, useState, type ReactNode } from 'react'
+import { FIRST_DAY, LAST_DAY } from '@/lib/schemas/lists'
 import { Button } from './button'
 import { classNames } from './class-names'
 import { Select, type SelectOption } from './select'
@@ -140,8 +141,8 @@ export function FilterDay({ label, value, onValue }: FilterDayProps) {
         id={id}
         type="date"
         // Beyond these years the browser lets a half-typed year through.
-        min="1900-01-01"
-        max="2999-12-31"
+        min={FIRST_DAY}
+        max={LAST_DAY}
         value={value ?? ''}
         onChange={(event) => {
           if (event.target.validity.valid) onValue(event.target.value || undefined)

@@ -1,4 +1,5 @@
 import { sql, type RawBuilder, type SqlBool } from 'kysely'
+import { dayEnd, dayStart } from '@/lib/wall-time'
 
 type Condition = RawBuilder<SqlBool>
 
@@ -20,14 +21,14 @@ export function equals(column: RawBuilder<unknown>, value: string | undefined): 
   return value === undefined ? undefined : sql<SqlBool>`${column} = ${value}`
 }
 
-/** From the beginning of one day to the end of another, both in UTC. */
+/** From the beginning of one day to the end of another, both in the zone. */
 export function withinDays(
   column: RawBuilder<unknown>,
-  { from, to }: { from?: string; to?: string },
+  { from, to, zone }: { from?: string; to?: string; zone: string },
 ): Condition | undefined {
   if (from === undefined && to === undefined) return undefined
   return allOf([
-    from === undefined ? undefined : sql<SqlBool>`${column} >= ${`${from}T00:00:00Z`}::timestamptz`,
-    to === undefined ? undefined : sql<SqlBool>`${column} < ${`${to}T00:00:00Z`}::timestamptz + interval '1 day'`,
+    from === undefined ? undefined : sql<SqlBool>`${column} >= ${dayStart(from, zone)}::timestamptz`,
+    to === undefined ? undefined : sql<SqlBool>`${column} < ${dayEnd(to, zone)}::timestamptz`,
   ])
 }

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { correctionSchema, roleSchema } from './api'
+import { timeZoneSchema } from './preferences'
 
 /*
  * The lists that the server sorts, filters and cuts into pages. Each GET takes its query from the address and answers the
@@ -13,14 +14,32 @@ const count = z.number().int().min(0)
 
 export const LARGEST_PAGE = 200
 export const PAGE_SIZES = [25, 50, 100] as const
+/** The days that can be asked for. */
+export const FIRST_DAY = '1900-01-01'
+export const LAST_DAY = '2999-12-31'
 
 const text = z
   .string()
   .max(200, { error: 'At most 200 characters' })
   .refine((value) => !value.includes('\0'), { error: 'A text holds a character that no name can hold. Remove it.' })
   .default('')
-/** A day in UTC. */
-const day = z.iso.date({ error: 'Give the day as year, month and day: 2026-11-14' }).optional()
+const day = z.iso
+  .date({ error: 'Give the day as year, month and day: 2026-11-14' })
+  .refine((value) => value >= FIRST_DAY && value <= LAST_DAY, { error: 'Give a day from 1900 to 2999' })
+  .optional()
+/** From the beginning of one day to the end of another, as clocks of a zone count them. */
+const dayFilter = { from: day, to: day, zone: timeZoneSchema.default('UTC') }
+
+interface DayFilter {
+  from?: string
+  to?: string
+  zone: string
+}
+
+/** The query with its days counted in the zone of whoever looks; without days it is the same in every zone. */
+export function inZone<Query extends DayFilter>(query: Query, zone: string): Query {
+  return { ...query, zone: query.from === undefined && query.to === undefined ? 'UTC' : zone }
+}
 
 function listQuery<const Sort extends string>(
   sorts: readonly [Sort, ...Sort[]],
@@ -99,8 +118,7 @@ export const runQuerySchema = listQuery(
   side: z.enum(['east', 'west', 'unknown']).optional(),
   sense: z.enum(['proven', 'assumed']).optional(),
   state: z.enum(['read', 'unread']).optional(),
-  from: day,
-  to: day,
+  ...dayFilter,
 })
 export type RunQuery = z.output<typeof runQuerySchema>
 export const runSummarySchema = z.object({
@@ -213,8 +231,7 @@ export const auditQuerySchema = listQuery(['at', 'person', 'action', 'subject'],
     .string()
     .regex(/^[a-z-]{1,40}$/, { error: 'There is no such kind of thing' })
     .optional(),
-  from: day,
-  to: day,
+  ...dayFilter,
 })
 export type AuditQuery = z.output<typeof auditQuerySchema>
 /** GET /api/projects/[projectId]/audit-events (members). */

@@ -20,14 +20,21 @@ export function isTimeZone(name: string): boolean {
   }
 }
 
+/** An IANA name. */
+export const timeZoneSchema = z
+  .string()
+  .min(1)
+  .max(64)
+  .refine(isTimeZone, { error: 'There is no time zone of this name' })
+
 /** How one person wants to see things; what is computed and saved never depends on it. */
 export const preferencesSchema = z.object({
   /** Null: as the system is set. */
   theme: themeNameSchema.nullable(),
   swingMeasure: swingMeasureSchema,
   displacementUnit: displacementUnitSchema,
-  /** IANA name; null: the browser's own. */
-  timeZone: z.string().min(1).max(64).refine(isTimeZone, { error: 'There is no time zone of this name' }).nullable(),
+  /** Null: the browser's own. */
+  timeZone: timeZoneSchema.nullable(),
 })
 /** PATCH /api/account/preferences: what is to change; the rest stays. → 200 preferencesSchema. */
 export const preferencesChangeSchema = preferencesSchema

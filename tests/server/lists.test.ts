@@ -265,6 +265,31 @@ describe('filters', () => {
     expect((await get('audit-events', { thing: 'run', person: project.people.stranger.id })).total).toBe(0)
   })
 
+  test('days are those of the zone that was asked in', async () => {
+    const day = { from: '2026-01-10', to: '2026-01-10', limit: '200' }
+    const inUtc = await get('runs', day)
+    // The evening of the 10th in UTC is the morning of the 11th in Auckland, 13 hours ahead.
+    const inAuckland = await get('runs', { ...day, from: '2026-01-11', to: '2026-01-11', zone: 'Pacific/Auckland' })
+    expect(inUtc.total).toBeGreaterThan(0)
+    expect(inAuckland.rows).toEqual(inUtc.rows)
+    const [last, next] = await Promise.all(
+      ['2026-01-09', '2026-01-10'].map((from) => get('runs', { from, to: from, zone: 'Pacific/Auckland' })),
+    )
+    expect([last.total, next.total]).toEqual(
+      await Promise.all(
+        ['2026-01-08', '2026-01-09'].map(async (from) => (await get('runs', { from, to: from })).total),
+      ),
+    )
+  })
+
+  test.each<Record<string, string>>([{ zone: 'Middle/Earth' }, { from: '0000-01-01' }, { to: '9999-12-31' }])(
+    '%o is refused',
+    async (query) => {
+      const refused = await ask('runs', query)
+      expect(refused.status).toBe(422)
+    },
+  )
+
   test('projects: archived ones are left out unless they are asked for', async () => {
     await database.db
       .updateTable('projects')

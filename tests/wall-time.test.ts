@@ -1,5 +1,5 @@
 import { describe, expect, test } from 'vitest'
-import { offsetMinutesAt, readWallTime, wallTimeOf } from '@/lib/client/wall-time'
+import { dayEnd, dayStart, offsetMinutesAt, readWallTime, wallTimeOf } from '@/lib/wall-time'
 
 const BERLIN = 'Europe/Berlin'
 
@@ -69,4 +69,27 @@ test('the offset of an instant', () => {
   expect(offsetMinutesAt(Date.parse('2026-10-25T00:59:59.900Z'), BERLIN)).toBe(120)
   expect(offsetMinutesAt(Date.parse('2026-10-25T01:00:00Z'), BERLIN)).toBe(60)
   expect(offsetMinutesAt(Date.parse('2026-01-01T12:00:00Z'), 'America/St_Johns')).toBe(-210)
+})
+
+describe('a day', () => {
+  test.each([
+    ['2026-11-14', 'UTC', '2026-11-14T00:00:00.000Z', 24],
+    ['2026-11-14', 'Pacific/Auckland', '2026-11-13T11:00:00.000Z', 24],
+    // Clocks are set forward or back within it.
+    ['2026-03-29', BERLIN, '2026-03-28T23:00:00.000Z', 23],
+    ['2026-10-25', BERLIN, '2026-10-24T22:00:00.000Z', 25],
+    // Midnight is left out: the day begins at one o’clock.
+    ['2026-04-24', 'Africa/Cairo', '2026-04-23T22:00:00.000Z', 23],
+    // Midnight comes twice: the first one counts.
+    ['2026-11-01', 'America/Havana', '2026-11-01T04:00:00.000Z', 25],
+    // A day that the calendar of the place left out.
+    ['2011-12-30', 'Pacific/Apia', '2011-12-30T10:00:00.000Z', 0],
+  ])('%s in %s begins at %s and has %i hours', (day, zone, start, hours) => {
+    expect(dayStart(day, zone)).toBe(start)
+    expect(Date.parse(dayEnd(day, zone)) - Date.parse(start)).toBe(hours * 3600 * 1000)
+  })
+
+  test('that no calendar has is a mistake', () => {
+    expect(() => dayStart('2026-02-30', 'UTC')).toThrow(/2026-02-30/)
+  })
 })

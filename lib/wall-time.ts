@@ -39,6 +39,24 @@ export function readWallTime(text: string, timeZone: string): WallTime | null {
   return { kind: 'never', readings: [reading(after), reading(before)] }
 }
 
+/**
+ * The instant at which a day (2026-11-14) begins in the zone, ISO 8601 in UTC: its first midnight, or the jump of the clocks
+ * that left midnight out.
+ *
+ * @throws {RangeError} if it is no day of the calendar
+ */
+export function dayStart(day: string, timeZone: string): string {
+  const midnight = readWallTime(`${day} 00:00`, timeZone)
+  if (!midnight) throw new RangeError(`day must be a day of the calendar, as 2026-11-14: got ${day}`)
+  return midnight.kind === 'never' ? midnight.readings[1].iso : midnight.readings[0].iso
+}
+
+/** The instant at which the day after this one begins in the zone. */
+export function dayEnd(day: string, timeZone: string): string {
+  const next = new Date(Date.parse(`${day}T00:00:00Z`) + DAY_MS)
+  return dayStart(next.toISOString().slice(0, 10), timeZone)
+}
+
 /** What clocks of the zone showed at an instant: 2026-10-25 02:30, with seconds where there are any. */
 export function wallTimeOf(iso: string, timeZone: string): string {
   const ms = Date.parse(iso)
