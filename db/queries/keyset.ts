@@ -48,8 +48,22 @@ const cursorSchema = z.tuple([
 /** Whether PostgreSQL could take the text for a value of the kind; a cursor may have been written by hand. */
 const isValue: Record<SortKey['kind'], (text: string) => boolean> = {
   text: (text) => !/\0|\p{Surrogate}/u.test(text),
-  number: (text) => /^-?\d+(\.\d+)?(e[+-]?\d+)?$/.test(text) && Number.isFinite(Number(text)),
-  instant: (text) => /^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d\.\d{6}Z$/.test(text) && !Number.isNaN(Date.parse(text)),
+  number: isDouble,
+  instant: isInstant,
+}
+
+/** PostgreSQL refuses what is too large, and also what is so small that it would become 0. */
+function isDouble(text: string): boolean {
+  if (!/^-?\d+(\.\d+)?(e[+-]?\d+)?$/.test(text)) return false
+  const value = Number(text)
+  return Number.isFinite(value) && (value !== 0 || /^[-0.]+(e|$)/.test(text))
+}
+
+/** JavaScript takes the 30th of February for a day in March, and knows a year 0; PostgreSQL refuses both. */
+function isInstant(text: string): boolean {
+  if (!/^\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d\.\d{6}Z$/.test(text) || text.startsWith('0000')) return false
+  const date = new Date(text)
+  return !Number.isNaN(date.getTime()) && date.toISOString().slice(0, 19) === text.slice(0, 19)
 }
 
 /** The value as text that PostgreSQL reads again to the last digit, whatever the session’s settings. */

@@ -149,7 +149,11 @@ describe('cursors', () => {
   test.each([
     ['runs.started', 'started', 'yesterday'],
     ['runs.started', 'started', '2026-13-45T25:00:00.000000Z'],
+    ['runs.started', 'started', '2026-02-30T20:00:00.000000Z'],
+    ['runs.started', 'started', '0000-01-01T00:00:00.000000Z'],
     ['runs.size', 'size', '1e999'],
+    ['runs.size', 'size', '1e-999'],
+    ['runs.size', 'size', `0.${'0'.repeat(400)}1`],
     ['runs.size', 'size', 'NaN'],
     ['runs.size', 'size', null],
     ['runs.name', 'name', 'a\0b'],
@@ -166,6 +170,15 @@ const within = (instant: string | null, from: string, to: string) =>
   instant !== null && instant.slice(0, 10) >= from && instant.slice(0, 10) <= to
 
 describe('filters', () => {
+  test.each(['from', 'to'])('a day that the calendar does not have is refused (%s)', async (field) => {
+    for (const day of ['0000-01-01', '2026-02-30', '2026-2-3', '+12026-01-01']) {
+      const response = await ask('runs', { [field]: day })
+      expect([day, response.status]).toEqual([day, 422])
+      expect(Object.keys((await response.json()).error.fields)).toEqual([field])
+    }
+    for (const day of ['1900-01-01', '2999-12-31']) expect((await ask('runs', { [field]: day })).status).toBe(200)
+  })
+
   test('a run without what the list does not show', async () => {
     const { rows } = await get('runs', { limit: '1' })
     for (const field of ['facts', 'importSettings', 'conversion', 'fileSha256'])
