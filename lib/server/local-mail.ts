@@ -1,5 +1,7 @@
 import 'server-only'
 import { readFile } from 'node:fs/promises'
+import { isIP } from 'node:net'
+import { hostname } from 'node:os'
 import { join } from 'node:path'
 import { simpleParser, type AddressObject } from 'mailparser'
 import { instantOfLocalMail, isLocalMailName, listLocalMails } from '@/db/mail/local-mail-folder'
@@ -12,13 +14,26 @@ import { AppError } from './errors'
 const LOOPBACK_HOST = /^(localhost|127(\.\d{1,3}){3}|\[::1\])$/
 
 /**
+ * Whether the request was made to this machine by a name of its own or by a number. A page of another site, open in a browser
+ * here, can let its own name lead to this machine; then the connection is local, and only the name tells.
+ */
+function isToThisMachine(headers: Headers): boolean {
+  const host = headers.get('host') ?? ''
+  if (!URL.canParse(`http://${host}`)) return false
+  const name = new URL(`http://${host}`).hostname
+  return (
+    isIP(name.replace(/^\[|\]$/g, '')) !== 0 || /^(.+\.)?localhost$/.test(name) || name === hostname().toLowerCase()
+  )
+}
+
+/**
  * The folder of the local mails, or null where there are none to be seen: mail really goes out, people use a public
- * address, or the asker sits at another machine. Whoever reads these mails can take over any account.
+ * address, or the asker sits at another machine or is another site's page. Whoever reads these mails can take over any account.
  */
 export function openLocalMailFolder(headers: Headers): string | null {
   const { localMailFolder, baseOrigin } = environment()
   const isPublic = baseOrigin !== null && !LOOPBACK_HOST.test(new URL(baseOrigin).hostname)
-  return isPublic || !isFromThisMachine(headers) ? null : localMailFolder
+  return isPublic || !isFromThisMachine(headers) || !isToThisMachine(headers) ? null : localMailFolder
 }
 
 /** @throws {AppError} not-found where there is no such folder */

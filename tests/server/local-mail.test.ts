@@ -1,3 +1,4 @@
+import { hostname } from 'node:os'
 import nodemailer from 'nodemailer'
 import { afterEach, beforeEach, describe, expect, test } from 'vitest'
 import * as mail from '@/app/api/local-mail/[mailName]/route'
@@ -97,19 +98,29 @@ async function firstName() {
 }
 
 describe.each(everything)('%s', (_name, ask) => {
-  test('is there for this machine', async () => {
-    expect((await ask({ headers: HERE })).ok).toBe(true)
-  })
+  test.each(['localhost:3000', '127.0.0.1:3000', '[::1]:3000', '192.0.2.1', hostname()])(
+    'is there for this machine, under the name %s',
+    async (host) => {
+      expect((await ask({ headers: { ...HERE, host }, origin: `http://${host}` })).ok).toBe(true)
+    },
+  )
 
   test.each([
     ['mail really goes out', { LOCAL_MAIL_FOLDER: '' }, HERE],
     ['people use a public address', { BASE_URL: 'https://turnwright.example.org' }, HERE],
     ['another machine asks', {}, THERE],
+    ['a page of another site leads its own name here', {}, { ...HERE, host: 'elsewhere.example:3000' }],
+    ['the name only looks like ours', {}, { ...HERE, host: 'localhost.elsewhere.example' }],
+    ['there is no name at all', {}, { ...HERE, host: '' }],
     ['the asker is not known', { TURNWRIGHT_MARKS_ADDRESS: '' }, HERE],
   ])('is not there where %s', async (_, variables, headers) => {
-    const origin = 'BASE_URL' in variables ? variables.BASE_URL : undefined
+    const ofHost = 'host' in headers ? `http://${headers.host || 'localhost:3000'}` : undefined
+    const origin = 'BASE_URL' in variables ? variables.BASE_URL : ofHost
     Object.assign(process.env, variables)
-    expect((await ask({ headers, origin })).status).toBe(404)
+    // Without a name the origin can't be ours either, so that a change is refused before.
+    expect([404, ...('host' in headers && headers.host === '' ? [403] : [])]).toContain(
+      (await ask({ headers, origin })).status,
+    )
   })
 })
 
