@@ -75,6 +75,9 @@ export function findMentionForMail(
     )
     .innerJoin('users', 'users.id', 'noteMentions.userId')
     .innerJoin('users as actors', (join) => join.on('actors.id', '=', actorId))
+    .innerJoin('memberships as actorMemberships', (join) =>
+      join.onRef('actorMemberships.projectId', '=', 'projects.id').onRef('actorMemberships.userId', '=', 'actors.id'),
+    )
     .where('noteMentions.noteId', '=', noteId)
     .where('noteMentions.userId', '=', userId)
     .where('users.email', 'is not', null)

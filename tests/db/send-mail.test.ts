@@ -209,6 +209,18 @@ const nothingToSend: [string, () => Promise<MailJob>][] = [
       return { kind: 'mention', noteId, userId: stranger.id, actorId: owner.id }
     },
   ],
+  [
+    'a mention by somebody who has been removed since',
+    async () => {
+      const { viewer, stranger } = project.people
+      await database.db
+        .insertInto('noteMentions')
+        .values({ noteId, userId: viewer.id })
+        .onConflict((conflict) => conflict.doNothing())
+        .execute()
+      return { kind: 'mention', noteId, userId: viewer.id, actorId: stranger.id }
+    },
+  ],
 ]
 
 test.each(nothingToSend)('nothing is sent for %s, and the job is done', async (_, makeJob) => {
