@@ -44,7 +44,8 @@ export async function planDeletion(db: Kysely<Database>, userId: string): Promis
 
 /**
  * Empties an account: projects of which it is the only member go, its name is taken off what it made elsewhere, and nothing
- * opens it any more. Changes of people in its projects wait until the transaction ends.
+ * opens it any more. Changes of people in its projects wait until the transaction ends. The account is locked already, so that it
+ * joins nothing meanwhile (`lockUser`).
  *
  * @returns what was in the way, in which case nothing was changed
  */

@@ -1,6 +1,7 @@
 import { sql, type Kysely } from 'kysely'
 import type { Database } from '../schema'
 import type { EmailTokensTable } from '../tables/accounts'
+import { withdrawChangeEmail } from './mail-jobs'
 
 interface Wanted {
   tokenSha256: string
@@ -29,7 +30,11 @@ export function takeEmailToken(db: Kysely<Database>, { tokenSha256, purpose }: W
     .executeTakeFirst()
 }
 
-/** Ends every link that was sent to a person, whatever for: a password or an address that changed leaves none behind. */
+/**
+ * Ends every link that was sent to a person, whatever for, and the one to a new address that waits to be sent: it would be
+ * written days later, long after the password of whoever asked for it was changed.
+ */
 export async function deleteEmailTokens(db: Kysely<Database>, userId: string): Promise<void> {
+  await withdrawChangeEmail(db, userId)
   await db.deleteFrom('emailTokens').where('userId', '=', userId).execute()
 }

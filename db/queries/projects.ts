@@ -6,6 +6,7 @@ import { accessProject, type ProjectAccess } from './access'
 import { insertDriveTrain } from './drive-trains'
 import { changedMeanwhile } from './changed-meanwhile'
 import { Refusal, unknownThing } from './refusal'
+import { lockUser } from './users'
 
 const count = (table: 'runs' | 'analyses' | 'memberships') =>
   sql<number>`(select count(*)::int from ${sql.table(table)} where project_id = projects.id)`
@@ -66,6 +67,7 @@ export interface NewProject {
 
 /** Makes a project whose maker owns it; a transaction, since a project without an owner must never be seen. */
 export async function insertProject(trx: Transaction<Database>, userId: string, { name, driveTrain }: NewProject) {
+  if (!(await lockUser(trx, userId))) throw unknownThing('account')
   const { id: projectId } = await trx
     .insertInto('projects')
     .values({ name, createdBy: userId, updatedBy: userId })

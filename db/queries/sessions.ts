@@ -1,6 +1,21 @@
 import { sql, type Kysely } from 'kysely'
 import type { Database } from '../schema'
 
+export interface NewSession {
+  /** SHA-256 of the token in the cookie. */
+  id: string
+  userId: string
+  userAgent: string | null
+  validDays: number
+}
+
+export async function insertSession(db: Kysely<Database>, { validDays, ...session }: NewSession): Promise<void> {
+  await db
+    .insertInto('sessions')
+    .values({ ...session, expiresAt: sql<Date>`now() + make_interval(days => ${validDays})` })
+    .execute()
+}
+
 export async function touchSession(db: Kysely<Database>, sessionId: string): Promise<void> {
   await db
     .updateTable('sessions')

@@ -1,4 +1,4 @@
-import { sql, type Kysely } from 'kysely'
+import { sql, type Kysely, type Transaction } from 'kysely'
 import type { Database } from '../schema'
 import type { SignUpsTable } from '../tables/accounts'
 
@@ -24,6 +24,17 @@ export function findSignUp(db: Kysely<Database>, tokenSha256: string) {
     .where('tokenSha256', '=', tokenSha256)
     .where('expiresAt', '>', sql<Date>`now()`)
     .executeTakeFirst()
+}
+
+/** Whoever gives this address to an account waits here for the other, or each would wait for rows that the other deletes. */
+export async function lockSignUpsOf(trx: Transaction<Database>, email: string): Promise<void> {
+  await trx
+    .selectFrom('signUps')
+    .select('id')
+    .where(sql<string>`lower(email)`, '=', email.toLowerCase())
+    .orderBy('id')
+    .forUpdate()
+    .execute()
 }
 
 /** Takes one out, so that two who follow the link at once can't both use it; false for the second. */

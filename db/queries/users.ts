@@ -52,6 +52,24 @@ export function updatePreferences(
     .executeTakeFirst()
 }
 
+/**
+ * An account that neither gets another password nor is deleted until the transaction ends, for what rests on one of both.
+ * Comes before every other lock. @returns undefined for a deleted account
+ */
+export async function lockUser(
+  trx: Transaction<Database>,
+  userId: string,
+): Promise<{ passwordHash: string } | undefined> {
+  const row = await trx
+    .selectFrom('users')
+    .select('passwordHash')
+    .where('id', '=', userId)
+    .where('deletedAt', 'is', null)
+    .forNoKeyUpdate()
+    .executeTakeFirst()
+  return row?.passwordHash ? { passwordHash: row.passwordHash } : undefined
+}
+
 /** For asking for the password again; undefined for a deleted account. */
 export async function findPasswordHash(db: Kysely<Database>, userId: string): Promise<string | undefined> {
   const row = await db.selectFrom('users').select('passwordHash').where('id', '=', userId).executeTakeFirst()

@@ -2,18 +2,20 @@ import 'server-only'
 import { NodePostgresAdapter } from '@lucia-auth/adapter-postgresql'
 import { Lucia, TimeSpan } from 'lucia'
 import { database, databasePool } from '@/db'
-import { touchSession } from '@/db/queries/sessions'
+import { insertSession, touchSession } from '@/db/queries/sessions'
+import { lockUser } from '@/db/queries/users'
 import { newToken, sha256Of } from '@/db/tokens'
 import type { DisplacementUnit, Preferences, SwingMeasure, ThemeName } from '@/lib/schemas/preferences'
 import { environment } from './environment'
-import { notSignedIn } from './errors'
+import { notSignedIn, wrongCredentials } from './errors'
 
 declare module 'lucia' {
   interface Register {
     Lucia: ReturnType<typeof createLucia>
     DatabaseUserAttributes: {
       display_name: string
-      email: string
+      /** Null: the account was deleted. */
+      email: string | null
       theme: ThemeName | null
       swing_measure: SwingMeasure
       displacement_unit: DisplacementUnit
@@ -37,6 +39,9 @@ export function cookieAttributes() {
   return { sameSite: 'lax', path: '/', secure: environment().baseOrigin?.startsWith('https:') ?? false } as const
 }
 
+/** Counted anew whenever the session is used in the second half of them. */
+const SESSION_DAYS = 30
+
 /** A session that is used is noted at most this often, so that reading pages does not write each time. */
 const SEEN_EVERY_MS = 5 * 60_000
 
@@ -47,7 +52,7 @@ const SEEN_EVERY_MS = 5 * 60_000
 function createLucia() {
   const adapter = new NodePostgresAdapter(databasePool(), { user: 'users', session: 'sessions' })
   return new Lucia(adapter, {
-    sessionExpiresIn: new TimeSpan(30, 'd'),
+    sessionExpiresIn: new TimeSpan(SESSION_DAYS, 'd'),
     sessionCookie: {
       name: SESSION_COOKIE,
       expires: false,
@@ -79,7 +84,8 @@ export async function validateToken(token: string | null | undefined): Promise<S
   if (!token) return null
   const { user, session } = await lucia().validateSession(sha256Of(token))
   if (session && Date.now() - session.lastSeenAt.getTime() > SEEN_EVERY_MS) await touchSession(database(), session.id)
-  return user && { id: user.id, displayName: user.displayName, email: user.email, preferences: user.preferences }
+  if (!user?.email) return null
+  return { id: user.id, displayName: user.displayName, email: user.email, preferences: user.preferences }
 }
 
 function tokenOf(request: Request): string | null {
@@ -103,16 +109,24 @@ export async function requireUser(request: Request): Promise<SignedInUser> {
   return user
 }
 
-/** Opens a session, and sweeps out the expired ones; the answer is the Set-Cookie header that carries its token. */
-export async function openSession(request: Request, userId: string): Promise<string> {
+/**
+ * Opens a session, and sweeps out the expired ones; the answer is the Set-Cookie header that carries its token.
+ *
+ * @param provenHash what the given password was compared with: whoever changes it ends all sessions, and one that opens at
+ *   the same moment must not outlive that
+ * @throws {AppError} wrong-credentials once the account has another password or is gone
+ */
+export async function openSession(request: Request, userId: string, provenHash?: string): Promise<string> {
   const token = newToken()
   await lucia().deleteExpiredSessions()
   const userAgent = request.headers.get('user-agent')?.slice(0, 300) ?? null
-  await lucia().createSession(
-    userId,
-    { user_agent: userAgent, last_seen_at: new Date() },
-    { sessionId: sha256Of(token) },
-  )
+  await database()
+    .transaction()
+    .execute(async (trx) => {
+      const user = await lockUser(trx, userId)
+      if (!user || (provenHash !== undefined && user.passwordHash !== provenHash)) throw wrongCredentials()
+      await insertSession(trx, { id: sha256Of(token), userId, userAgent, validDays: SESSION_DAYS })
+    })
   return lucia().createSessionCookie(token).serialize()
 }
 

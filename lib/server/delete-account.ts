@@ -4,7 +4,7 @@ import { database } from '@/db'
 import { deleteAccount } from '@/db/queries/account-deletion'
 import { enqueueMail } from '@/db/queries/mail-jobs'
 import type { deleteAccountSchema } from '@/lib/schemas/accounts'
-import { confirmPassword } from './account'
+import { assertStillPassword, confirmPassword } from './account'
 import type { SignedInUser } from './auth'
 import { AppError } from './errors'
 
@@ -17,10 +17,11 @@ export async function removeAccount(
     const message = 'This is not the address of your account'
     throw new AppError('not-valid', message, { fields: { email: message } })
   }
-  await confirmPassword(id, form.password)
+  const provenHash = await confirmPassword(id, form.password)
   await database()
     .transaction()
     .execute(async (trx) => {
+      await assertStillPassword(trx, id, provenHash)
       const blocking = await deleteAccount(trx, { id, email })
       if (blocking.length > 0) {
         const names = blocking.map(({ name }) => `“${name}”`).join(', ')

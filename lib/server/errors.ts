@@ -79,6 +79,11 @@ export function notSignedIn(): AppError {
   )
 }
 
+/** The same for an unknown address, a wrong password, and one that was right until a moment ago. */
+export function wrongCredentials(): AppError {
+  return new AppError('wrong-credentials', 'The e-mail address or the password is not right')
+}
+
 export function unreadableFile({ code, message, row, column }: ImportFault): AppError {
   return new AppError(code, message, { row, column })
 }

@@ -8,11 +8,13 @@ import { insertAuditEvent } from '@/db/queries/audit'
 import { copyAnalysis, copyCorrection, copyProject, copyRun, copyTrail, risingIds } from '@/db/queries/project-copy'
 import { findProject } from '@/db/queries/projects'
 import { insertRunFile } from '@/db/queries/run-files'
+import { lockUser } from '@/db/queries/users'
 import type { Database } from '@/db/schema'
 import type { ArchiveAnalysis, ArchiveCorrection } from '@/lib/schemas/archive'
 import { badArchive } from './archive-fault'
 import { ArchiveFile, inTemporaryFolder, receiveArchive } from './archive-file'
 import { checkArchive, readArchiveJson, readOriginal, type CheckedArchive } from './check-archive'
+import { notSignedIn } from './errors'
 import { createGate } from './gate'
 import { accountLimit, addressLimit, takeAttempt } from './rate-limit'
 
@@ -62,6 +64,8 @@ async function writeProject(trx: Transaction<Database>, { archive, checked, user
   }
   await copyTrail(trx, access, checked.events)
   await insertAuditEvent(trx, access, { action: 'project.import', subject: checked.project.name })
+  // Last, since it may have taken minutes: an account that was deleted meanwhile gets no project.
+  if (!(await lockUser(trx, userId))) throw notSignedIn()
   return findProject(trx, access)
 }
 

@@ -3,10 +3,10 @@ import type { z } from 'zod'
 import { database } from '@/db'
 import { insertAccountEvent } from '@/db/queries/audit'
 import { acceptInvitation, findInvitationLink, lockInvitation, openInvitation } from '@/db/queries/invitation-links'
-import { insertUser } from '@/db/queries/users'
+import { insertUser, lockUser } from '@/db/queries/users'
 import { sha256Of } from '@/db/tokens'
 import type { invitationSignUpSchema } from '@/lib/schemas/people'
-import { AppError } from './errors'
+import { AppError, notSignedIn } from './errors'
 import { hashPassword } from './passwords'
 import { addressLimit, unlessGuessing } from './rate-limit'
 
@@ -15,7 +15,11 @@ export function joinWithLink(request: Request, userId: string, token: string) {
   return unlessGuessing(addressLimit('invitation link address', request), () =>
     database()
       .transaction()
-      .execute(async (trx) => acceptInvitation(trx, await lockInvitation(trx, sha256Of(token)), userId)),
+      .execute(async (trx) => {
+        // An account that is being deleted would stay in the project, perhaps as its only owner.
+        if (!(await lockUser(trx, userId))) throw notSignedIn()
+        return acceptInvitation(trx, await lockInvitation(trx, sha256Of(token)), userId)
+      }),
   )
 }
 

@@ -5,8 +5,8 @@ import { deleteEmailTokens, findEmailToken, takeEmailToken } from '@/db/queries/
 import { enqueueMail } from '@/db/queries/mail-jobs'
 import { returnAttempt } from '@/db/queries/rate-limits'
 import { deleteSessions } from '@/db/queries/sessions'
-import { deleteSignUpsOf, findSignUp, takeSignUp } from '@/db/queries/sign-ups'
-import { insertUser, updateEmail } from '@/db/queries/users'
+import { deleteSignUpsOf, findSignUp, lockSignUpsOf, takeSignUp } from '@/db/queries/sign-ups'
+import { insertUser, lockUser, updateEmail } from '@/db/queries/users'
 import { sha256Of } from '@/db/tokens'
 import { sessionIdOf } from './auth'
 import { AppError } from './errors'
@@ -70,6 +70,7 @@ async function makeAccount({ id, email, displayName, passwordHash, nextPath }: S
   const user = await database()
     .transaction()
     .execute(async (trx) => {
+      await lockSignUpsOf(trx, email)
       if (!(await takeSignUp(trx, id))) throw linkEnded()
       const made = await insertUser(trx, { displayName, email, passwordHash })
       if (made) await insertAccountEvent(trx, made.id, { action: 'account.sign-up', subject: email })
@@ -82,12 +83,16 @@ async function makeAccount({ id, email, displayName, passwordHash, nextPath }: S
 
 /** The session in which the link was followed stays when it is the same person's; wherever else they are signed in, they are not any more. */
 async function changeEmail(request: Request, tokenSha256: string) {
+  const link = { tokenSha256, purpose: 'change-email' } as const
+  const found = await findEmailToken(database(), link)
+  if (!found) throw linkEnded()
+  const { userId, email: wanted } = found
   const email = await database()
     .transaction()
     .execute(async (trx) => {
-      const token = await takeEmailToken(trx, { tokenSha256, purpose: 'change-email' })
-      if (!token) throw linkEnded()
-      const { userId, email: wanted } = token
+      await lockUser(trx, userId)
+      await lockSignUpsOf(trx, wanted)
+      if (!(await takeEmailToken(trx, link))) throw linkEnded()
       const oldEmail = await updateEmail(trx, userId, wanted)
       if (oldEmail === undefined) throw addressInUse(wanted)
       await deleteEmailTokens(trx, userId)

@@ -6,7 +6,7 @@ import { deleteEmailTokens, findEmailToken, takeEmailToken } from '@/db/queries/
 import { enqueueMail } from '@/db/queries/mail-jobs'
 import { deleteExpiredLimits, forgetAttempts } from '@/db/queries/rate-limits'
 import { deleteSessions } from '@/db/queries/sessions'
-import { updatePasswordHash } from '@/db/queries/users'
+import { lockUser, updatePasswordHash } from '@/db/queries/users'
 import { sha256Of } from '@/db/tokens'
 import type { askResetSchema, resetPasswordSchema } from '@/lib/schemas/accounts'
 import { AppError } from './errors'
@@ -25,11 +25,14 @@ export async function askReset(request: Request, { email }: z.output<typeof askR
 export function resetPassword(request: Request, { token, password }: z.output<typeof resetPasswordSchema>) {
   return unlessGuessing(addressLimit('mail link address', request), async () => {
     const link = { tokenSha256: sha256Of(token), purpose: 'reset-password' } as const
-    if (!(await findEmailToken(database(), link))) throw linkEnded()
+    const found = await findEmailToken(database(), link)
+    if (!found) throw linkEnded()
     const passwordHash = await hashPassword(password)
     const { userId, email } = await database()
       .transaction()
       .execute(async (trx) => {
+        // Two links of one person would each wait for what the other has deleted.
+        await lockUser(trx, found.userId)
         const taken = await takeEmailToken(trx, link)
         if (!taken || !(await updatePasswordHash(trx, taken.userId, passwordHash))) throw linkEnded()
         await deleteEmailTokens(trx, taken.userId)

@@ -87,13 +87,10 @@ describe('the address', () => {
     for (const email of [other.email, 'free@example.org']) {
       const response = await post(changeEmail, { email, password: PASSWORD }, person.cookie)
       answers.push({ status: response.status, body: await response.text(), headers: [...response.headers] })
+      expect(await takeMailJobs(database.db)).toEqual([{ kind: 'change-email', userId: person.id, email }])
     }
     expect(answers[0]).toEqual(answers[1])
     expect(answers[0].status).toBe(202)
-    expect(await takeMailJobs(database.db)).toEqual([
-      { kind: 'change-email', userId: person.id, email: other.email },
-      { kind: 'change-email', userId: person.id, email: 'free@example.org' },
-    ])
     expect((await whoIs(person.cookie)).email).toBe(person.email)
   })
 
