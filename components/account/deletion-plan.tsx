@@ -17,7 +17,7 @@ function contents({ runCount, analysisCount, correctionCount }: Deletion['lost']
 /** What deleting the account takes along, what stays, and what is in the way. */
 export function DeletionPlan({ plan: { blocking, lost, left } }: { plan: Deletion }) {
   return (
-    <div className="flex max-w-[70ch] flex-col gap-3">
+    <div className="flex max-w-[70ch] flex-col gap-3 wrap-anywhere">
       {blocking.length > 0 ? (
         <Notice tone="warning" title="Somebody else must be owner first">
           <p>You are the only owner of projects in which others work. Make one of them an owner; then come back.</p>

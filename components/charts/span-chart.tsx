@@ -32,7 +32,7 @@ export function SpanChart({ spans, summary, display = PLAIN_DISPLAY }: SpanChart
           <dt className="max-sm:text-sm">{row.name}</dt>
           <dd className="flex items-center gap-2.5">
             <span
-              className={`block h-4.5 rounded-[2px] ${row.look}`}
+              className={`block h-4.5 rounded-[2px] print:[print-color-adjust:exact] ${row.look}`}
               style={{ width: `${(82 * row.arcsec) / longest}%` }}
             />
             <span className="figures">{sizedDisplacement(row.arcsec, display)}</span>

@@ -76,7 +76,7 @@ const columnsIn = ({ day }: Dates, display: Display): readonly ListColumn<Analys
     header: 'On',
     isSecondary: true,
     startsDescending: true,
-    cell: ({ createdAt }) => day(createdAt),
+    cell: ({ createdAt }) => <span className="whitespace-nowrap">{day(createdAt)}</span>,
   },
 ]
 

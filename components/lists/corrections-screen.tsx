@@ -66,7 +66,7 @@ const columnsIn = ({ day }: Dates): readonly ListColumn<CorrectionSummary>[] => 
     header: 'On',
     isSecondary: true,
     startsDescending: true,
-    cell: ({ createdAt }) => day(createdAt),
+    cell: ({ createdAt }) => <span className="whitespace-nowrap">{day(createdAt)}</span>,
   },
 ]
 

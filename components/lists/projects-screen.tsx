@@ -60,7 +60,7 @@ const columnsIn = ({ day }: Dates): readonly ListColumn<ProjectSummary>[] => [
     header: 'Changed',
     isSecondary: true,
     startsDescending: true,
-    cell: ({ updatedAt }) => day(updatedAt),
+    cell: ({ updatedAt }) => <span className="whitespace-nowrap">{day(updatedAt)}</span>,
   },
 ]
 

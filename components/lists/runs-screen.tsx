@@ -36,7 +36,9 @@ const columnsIn = ({ zoneName, dayAndTime }: Dates): readonly ListColumn<RunSumm
     id: 'started',
     header: `Recorded, ${zoneName}`,
     startsDescending: true,
-    cell: ({ startedAt }) => (startedAt ? dayAndTime(startedAt) : 'time unknown'),
+    cell: ({ startedAt }) => (
+      <span className="sm:whitespace-nowrap">{startedAt ? dayAndTime(startedAt) : 'time unknown'}</span>
+    ),
   },
   {
     id: 'rows',

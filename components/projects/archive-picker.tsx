@@ -44,7 +44,7 @@ export function ArchivePicker({ onFile, isBusy }: { onFile: (file: File) => void
       >
         <p className="text-finding font-semibold">Drop a project’s archive here</p>
         <p className="max-w-[55ch] text-sm text-soft">
-          The ZIP that “Download everything” in a project’s settings gave, as it is, up to 1 GB.
+          The ZIP that “Download everything” in a project’s settings gave, as it is, up to 1 GB.
         </p>
         <input
           ref={input}

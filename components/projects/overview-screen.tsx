@@ -205,10 +205,13 @@ function Stacked({ estimate }: { estimate: Estimate }) {
   )
 }
 
+const PEOPLE_SHOWN = 8
+
 function ProjectFacts({ project }: { project: Project }) {
   const { data } = useMembers(project.id)
   const { wheelTeeth, wormStarts, stages } = project.driveTrain
   const base = `/projects/${project.id}`
+  const moreCount = (data?.members.length ?? 0) - PEOPLE_SHOWN
   return (
     <>
       <h3 className="text-sm font-semibold text-soft">This mount</h3>
@@ -224,12 +227,19 @@ function ProjectFacts({ project }: { project: Project }) {
       </p>
       <h3 className="mt-4 text-sm font-semibold text-soft">People</h3>
       <dl>
-        {data?.members.map(({ userId, displayName, role }) => (
+        {data?.members.slice(0, PEOPLE_SHOWN).map(({ userId, displayName, role }) => (
           <FactRow key={userId} name={displayName}>
             <span className="font-sans">{role}</span>
           </FactRow>
         ))}
       </dl>
+      {moreCount > 0 ? (
+        <p className="mt-2 text-sm">
+          <Link className="link" href={`${base}/people`}>
+            {`And ${counted(moreCount, 'more person', 'more people')}`}
+          </Link>
+        </p>
+      ) : null}
     </>
   )
 }

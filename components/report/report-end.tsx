@@ -35,6 +35,7 @@ export function ReportNotes({ notes }: { notes: readonly ReportNote[] }) {
             </p>
             <p className="text-sm text-soft">
               {note.authorName}, {formatDay(note.createdAt)}, {anchorText(note.anchor)}
+              {note.isSettled ? ', settled' : null}
             </p>
           </li>
         ))}

@@ -15,22 +15,17 @@ export function numberReportNotes(notes: readonly SharedNote[]): ReportNote[] {
 
 /** The marks that the pictures draw. */
 export function noteMarks(notes: readonly ReportNote[]) {
-  const times: { number: number; timeSeconds: number }[] = []
-  const periods: { number: number; periodSeconds: number }[] = []
+  const times: { number: number; timeSeconds: number; isSettled: boolean }[] = []
+  const periods: { number: number; periodSeconds: number; isSettled: boolean }[] = []
   const angles: { id: string; label: string; number: number; angleDegrees: number; isSettled: boolean }[] = []
   for (const { number, note } of notes) {
     if (number === null) continue
-    if (note.anchor.kind === 'time') times.push({ number, timeSeconds: note.anchor.timeSeconds })
-    if (note.anchor.kind === 'period') periods.push({ number, periodSeconds: note.anchor.periodSeconds })
-    if (note.anchor.kind === 'worm-angle') {
-      const { angleDegrees } = note.anchor
-      angles.push({
-        id: `note-${number}`,
-        label: `Note ${number}, ${anchorText(note.anchor)}`,
-        number,
-        angleDegrees,
-        isSettled: false,
-      })
+    const { anchor, isSettled } = note
+    if (anchor.kind === 'time') times.push({ number, timeSeconds: anchor.timeSeconds, isSettled })
+    if (anchor.kind === 'period') periods.push({ number, periodSeconds: anchor.periodSeconds, isSettled })
+    if (anchor.kind === 'worm-angle') {
+      const label = `Note ${number}, ${anchorText(anchor)}`
+      angles.push({ id: `note-${number}`, label, number, angleDegrees: anchor.angleDegrees, isSettled })
     }
   }
   return { times, periods, angles }

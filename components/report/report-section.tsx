@@ -1,4 +1,5 @@
 import { useId, type ReactNode } from 'react'
+import { classNames } from '@/components/ui/class-names'
 import { FindingText } from '@/components/findings/finding-text'
 import type { Finding } from '@/lib/findings/finding'
 
@@ -36,7 +37,12 @@ interface ReportFactsProps {
 /** Name and figure pairs, in two columns where there is room. */
 export function ReportFacts({ rows, isOneColumn = false }: ReportFactsProps) {
   return (
-    <dl className={isOneColumn ? undefined : 'grid grid-cols-2 gap-x-8 max-sm:grid-cols-1 print:grid-cols-2'}>
+    <dl
+      className={classNames(
+        'break-inside-avoid',
+        !isOneColumn && 'grid grid-cols-2 gap-x-8 max-sm:grid-cols-1 print:grid-cols-2',
+      )}
+    >
       {rows.map(([name, figure]) => (
         <div key={name} className="flex items-baseline justify-between gap-3 border-b border-rule py-1 text-sm">
           <dt className="text-soft">{name}</dt>

@@ -15,6 +15,9 @@ import { PrintedAddress, ReportTitle, type Sharing } from './report-title'
 import { useReportViews } from './use-report-views'
 import './report.css'
 
+/** Engines differ in the last bits of sines and logarithms; a figure shows five digits at the most. */
+const ROUNDING = 1e-9
+
 interface ReportSheetProps {
   mountName: string
   subject: SharedAnalysis
@@ -39,7 +42,9 @@ export function ReportSheet({ mountName, subject, sharing, columnsUrl }: ReportS
   const notes = useMemo(() => numberReportNotes(subject.notes), [subject.notes])
   const marks = useMemo(() => noteMarks(notes), [notes])
   const recomputed = saved && computed ? recomputedText(saved, computed) : null
-  const isDifferent = saved !== null && computed !== null && !compareResults(saved, computed).isSame
+  // What another browser's rounding changes can't be seen in any figure: it stands with the versions, not above the report.
+  const isDifferent =
+    saved !== null && computed !== null && compareResults(saved, computed).largestRelativeDifference > ROUNDING
   const failure = outcome && !outcome.ok ? outcome : null
 
   return (

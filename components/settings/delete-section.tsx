@@ -24,7 +24,10 @@ export function DeleteSection({ project }: { project: Project }) {
 
   return (
     <div className="flex max-w-[65ch] flex-col gap-3">
-      <p>All that is in it is deleted for good, for everybody. To put it away and keep it, archive it instead.</p>
+      <p>
+        All that is in it is deleted for good, for everybody.
+        {project.archivedAt ? null : ' To put it away and keep it, archive it instead.'}
+      </p>
       <div>
         <Button variant="danger" onClick={() => setAsking(true)}>
           Delete this project

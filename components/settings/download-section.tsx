@@ -7,7 +7,7 @@ export function DownloadSection({ projectId }: { projectId: string }) {
     <div className="flex max-w-[65ch] flex-col gap-3">
       <p>
         A ZIP with the original recordings byte for byte, all settings, figures, notes and correction tables, and the
-        trail of who did what, as CSV and JSON with a schema for each. No e-mail addresses are in it.
+        log of who did what, as CSV and JSON with a schema for each. No e-mail addresses are in it.
       </p>
       <div>
         <ButtonAnchor href={`/api/projects/${projectId}/archive`} download>
@@ -18,7 +18,7 @@ export function DownloadSection({ projectId }: { projectId: string }) {
         <Link className="link" href="/projects/import">
           Bring in an archive
         </Link>{' '}
-        makes a new project of such a file, here or on another server, up to 1 GB.
+        makes a new project of such a file, here or on another server, up to 1 GB.
       </p>
     </div>
   )

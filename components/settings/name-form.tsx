@@ -15,8 +15,16 @@ export function NameForm({ project, onSaved }: { project: Project; onSaved: (pro
   const [nameFault, setNameFault] = useState<string | null>(null)
   const { save, isBusy, fault, fields, conflict, dropConflict } = useSave(projectSchema)
 
-  if (!canManageProject(project)) return <p>{project.name} – only its owner changes the name.</p>
-  if (project.archivedAt) return <p>{project.name} – an archived project keeps its name.</p>
+  if (!canManageProject(project) || project.archivedAt) {
+    return (
+      <>
+        <p className="font-semibold wrap-anywhere">{project.name}</p>
+        <p className="text-sm text-soft">
+          {canManageProject(project) ? 'An archived project keeps its name.' : 'Only an owner changes the name.'}
+        </p>
+      </>
+    )
+  }
 
   async function send(version: number) {
     const parsed = projectChangeSchema.shape.name.safeParse(name)

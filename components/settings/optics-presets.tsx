@@ -26,7 +26,8 @@ export function OpticsPresets({ projectId, presets, whyReadOnly, onChanged }: Op
     <>
       {presets.length === 0 ? (
         <p className="text-soft">
-          Nothing is kept. Runs can still be brought in; each then asks for its image scale in ″/px.
+          Nothing is kept.{' '}
+          {canEdit ? 'Runs can still be brought in; each then asks for its image scale in ″/px.' : null}
         </p>
       ) : (
         <ul>
@@ -35,7 +36,7 @@ export function OpticsPresets({ projectId, presets, whyReadOnly, onChanged }: Op
               key={preset.id}
               className="flex flex-wrap items-center justify-between gap-x-6 gap-y-1 border-b border-rule py-2.5 first:pt-0"
             >
-              <span>
+              <span className="min-w-0 wrap-anywhere">
                 <span className="font-semibold">{preset.name}</span>
                 <span className="figures ml-3 text-sm">
                   {formatNumber(preset.imageScaleArcsecPerPx, 3, { unit: '″/px' })}

@@ -29,9 +29,11 @@ export function SettingsScreen({ projectId }: { projectId: string }) {
           <PageHeading
             crumbs={[{ label: shown.name, href: `/projects/${projectId}` }, { label: 'Settings' }]}
             title={
-              list.length === 0
-                ? 'No optics are kept yet, so each run asks for its image scale'
-                : `${capitalised(counted(list.length, 'set'))} of optics kept for the next run`
+              shown.archivedAt
+                ? 'This mount is put away until it is opened again'
+                : list.length === 0
+                  ? 'No optics are kept yet, so each run asks for its image scale'
+                  : `${capitalised(counted(list.length, 'set'))} of optics kept for the next run`
             }
           />
           <SheetSection title="Name" question="What people around this mount call it.">

@@ -21,7 +21,7 @@ export function PageHeading({ crumbs = [], title, lead, actions }: PageHeadingPr
     <div className="flex flex-wrap items-end justify-between gap-x-6 gap-y-3">
       <div className="max-w-[64rem] min-w-0">
         <Crumbs crumbs={crumbs} />
-        <h1 className="text-title font-[640] text-balance">{title}</h1>
+        <h1 className="text-title font-[640] text-balance wrap-anywhere">{title}</h1>
         {lead ? <p className="mt-1.5 max-w-[75ch] text-pretty text-soft">{lead}</p> : null}
       </div>
       {actions ? <div className="no-print flex flex-wrap gap-2">{actions}</div> : null}
@@ -36,7 +36,7 @@ export function Crumbs({ crumbs }: { crumbs: readonly Crumb[] }) {
     <nav aria-label="Where you are" className="mb-1 text-sm text-soft">
       <ol className="flex flex-wrap gap-x-1.5">
         {crumbs.map((crumb, index) => (
-          <li key={index} className="flex gap-x-1.5">
+          <li key={index} className="flex min-w-0 gap-x-1.5 wrap-anywhere">
             {index > 0 ? <span aria-hidden="true">/</span> : null}
             {crumb.href ? (
               <Link

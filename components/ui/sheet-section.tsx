@@ -65,7 +65,7 @@ export function Highlight({ children }: { children: ReactNode }) {
 export function FactRow({ name, children }: { name: ReactNode; children: ReactNode }) {
   return (
     <div className="flex items-baseline justify-between gap-3 border-b border-rule py-1.5 text-sm">
-      <dt>{name}</dt>
+      <dt className="wrap-anywhere">{name}</dt>
       <dd className="figures text-right">{children}</dd>
     </div>
   )

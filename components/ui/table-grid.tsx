@@ -47,6 +47,9 @@ export function TableGrid<Row, Column extends GridColumn>(props: TableGridProps<
                 const className = classNames(
                   'px-5 py-2.5 align-baseline font-normal max-sm:px-4',
                   column.isNumeric && 'figures text-right whitespace-nowrap',
+                  // A name without spaces breaks anywhere; the least width keeps it from becoming a column of letters.
+                  !column.isNumeric && !column.hasControls && 'wrap-anywhere',
+                  index === 0 ? 'min-w-28 sm:min-w-56' : !column.isNumeric && 'min-w-20',
                   column.isSecondary && 'max-sm:hidden',
                 )
                 return index === 0 ? (

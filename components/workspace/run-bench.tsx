@@ -6,7 +6,7 @@ import { Bench } from '@/components/bench/bench'
 import type { TableRequest } from '@/components/bench/make-table'
 import { ShareButton } from '@/components/share/share-dialog'
 import { Crumbs, type Crumb } from '@/components/shell/page-heading'
-import { Button } from '@/components/ui/button'
+import { Button, ButtonAnchor } from '@/components/ui/button'
 import { Notice } from '@/components/ui/notice'
 import { ENGINE_VERSION } from '@/lib/analysis/constants'
 import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
@@ -98,18 +98,24 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
         runLabel={label}
         crumbs={<Crumbs crumbs={crumbsOf(project, run, analysis)} />}
         actions={
-          isReadOnly ? null : (
-            <>
-              {analysis ? <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} /> : null}
-              {analysis ? <Button onClick={() => setRenaming(true)}>Rename</Button> : null}
-              {analysis && !isAsSaved ? (
-                <Button onClick={() => setRecipe(analysis.recipe)}>Back to the saved one</Button>
-              ) : null}
-              <Button variant="primary" disabled={!computed || isAsSaved} onClick={() => setNaming(true)}>
-                {analysis ? 'Save as a new analysis' : 'Save analysis'}
-              </Button>
-            </>
-          )
+          <>
+            {analysis && isAsSaved ? (
+              // A page of its own, loaded afresh: its margins on paper come with the nonce of its own answer.
+              <ButtonAnchor href={`/projects/${project.id}/analyses/${analysis.id}/report`}>Print report</ButtonAnchor>
+            ) : null}
+            {isReadOnly ? null : (
+              <>
+                {analysis ? <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} /> : null}
+                {analysis ? <Button onClick={() => setRenaming(true)}>Rename</Button> : null}
+                {analysis && !isAsSaved ? (
+                  <Button onClick={() => setRecipe(analysis.recipe)}>Back to the saved one</Button>
+                ) : null}
+                <Button variant="primary" disabled={!computed || isAsSaved} onClick={() => setNaming(true)}>
+                  {analysis ? 'Save as a new analysis' : 'Save analysis'}
+                </Button>
+              </>
+            )}
+          </>
         }
         notes={notes.notes}
         noteActions={notes.actions}

@@ -76,6 +76,7 @@ export async function findSharedReport(db: Kysely<Database>, { linkId, analysisI
       'notes.text',
       sql<string>`coalesce(notes.author_name, users.display_name)`.as('authorName'),
       'notes.createdAt',
+      sql<boolean>`notes.resolved_at is not null`.as('isSettled'),
     ])
     .where('shareLinkNotes.shareLinkId', '=', linkId)
     .where('notes.analysisId', '=', analysisId)

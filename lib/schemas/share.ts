@@ -68,10 +68,12 @@ const sharedNoteSchema = z.object({
   text: z.string(),
   authorName: z.string(),
   createdAt: instant,
+  isSettled: z.boolean(),
 })
 export type SharedNote = z.infer<typeof sharedNoteSchema>
 
-const sharedAnalysisSchema = z.object({
+/** One analysis with all that its report shows. */
+export const sharedAnalysisSchema = z.object({
   kind: z.literal('analysis'),
   name: z.string(),
   savedAt: instant,
