@@ -27,7 +27,7 @@ export function OpticsPresets({ projectId, presets, whyReadOnly, onChanged }: Op
       {presets.length === 0 ? (
         <p className="text-soft">
           Nothing is kept.{' '}
-          {canEdit ? 'Runs can still be brought in; each then asks for its image scale in ″/px.' : null}
+          {whyReadOnly === null ? 'Runs can still be brought in; each then asks for its image scale in ″/px.' : null}
         </p>
       ) : (
         <ul>

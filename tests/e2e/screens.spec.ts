@@ -168,6 +168,16 @@ const screens: Screen[] = [
       await reportIsDrawn(page)
     },
   },
+  {
+    name: 'report of a saved analysis',
+    isMembersOnly: true,
+    open: async (page) => {
+      await openFirstAnalysis(page)
+      await page.getByRole('link', { name: 'Print report' }).click()
+      await page.waitForURL(/\/report$/)
+      await reportIsDrawn(page)
+    },
+  },
   memberEntry('correction', 'corrections', false),
   memberVisit('people', '/people'),
   memberVisit('settings', '/settings'),

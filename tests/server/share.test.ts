@@ -4,7 +4,9 @@ import * as shareLinks from '@/app/api/projects/[projectId]/analyses/[analysisId
 import * as shareLink from '@/app/api/projects/[projectId]/share-links/[linkId]/route'
 import * as shared from '@/app/api/share/[token]/route'
 import * as sharedColumns from '@/app/api/share/[token]/columns/route'
+import { accessProject } from '@/db/queries/access'
 import { shareReportSchema, type ShareLink } from '@/lib/schemas/share'
+import { loadReportSubject } from '@/lib/server/load-report'
 import { shareStatus, visitShareReport } from '@/lib/server/share'
 import { openTestDatabase } from '../support/test-database'
 import { makeAnalysis, makeNote, makeProject, makeRun, type TestProject } from '../support/test-project'
@@ -119,6 +121,24 @@ describe('a share link', () => {
     expect(response.status).toBe(410)
     expect((await response.json()).error.code).toBe('link-ended')
   })
+})
+
+test('members read the same report without a link, with every note and what is settled', async () => {
+  const { id } = await makeAnalysis(owner, (await makeRun(owner)).id)
+  const settled = await makeNote(owner, id)
+  const other = await makeNote(owner, id)
+  await database.db
+    .updateTable('notes')
+    .set({ resolvedAt: new Date(), resolvedBy: project.people.owner.id })
+    .where('id', '=', settled.id)
+    .execute()
+  const userId = project.people.viewer.id
+  const access = await accessProject(database.db, { userId, projectId: project.id, right: 'read' })
+  const { subject } = await loadReportSubject(access, id)
+  expect(subject.notes.map(({ isSettled }) => isSettled)).toEqual([true, false])
+
+  const link = await makeLink({ ...FIELDS, noteIds: [settled.id, other.id] }, id)
+  expect((await (await open(link.token)).json()).subject).toEqual(subject)
 })
 
 describe('what a link opens', () => {
