@@ -3,7 +3,7 @@
 import { useMemo, useState } from 'react'
 import { LegendEntry } from '@/components/charts/picture'
 import { PlotlyChart } from '@/components/charts/plotly-chart'
-import type { AnalysisResult, Recipe, WindowName } from '@/lib/analysis/types'
+import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
 import { displacementUnitOf, formatSwing, shortSwingWord, shownSwing, type Display } from '@/lib/display-units'
 import type { FigureFrame } from '@/lib/figures/figure'
 import { spectrumExtentSeconds, spectrumFigure } from '@/lib/figures/spectrum-figure'
@@ -16,15 +16,8 @@ import { ChoiceSetting, FactSetting, SwitchSetting } from './setting-rows'
 import { Stage } from './stage'
 import type { StageInput } from './stage-props'
 import { useStageNotes } from './use-stage-notes'
+import { WindowSetting } from './window-setting'
 
-const WINDOWS: { value: WindowName; label: string }[] = [
-  { value: 'rectangular', label: 'none' },
-  { value: 'hann', label: 'Hann' },
-  { value: 'hamming', label: 'Hamming' },
-  { value: 'blackman', label: 'Blackman' },
-  { value: 'blackman-harris', label: 'Blackman–Harris' },
-  { value: 'flat-top', label: 'flat top' },
-]
 const CHANCE_LEVELS = [0.05, 0.01, 0.001, 0.0001]
 
 export function SpectrumStage({ result, views, recipe, display, change, notes, noteActions, isLocked }: StageInput) {
@@ -112,11 +105,10 @@ function SpectrumSettings({ result, recipe, change }: Pick<StageInput, 'result' 
         options={levels.map((level) => ({ value: String(level), label: `1 in ${Math.round(1 / level)}` }))}
         onValue={(value) => change('chanceLevel', { ...recipe, chanceLevel: Number(value) })}
       />
-      <ChoiceSetting
-        label="Window"
-        value={recipe.spectrumWindow}
-        options={WINDOWS}
-        onValue={(spectrumWindow) => change('spectrumWindow', { ...recipe, spectrumWindow })}
+      <WindowSetting
+        window={recipe.spectrumWindow}
+        turns={result?.run.turns ?? null}
+        onWindow={(spectrumWindow) => change('spectrumWindow', { ...recipe, spectrumWindow })}
       />
       {result?.run.finestSplitOrders ? (
         <FactSetting label="Finest split">{formatNumber(result.run.finestSplitOrders, 2)} order</FactSetting>

@@ -1,7 +1,7 @@
 import type { EvenGrid } from './even-grid'
 import { nextPowerOfTwo, realFft } from './fft'
 import { nonuniformFft } from './nonuniform-fft'
-import type { WindowName } from './types'
+import type { SpectrumWindow } from './types'
 import { windowWeights } from './window'
 
 /** One-sided amplitude spectrum on j·stepHz, j = 0 … amplitude.length − 1. */
@@ -12,7 +12,7 @@ export interface AmplitudeSpectrum {
 }
 
 export interface SpectrumOptions {
-  window: WindowName
+  window: SpectrumWindow
   /** Zero padding interpolates the display; it adds no resolution. */
   paddingFactor?: number
   /** The padded length is kept below this where that still holds all samples. */
@@ -60,7 +60,7 @@ export function amplitudeSpectrum(grid: EvenGrid, options: SpectrumOptions): Amp
 export function amplitudeSpectraUpTo(
   before: EvenGrid,
   after: EvenGrid,
-  options: { window: WindowName; highestHz: number },
+  options: { window: SpectrumWindow; highestHz: number },
 ): [AmplitudeSpectrum, AmplitudeSpectrum] {
   const { window, highestHz } = options
   const count = before.values.length

@@ -129,7 +129,7 @@ export function createAnalyser(columns: RunColumns): Analyser {
       result.tableReason = table.reason
       result.warnings.push(...table.warnings)
       yield { stage: 'correcting', fraction: 0.96 }
-      const base = yield* views(fitKey + recipe.spectrumWindow, function* () {
+      const base = yield* views(fitKey + JSON.stringify(recipe.spectrumWindow), function* () {
         yield { stage: 'correcting', fraction: 0.97 }
         const { cleaned } = prepared
         const chance = residualChance(fitted.fitted, modelled.context, recipe.chanceLevel)

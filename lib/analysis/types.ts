@@ -90,6 +90,14 @@ export interface PredictedOrder {
 
 export type WindowName = 'rectangular' | 'hann' | 'hamming' | 'blackman' | 'blackman-harris' | 'flat-top'
 
+export interface KaiserWindow {
+  kind: 'kaiser'
+  /** β = πα, 0 … 20: the larger, the lower the side lobes and the wider a line. */
+  beta: number
+}
+
+export type SpectrumWindow = WindowName | KaiserWindow
+
 export interface TableSettings {
   /** 8 … 4096. */
   binCount: number
@@ -127,7 +135,7 @@ export interface Recipe {
   isLineSearchOn: boolean
   /** False-alarm probability that a line must stay under, e.g. 0.001. */
   chanceLevel: number
-  spectrumWindow: WindowName
+  spectrumWindow: SpectrumWindow
   /** Peak motion on the sky that a picture tolerates. */
   toleranceSkyArcsec: number
   /** Exposure of the pictures whose share within the tolerance is wanted. */

@@ -1,4 +1,4 @@
-import type { WindowName } from './types'
+import type { SpectrumWindow, WindowName } from './types'
 
 /**
  * Coefficients of the cosine-sum windows, w[n] = Σ (−1)^k a_k cos(2πkn/N).
@@ -37,15 +37,14 @@ export function cosineWindow(name: CosineWindowName, sampleCount: number): Float
 }
 
 /**
- * Kaiser window in its periodic form, w[n] = I₀(β√(1 − (2n/N − 1)²))/I₀(β) with β = πα.
+ * Kaiser window in its periodic form, w[n] = I₀(β√(1 − (2n/N − 1)²))/I₀(β); β = πα, with the α that tables list.
  *
- * @throws {RangeError} if sampleCount is not an integer of at least 2 or alpha is negative
+ * @throws {RangeError} if sampleCount is not an integer of at least 2, or beta is negative or not finite
  * @see Harris (1978), Proc. IEEE 66, 51, eq. 46
  */
-export function kaiserWindow(alpha: number, sampleCount: number): Float64Array {
+export function kaiserWindow(beta: number, sampleCount: number): Float64Array {
   checkSampleCount(sampleCount)
-  if (!(alpha >= 0)) throw new RangeError(`alpha must be at least 0: got ${alpha}`)
-  const beta = Math.PI * alpha
+  if (!(beta >= 0 && beta < Infinity)) throw new RangeError(`beta must be at least 0 and finite: got ${beta}`)
   const peak = besselI0(beta)
   return Float64Array.from({ length: sampleCount }, (_, n) => {
     const x = (2 * n) / sampleCount - 1
@@ -53,9 +52,10 @@ export function kaiserWindow(alpha: number, sampleCount: number): Float64Array {
   })
 }
 
-/** The window of that name; 'flat-top' is HFT95. */
-export function windowWeights(name: WindowName, sampleCount: number): Float64Array {
-  return cosineWindow(name === 'flat-top' ? 'hft95' : name, sampleCount)
+/** The weights of a window as a recipe names it; 'flat-top' is HFT95. */
+export function windowWeights(window: SpectrumWindow, sampleCount: number): Float64Array {
+  if (typeof window !== 'string') return kaiserWindow(window.beta, sampleCount)
+  return cosineWindow(window === 'flat-top' ? 'hft95' : window, sampleCount)
 }
 
 /** Half width of the main lobe in bins: a window needs at least as many worm turns, or drift covers the fundamental. */
@@ -68,13 +68,9 @@ const HALF_MAIN_LOBE_BINS: Record<WindowName, number> = {
   'flat-top': 5,
 }
 
-export function turnsNeededByWindow(name: WindowName): number {
-  return HALF_MAIN_LOBE_BINS[name]
-}
-
-/** First null of a Kaiser window, √(1 + α²) bins. */
-export function kaiserHalfMainLobeBins(alpha: number): number {
-  return Math.hypot(1, alpha)
+/** The first null of a Kaiser window lies at √(1 + α²) bins. */
+export function turnsNeededByWindow(window: SpectrumWindow): number {
+  return typeof window === 'string' ? HALF_MAIN_LOBE_BINS[window] : Math.hypot(1, window.beta / Math.PI)
 }
 
 export interface WindowFigures {

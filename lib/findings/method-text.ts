@@ -116,7 +116,11 @@ const WINDOW_WORDS: Record<WindowName, string> = {
 }
 
 function spectrumText({ spectrumWindow, isLineSearchOn, chanceLevel }: Recipe): string {
-  const drawn = `The spectrum is drawn with ${WINDOW_WORDS[spectrumWindow]}, on the times as they were recorded.`
+  const window =
+    typeof spectrumWindow === 'string'
+      ? WINDOW_WORDS[spectrumWindow]
+      : `a Kaiser window of β = ${formatNumber(spectrumWindow.beta, 2)}`
+  const drawn = `The spectrum is drawn with ${window}, on the times as they were recorded.`
   return isLineSearchOn
     ? `${drawn} Lines beside the worm were taken in one by one while noise alone would give one as large in fewer than ${formatProbability(chanceLevel)}, and everything was fitted again each time.`
     : `${drawn} Lines beside the worm were not looked for.`

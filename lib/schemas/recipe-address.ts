@@ -1,4 +1,4 @@
-import type { ExcludedSpan, GearStage, Recipe, TableSettings } from '@/lib/analysis/types'
+import type { ExcludedSpan, GearStage, Recipe, SpectrumWindow, TableSettings, WindowName } from '@/lib/analysis/types'
 import { recipeSchema } from './recipe'
 
 /*
@@ -67,7 +67,11 @@ const FIELDS: AddressField[] = [
       return stages && { ...recipe, driveTrain: { ...recipe.driveTrain, stages } }
     },
   },
-  text('period', 'wormPeriod'),
+  {
+    key: 'period',
+    write: (recipe) => recipe.wormPeriod,
+    read: (recipe, text) => ({ ...recipe, wormPeriod: text as Recipe['wormPeriod'] }),
+  },
   number('period-seconds', 'typedPeriodSeconds'),
   {
     key: 'harmonics',
@@ -79,7 +83,15 @@ const FIELDS: AddressField[] = [
   },
   flag('lines', 'isLineSearchOn'),
   number('chance', 'chanceLevel'),
-  text('window', 'spectrumWindow'),
+  {
+    key: 'window',
+    write: ({ spectrumWindow }) =>
+      typeof spectrumWindow === 'string' ? spectrumWindow : `${spectrumWindow.kind}:${spectrumWindow.beta}`,
+    read: (recipe, text) => {
+      const spectrumWindow = readWindow(text)
+      return spectrumWindow && { ...recipe, spectrumWindow }
+    },
+  },
   number('tolerance', 'toleranceSkyArcsec'),
   number('exposure', 'pictureExposureSeconds'),
   tableNumber('bins', 'binCount'),
@@ -218,6 +230,13 @@ function readOrigin(value: string): TableSettings['origin'] | null {
   return typeof timeSeconds === 'number' ? { kind: 'index-time', timeSeconds } : null
 }
 
+/** The name of a window, or kaiser:β; whether there is such a window is for the schema to say. */
+function readWindow(value: string): SpectrumWindow | null {
+  if (!value.startsWith('kaiser:')) return value as WindowName
+  const beta = readNumber(value.slice('kaiser:'.length))
+  return typeof beta === 'number' ? { kind: 'kaiser', beta } : null
+}
+
 function readOrders(value: string): TableSettings['orders'] | null {
   if (value === 'default') return value
   if (value === NONE) return []
@@ -243,14 +262,6 @@ function conversionNumber(key: string, name: keyof Conversion): AddressField {
       const parsed = readNumber(value)
       return parsed === undefined ? null : { ...recipe, conversion: { ...recipe.conversion, [name]: parsed } }
     },
-  }
-}
-
-function text(key: string, name: 'wormPeriod' | 'spectrumWindow'): AddressField {
-  return {
-    key,
-    write: (recipe) => recipe[name],
-    read: (recipe, value) => ({ ...recipe, [name]: value }) as Recipe,
   }
 }
 

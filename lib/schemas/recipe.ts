@@ -1,5 +1,8 @@
 import { z } from 'zod'
-import type { Recipe } from '@/lib/analysis/types'
+import type { Recipe, SpectrumWindow } from '@/lib/analysis/types'
+
+/** Side lobes are 170 dB down by then: nothing that is recorded asks for more. */
+export const LARGEST_KAISER_BETA = 20
 
 const positive = z.number().positive().finite()
 
@@ -40,6 +43,11 @@ export const driveTrainSchema = z.object({
   stages: z.array(gearStageSchema).max(12),
 })
 
+export const spectrumWindowSchema = z.union([
+  z.enum(['rectangular', 'hann', 'hamming', 'blackman', 'blackman-harris', 'flat-top']),
+  z.object({ kind: z.literal('kaiser'), beta: z.number().min(0).max(LARGEST_KAISER_BETA) }),
+]) satisfies z.ZodType<SpectrumWindow>
+
 export const tableSettingsSchema = z.object({
   binCount: z.number().int().min(8).max(4096),
   quantity: z.enum(['position', 'rate']),
@@ -69,7 +77,7 @@ export const recipeSchema = z.object({
   harmonicCount: z.union([z.literal('auto'), z.number().int().min(1).max(12)]),
   isLineSearchOn: z.boolean(),
   chanceLevel: z.number().gt(0).max(0.1),
-  spectrumWindow: z.enum(['rectangular', 'hann', 'hamming', 'blackman', 'blackman-harris', 'flat-top']),
+  spectrumWindow: spectrumWindowSchema,
   toleranceSkyArcsec: positive.max(3600),
   pictureExposureSeconds: positive.max(36_000),
   table: tableSettingsSchema,

@@ -188,6 +188,15 @@ describe('the reference run through the whole pipeline', { timeout: 60_000 }, ()
     expect(views.track.turnStartSeconds).toHaveLength(5)
   })
 
+  test('a Kaiser window’s β changes the drawn spectrum and no figure', () => {
+    const analyser = createAnalyser(columnsOf(reference.t, reference.y))
+    const run = (beta: number) =>
+      unwrap(drain(analyser.run(recipe({ spectrumWindow: { kind: 'kaiser', beta }, isLineSearchOn: false }))))
+    const [narrow, wide] = [run(2), run(9)]
+    expect(wide.views.spectrum.beforeArcsec).not.toEqual(narrow.views.spectrum.beforeArcsec)
+    expect(wide.result).toEqual(narrow.result)
+  })
+
   test('equal input gives equal output, and a kept stage the same as a fresh one', () => {
     const analyser = createAnalyser(columnsOf(reference.t, reference.y))
     expect(drain(analyser.run(settings))).toEqual(outcome)

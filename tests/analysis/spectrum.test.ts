@@ -11,7 +11,7 @@ import {
   rectangularPeakOffset,
   type PeakBins,
 } from '@/lib/analysis/spectral-peak'
-import type { WindowName } from '@/lib/analysis/types'
+import type { SpectrumWindow, WindowName } from '@/lib/analysis/types'
 import { windowWeights } from '@/lib/analysis/window'
 import checks from '../reference/checks.json'
 
@@ -77,7 +77,9 @@ describe('amplitudeSpectrum', () => {
     expect(amplitude[40]).toBeCloseTo(1, 10)
   })
 
-  test.each(names)('equals 2|Σwx e^(−2πift)|/Σw with padding and gaps (%s)', (window) => {
+  const windows: SpectrumWindow[] = [...names, { kind: 'kaiser', beta: 8 }]
+
+  test.each(windows)('equals 2|Σwx e^(−2πift)|/Σw with padding and gaps (%s)', (window) => {
     const { normal } = createRandom(4)
     const grid = gridOf(Float64Array.from({ length: 100 }, normal), 2.5)
     for (let n = 30; n < 36; n++) [grid.isPresent[n], grid.values[n]] = [0, 0]

@@ -1,7 +1,6 @@
 import { describe, expect, test } from 'vitest'
 import {
   cosineWindow,
-  kaiserHalfMainLobeBins,
   kaiserWindow,
   turnsNeededByWindow,
   windowFigures,
@@ -44,15 +43,32 @@ describe.each([
   [3.5, windows['kaiser_alpha_3.5']],
 ])('Kaiser, α = %f', (alpha, expected) => {
   test('eight samples and figures at N = 1024 equal the reference', () => {
-    kaiserWindow(alpha, 8).forEach((w, n) => expect(w).toBeCloseTo(expected.n8[n], 13))
-    const figures = windowFigures(kaiserWindow(alpha, 1024))
+    kaiserWindow(alpha * Math.PI, 8).forEach((w, n) => expect(w).toBeCloseTo(expected.n8[n], 13))
+    const figures = windowFigures(kaiserWindow(alpha * Math.PI, 1024))
     expect(figures.coherentGain).toBeCloseTo(expected.N1024.coherent_gain, 12)
     expect(figures.noiseBandwidthBins).toBeCloseTo(expected.N1024.enbw_bins, 10)
     expect(figures.scallopingLossDb).toBeCloseTo(expected.N1024.scalloping_loss_db, 10)
   })
 
-  test('first null at √(1 + α²) bins', () => {
-    expect(kaiserHalfMainLobeBins(alpha)).toBeCloseTo(expected.first_null_bins, 12)
+  test('needs as many turns as its first null has bins, √(1 + α²)', () => {
+    const needed = turnsNeededByWindow({ kind: 'kaiser', beta: alpha * Math.PI })
+    expect(needed).toBeCloseTo(expected.first_null_bins, 12)
+  })
+
+  // The defining sum at the bin itself: by then nothing of the main lobe is left.
+  test('and there its transform is next to nothing', () => {
+    const weights = windowWeights({ kind: 'kaiser', beta: alpha * Math.PI }, 4096)
+    const transform = (bins: number) => {
+      let [re, im] = [0, 0]
+      weights.forEach((w, n) => {
+        re += w * Math.cos((2 * Math.PI * bins * n) / 4096)
+        im += w * Math.sin((2 * Math.PI * bins * n) / 4096)
+      })
+      return Math.hypot(re, im)
+    }
+    // The closed form is that of the continuous window; the periodic form has one of its two ends, half an end too much.
+    expect(transform(expected.first_null_bins)).toBeLessThan(weights[0])
+    expect(transform(expected.first_null_bins - 0.2) / transform(0)).toBeGreaterThan(1e-4)
   })
 })
 
@@ -75,8 +91,13 @@ test("'flat-top' is HFT95; each window states the turns it needs", () => {
   expect(names.map(turnsNeededByWindow)).toEqual([1, 2, 2, 3, 4, 5])
 })
 
+test('a Kaiser window of β = 0 is no window', () => {
+  expect(kaiserWindow(0, 16)).toEqual(cosineWindow('rectangular', 16))
+})
+
 test('a length below 2 or a fraction is refused', () => {
   expect(() => cosineWindow('hann', 1)).toThrow(RangeError)
   expect(() => kaiserWindow(2, 2.5)).toThrow(RangeError)
   expect(() => kaiserWindow(-1, 8)).toThrow(RangeError)
+  expect(() => kaiserWindow(Infinity, 8)).toThrow(RangeError)
 })

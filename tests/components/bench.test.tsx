@@ -103,6 +103,33 @@ describe('settings', () => {
     expect(recipes.at(-1)).toMatchObject({ harmonicCount: 3, spectrumWindow: 'hann' })
   })
 
+  test('Kaiser’s window brings a field for its β', async () => {
+    const user = userEvent.setup()
+    const recipes: Recipe[] = []
+    render(<Harness onRecipe={(recipe) => recipes.push(recipe)} />)
+    expect(screen.queryByLabelText('Kaiser’s β')).toBeNull()
+    await user.selectOptions(screen.getByLabelText('Window'), 'kaiser')
+    expect(recipes.at(-1)!.spectrumWindow).toEqual({ kind: 'kaiser', beta: 8 })
+    const beta = screen.getByLabelText('Kaiser’s β')
+    await user.clear(beta)
+    await user.type(beta, '21')
+    expect(within(stage('Spectrum')).getByRole('alert').textContent).toBe('At most 20')
+    await user.clear(beta)
+    await user.type(beta, '7.5')
+    expect(recipes.at(-1)!.spectrumWindow).toEqual({ kind: 'kaiser', beta: 7.5 })
+    await user.selectOptions(screen.getByLabelText('Window'), 'hann')
+    expect(screen.queryByLabelText('Kaiser’s β')).toBeNull()
+  })
+
+  test('a window that needs more turns than the run has is not offered', () => {
+    const outcome = exampleOutcome()
+    outcome.result.run.turns = 3.4
+    render(<Harness outcome={outcome} />)
+    const offered = within(screen.getByLabelText('Window')).getAllByRole<HTMLOptionElement>('option')
+    const closed = offered.filter(({ disabled }) => disabled).map(({ textContent }) => textContent)
+    expect(closed).toEqual(['Blackman–Harris, from 4 turns', 'flat top, from 5 turns'])
+  })
+
   test('what can’t be meant is told beside the field and changes nothing', async () => {
     const user = userEvent.setup()
     const onRecipe = vi.fn()

@@ -180,6 +180,7 @@ test('the spectrum names its window, and whether lines were looked for', () => {
   expect(text({ spectrumWindow: 'rectangular', isLineSearchOn: false })).toBe(
     'The spectrum is drawn with no window, on the times as they were recorded. Lines beside the worm were not looked for.',
   )
+  expect(text({ spectrumWindow: { kind: 'kaiser', beta: 2.5 * Math.PI } })).toContain('a Kaiser window of β = 7.85, on')
   expect(text({ chanceLevel: 0.001 })).toContain('fewer than 1 in 1000')
 })
 

@@ -69,6 +69,12 @@ describe('recipe in the address', () => {
     ['every setting changed', farRecipe(), defaultRecipe()],
     ['every setting back to the default', defaultRecipe(), farRecipe()],
     ['the example run', exampleRecipe(), defaultRecipe()],
+    [
+      'a Kaiser window',
+      { ...defaultRecipe(), spectrumWindow: { kind: 'kaiser', beta: 2.5 * Math.PI } },
+      defaultRecipe(),
+    ],
+    ['a window that is none of Kaiser’s', farRecipe(), { ...farRecipe(), spectrumWindow: { kind: 'kaiser', beta: 0 } }],
     ['no orders at all', { ...farRecipe(), table: { ...farRecipe().table, orders: [] } }, farRecipe()],
     [
       'the column as origin',
@@ -88,6 +94,19 @@ describe('recipe in the address', () => {
     const recipe = { ...base, driftDegree: 2 as const, excludedSpans: [{ startSeconds: 10, endSeconds: 20.5 }] }
     expect(withRecipeAddress('', recipe, base)).toBe('?leave-out=10..20.5&drift=2')
     expect(withRecipeAddress('', base, base)).toBe('')
+  })
+
+  test('an address from before there was a Kaiser window is read as it was', () => {
+    const reading = readRecipeAddress('?window=blackman-harris&drift=2', defaultRecipe())
+    expect(reading).toEqual({
+      recipe: { ...defaultRecipe(), driftDegree: 2, spectrumWindow: 'blackman-harris' },
+      refused: [],
+    })
+  })
+
+  test('a Kaiser window stands in clear', () => {
+    const recipe: Recipe = { ...defaultRecipe(), spectrumWindow: { kind: 'kaiser', beta: 8 } }
+    expect(withRecipeAddress('', recipe, defaultRecipe())).toBe('?window=kaiser:8')
   })
 
   test('leaves other parameters alone', () => {
@@ -114,6 +133,13 @@ describe('recipe in the address', () => {
     ['bins', '7'],
     ['stray-filter', 'yes'],
     ['unit', 'parsec'],
+    ['window', 'kaiser'],
+    ['window', 'kaiser:'],
+    ['window', 'kaiser:none'],
+    ['window', 'kaiser:-1'],
+    ['window', 'kaiser:20.1'],
+    ['window', 'bartlett'],
+    ['period', 'guessed'],
   ])('%s=%s is refused and leaves the base as it was', (key, value) => {
     const base = exampleRecipe()
     const search = `?${new URLSearchParams([[key, value]])}`
