@@ -42,7 +42,8 @@ function SharePanel({ projectId, analysisId, notes, onClose }: ShareButtonProps 
     <div className="flex flex-col gap-4">
       <Notice tone="warning" title="Anyone who has a link can read the report">
         It needs no account and can be passed on. It shows the figures and pictures of this analysis, the names of mount
-        and run, and the notes that you choose; not the file, and nothing else of the project.
+        and run, and the notes that you choose; not the file, and nothing else of the project. It goes on when whoever
+        made it leaves the project; every owner and editor can revoke it here.
       </Notice>
       {work.kind === 'change' ? (
         <ShareLinkForm

@@ -10,8 +10,9 @@ interface Mentions {
 }
 
 /**
- * Keeps whom the note names now. Everybody who was not named in it before gets one mail, with the transaction; who names
- * themselves gets none. Somebody who was named and has left the project since may stay named, or the note could no longer
+ * Keeps whom the note names now. Everybody whom the note did not name until now gets a mail, with the transaction; who
+ * names themselves gets none. A name that was taken out and is put in again is a new call, with a new mail: whoever was
+ * let go by mistake is told after all. Somebody who was named and has left the project since may stay named, or the note could no longer
  * be changed.
  *
  * @throws {Refusal} 'not-valid' where somebody is named who is no member

@@ -50,13 +50,28 @@ export function shortZone(timeZone: string, iso: string): string {
   return parts.find(({ type }) => type === 'timeZoneName')?.value ?? timeZone
 }
 
+/** Browsers list some zones under the name that a place had once; people know it by the one that it has now. */
+const RENAMED: Readonly<Record<string, string>> = {
+  'America/Buenos_Aires': 'America/Argentina/Buenos_Aires',
+  'America/Godthab': 'America/Nuuk',
+  'America/Indianapolis': 'America/Indiana/Indianapolis',
+  'Asia/Calcutta': 'Asia/Kolkata',
+  'Asia/Katmandu': 'Asia/Kathmandu',
+  'Asia/Rangoon': 'Asia/Yangon',
+  'Asia/Saigon': 'Asia/Ho_Chi_Minh',
+  'Atlantic/Faeroe': 'Atlantic/Faroe',
+  'Europe/Kiev': 'Europe/Kyiv',
+  'Pacific/Enderbury': 'Pacific/Kanton',
+  'Pacific/Ponape': 'Pacific/Pohnpei',
+  'Pacific/Truk': 'Pacific/Chuuk',
+}
+
 /** “Auckland time” for Pacific/Auckland; a head of a column holds for summer and winter, so it names no offset. */
 export function zoneName(timeZone: string): string {
   if (/^(Etc\/)?(UTC|UCT|Universal|Zulu|GMT)$/.test(timeZone)) return 'UTC'
+  const present = RENAMED[timeZone] ?? timeZone
   const place =
-    timeZone.includes('/') && !timeZone.startsWith('Etc/')
-      ? timeZone.split('/').slice(1).reverse().join(', ')
-      : timeZone
+    present.includes('/') && !present.startsWith('Etc/') ? present.split('/').slice(1).reverse().join(', ') : present
   return `${place.replaceAll('_', ' ')} time`
 }
 

@@ -31,7 +31,7 @@ function searched(timeZone: string): string {
   const long = new Intl.DateTimeFormat('en-GB', { timeZone, timeZoneName: 'longGeneric' })
     .formatToParts(new Date(0))
     .find(({ type }) => type === 'timeZoneName')
-  const text = plain(`${timeZone} ${long?.value ?? ''}`)
+  const text = plain(`${timeZone} ${zoneName(timeZone)} ${long?.value ?? ''}`)
   searchTexts.set(timeZone, text)
   return text
 }

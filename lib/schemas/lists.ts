@@ -213,7 +213,9 @@ export const correctionQuerySchema = listQuery(
   sense: z.enum(['proven', 'assumed']).optional(),
 })
 export type CorrectionQuery = z.output<typeof correctionQuerySchema>
-export const correctionSummarySchema = correctionSchema.omit({ table: true })
+export const correctionSummarySchema = correctionSchema
+  .omit({ table: true })
+  .extend({ settings: correctionSchema.shape.settings.pick({ binCount: true, meaning: true, unit: true }) })
 export type CorrectionSummary = z.infer<typeof correctionSummarySchema>
 /** GET /api/projects/[projectId]/corrections. */
 export const correctionListSchema = z.object({

@@ -40,6 +40,8 @@ test.each([
   ['Europe/Berlin', 'Berlin time'],
   ['America/New_York', 'New York time'],
   ['America/Argentina/Buenos_Aires', 'Buenos Aires, Argentina time'],
+  ['Asia/Calcutta', 'Kolkata time'],
+  ['Asia/Kolkata', 'Kolkata time'],
 ])('%s is called %s', (zone, name) => {
   expect(zoneName(zone)).toBe(name)
 })
@@ -52,6 +54,17 @@ test('zones are found by city, by country, and without accents; UTC is always am
   expect(findTimeZones(zones, 'são paulo')).toEqual(['America/Sao_Paulo'])
   expect(findTimeZones(zones, ' ')).toEqual([])
   expect(findTimeZones(zones, 'atlantis')).toEqual([])
+})
+
+test.each([
+  ['Kolkata', 'Asia/Calcutta'],
+  ['Calcutta', 'Asia/Calcutta'],
+  ['Kyiv', 'Europe/Kiev'],
+  ['yangon', 'Asia/Rangoon'],
+  ['ho chi minh', 'Asia/Saigon'],
+  ['Kathmandu', 'Asia/Katmandu'],
+])('“%s” finds %s, by the name of today as by the one in the list', (typed, zone) => {
+  expect(findTimeZones(['Europe/Berlin', zone], typed)).toEqual([zone])
 })
 
 test('the time there now', () => {

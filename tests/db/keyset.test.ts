@@ -2,17 +2,23 @@ import { beforeAll, describe, expect, test } from 'vitest'
 import { accessProject, type ProjectAccess } from '@/db/queries/access'
 import { listAnalyses } from '@/db/queries/list-analyses'
 import { listAuditEvents } from '@/db/queries/list-audit-events'
+import { listCorrections } from '@/db/queries/list-corrections'
+import { listProjects } from '@/db/queries/list-projects'
 import { listRuns } from '@/db/queries/list-runs'
 import {
   analysisQuerySchema,
   auditQuerySchema,
+  correctionQuerySchema,
+  projectQuerySchema,
   runQuerySchema,
   type AnalysisQuery,
   type AuditQuery,
+  type CorrectionQuery,
   type PageFacts,
+  type ProjectQuery,
   type RunQuery,
 } from '@/lib/schemas/lists'
-import { seedManyRows } from '../support/many-rows'
+import { seedManyCorrections, seedManyProjects, seedManyRows } from '../support/many-rows'
 import { openTestDatabase } from '../support/test-database'
 import { makeProject } from '../support/test-project'
 
@@ -97,6 +103,21 @@ const events: Lister<Awaited<ReturnType<typeof listAuditEvents>>['events'][numbe
   return { rows, ...facts }
 }
 
+const corrections: Lister<Awaited<ReturnType<typeof listCorrections>>['corrections'][number]> = async (
+  access,
+  query,
+) => {
+  const parsed = correctionQuerySchema.parse(query)
+  const { corrections: rows, ...facts } = await listCorrections(database.db, access, parsed)
+  return { rows, ...facts }
+}
+/** Of all projects of the person, whichever of them the access is for. */
+const projects: Lister<Awaited<ReturnType<typeof listProjects>>['projects'][number]> = async ({ userId }, query) => {
+  const parsed = projectQuerySchema.parse({ ...query, archived: 'too' })
+  const { projects: rows, ...facts } = await listProjects(database.db, userId, parsed)
+  return { rows, ...facts }
+}
+
 type RowOf<L> = L extends Lister<infer Row> ? Row : never
 const runValues: Record<RunQuery['sort'], (row: RowOf<typeof runs>) => Value> = {
   name: ({ name }) => name,
@@ -123,6 +144,26 @@ const eventValues: Record<AuditQuery['sort'], (row: RowOf<typeof events>) => Val
   person: ({ actorName }) => actorName,
   action: ({ action }) => action,
   subject: ({ subject }) => subject,
+}
+
+const correctionValues: Record<CorrectionQuery['sort'], (row: RowOf<typeof corrections>) => Value> = {
+  name: ({ name }) => name,
+  analysis: ({ analysisName }) => analysisName,
+  kind: ({ kind }) => kind,
+  bins: ({ settings }) => settings.binCount,
+  sense: ({ senseBasis }) => senseBasis,
+  by: ({ createdBy }) => createdBy,
+  created: ({ createdAt }) => createdAt.getTime(),
+}
+const projectValues: Record<ProjectQuery['sort'], (row: RowOf<typeof projects>) => Value> = {
+  name: ({ name }) => name,
+  // More teeth, shorter period; the same two numbers divide to the same double everywhere.
+  period: ({ wheelTeeth, wormStarts }) => (wheelTeeth === null ? null : wormStarts / wheelTeeth),
+  runs: ({ runCount }) => runCount,
+  analyses: ({ analysisCount }) => analysisCount,
+  people: ({ memberCount }) => memberCount,
+  role: ({ role }) => role,
+  changed: ({ updatedAt }) => updatedAt.getTime(),
 }
 
 function walksLikeASort<Row extends AnyRow>(list: Lister<Row>, values: Record<string, (row: Row) => Value>) {
@@ -159,6 +200,21 @@ function walksLikeASort<Row extends AnyRow>(list: Lister<Row>, values: Record<st
 
 describe('runs', () => walksLikeASort(runs, runValues))
 describe('analyses', () => walksLikeASort(analyses, analysisValues))
+describe('corrections', () => {
+  beforeAll(async () => {
+    await seedManyCorrections(database.db, { projectId: small.projectId, count: 40 })
+    await seedManyCorrections(database.db, { projectId: large.projectId, count: 2500 })
+  }, 60_000)
+  walksLikeASort(corrections, correctionValues)
+})
+describe('projects', () => {
+  beforeAll(async () => {
+    // The person's first project counts as well.
+    await seedManyProjects(database.db, { userId: small.userId, count: 39 })
+    await seedManyProjects(database.db, { userId: large.userId, count: 2499 })
+  }, 60_000)
+  walksLikeASort(projects, projectValues)
+})
 describe('audit events', () => {
   beforeAll(async () => {
     // makeProject has told of itself: these two would be one more than the rows that were counted out.

@@ -5,13 +5,14 @@ import { POST as signIn } from '@/app/api/auth/sign-in/route'
 import { POST as signUp } from '@/app/api/auth/sign-up/route'
 import { GET as me } from '@/app/api/me/route'
 import { GET as listAuditEvents } from '@/app/api/projects/[projectId]/audit-events/route'
+import { PATCH as changeRole } from '@/app/api/projects/[projectId]/members/[userId]/route'
 import { GET as listMembers } from '@/app/api/projects/[projectId]/members/route'
 import { GET as listRuns } from '@/app/api/projects/[projectId]/runs/route'
 import { POST as createProject } from '@/app/api/projects/route'
 import { takeMailJobs, writeTokenMail } from '../support/mail-queue'
 import { openTestDatabase } from '../support/test-database'
 import { insertPendingInvitation } from '../support/test-invitation'
-import { DRIVE_TRAIN, makeAnalysis, makeProject, makeRun } from '../support/test-project'
+import { DRIVE_TRAIN, makeAnalysis, makeProject, makeRun, type TestProject } from '../support/test-project'
 import { call, PASSWORD, signUpPerson, type Person } from '../support/test-server'
 
 const database = openTestDatabase()
@@ -94,6 +95,38 @@ test('two owners who delete their accounts at once leave no project without one'
   const owners = database.db.selectFrom('memberships').select('userId').where('projectId', '=', shared.id)
   expect(await owners.where('role', '=', 'owner').execute()).toHaveLength(1)
 })
+
+test.each([1, 2, 3])(
+  'people of the same projects who go while their roles change wait for each other (round %i)',
+  async () => {
+    const shared = [await makeProject(database.db), await makeProject(database.db), await makeProject(database.db)]
+    const owner = shared[0].people.owner
+    const leaving = [await signUpPerson('First Leaver'), await signUpPerson('Second Leaver')]
+    for (const { id: projectId } of shared) {
+      const rows = leaving.map(({ id: userId }) => ({ projectId, userId, role: 'editor' as const }))
+      await database.db.insertInto('memberships').values(rows).execute()
+    }
+    const demote = ({ id: projectId, people }: TestProject, userId: string) =>
+      call(
+        changeRole,
+        '/',
+        { projectId, userId },
+        { method: 'PATCH', body: { from: 'editor', role: 'viewer' }, ...people.owner },
+      )
+    const [removals, changes] = await Promise.all([
+      Promise.all(leaving.map((person) => remove(person))),
+      Promise.all(shared.flatMap((project) => leaving.map(({ id }) => demote(project, id)))),
+    ])
+    expect(removals.map(({ status }) => status)).toEqual([204, 204])
+    // Changed before the person went, or gone by then; a deadlock would answer 500.
+    for (const { status } of changes) expect([200, 404]).toContain(status)
+    const ids = leaving.map(({ id }) => id)
+    expect(await database.db.selectFrom('memberships').select('userId').where('userId', 'in', ids).execute()).toEqual(
+      [],
+    )
+    expect(await isSignedIn(owner)).toBe(true)
+  },
+)
 
 test.each([
   ['another address', { email: 'another@example.org' }, 'email'],

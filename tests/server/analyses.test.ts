@@ -1,4 +1,4 @@
-import { beforeAll, describe, expect, test } from 'vitest'
+import { beforeAll, describe, expect, test, vi } from 'vitest'
 import * as auditEvents from '@/app/api/projects/[projectId]/audit-events/route'
 import * as analyses from '@/app/api/projects/[projectId]/analyses/route'
 import * as analysis from '@/app/api/projects/[projectId]/analyses/[analysisId]/route'
@@ -7,7 +7,11 @@ import * as note from '@/app/api/projects/[projectId]/notes/[noteId]/route'
 import * as corrections from '@/app/api/projects/[projectId]/corrections/route'
 import * as correction from '@/app/api/projects/[projectId]/corrections/[correctionId]/route'
 import * as download from '@/app/api/projects/[projectId]/corrections/[correctionId]/download/route'
+import * as history from '@/app/api/projects/[projectId]/history/route'
+import { accessProject } from '@/db/queries/access'
 import { defaultRecipe } from '@/lib/schemas/recipe'
+import { loadAnalysis } from '@/lib/server/load-analyses'
+import { unlessUnreadable } from '@/lib/server/plain'
 import { openTestDatabase } from '../support/test-database'
 import {
   makeAnalysis,
@@ -64,6 +68,37 @@ describe('a saved analysis', () => {
     expect(again).toEqual(made)
     expect(again.result).toEqual(result)
     expect(again.recipe).toEqual(defaultRecipe())
+  })
+
+  test('that can’t be read any more is a fault of the server, and takes no list and no overview with it', async () => {
+    const fresh = await makeProject(database.db)
+    const where = { projectId: fresh.id, cookie: fresh.people.owner.cookie }
+    const made = await makeAnalysis(where, (await makeRun(where)).id)
+    const table = await makeTable(where, made.id)
+    await database.db.updateTable('analyses').set({ recipe: '{}' }).where('id', '=', made.id).execute()
+    await database.db
+      .updateTable('corrections')
+      .set({ tableResult: '{}', settings: JSON.stringify({ binCount: 8, meaning: 'error', unit: 'arcsec' }) })
+      .where('id', '=', table.id)
+      .execute()
+    const log = vi.spyOn(console, 'error').mockImplementation(() => undefined)
+    const ask = (handler: unknown, more = {}) => call(handler, '/', { projectId: fresh.id, ...more }, where)
+    const answers = await Promise.all([
+      ask(analysis.GET, { analysisId: made.id }),
+      ask(analyses.GET),
+      ask(corrections.GET),
+      ask(history.GET),
+    ])
+    expect(answers.map(({ status }) => status)).toEqual([500, 200, 200, 200])
+    expect(log).toHaveBeenCalledTimes(1)
+    const access = await accessProject(database.db, {
+      userId: fresh.people.owner.id,
+      projectId: fresh.id,
+      right: 'read',
+    })
+    expect(await unlessUnreadable(loadAnalysis(access, made.id))).toBeUndefined()
+    expect(log).toHaveBeenCalledTimes(2)
+    log.mockRestore()
   })
 
   test('keeps figures that a newer engine adds', async () => {

@@ -99,6 +99,16 @@ describe('who is named in a note', () => {
     expect((await (await change(people.editor, id, { version: 2 })).json()).mentions).toEqual([])
   })
 
+  test('gets another mail when they are named anew', async () => {
+    const { id } = await (await write(people.editor, [people.viewer.id])).json()
+    await change(people.editor, id, { version: 1, mentions: [] })
+    await change(people.editor, id, { version: 2, mentions: [people.viewer.id] })
+    expect((await mentionMails()).map((job) => 'userId' in job && job.userId)).toEqual([
+      people.viewer.id,
+      people.viewer.id,
+    ])
+  })
+
   test.each([
     ['a stranger', () => people.stranger.id],
     ['nobody', () => '5f0c0b9e-7d3c-4a58-9f0a-3d2f6b1c9e11'],

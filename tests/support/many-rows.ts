@@ -56,3 +56,43 @@ export async function seedManyRows(db: Kysely<Database>, wanted: ManyRows): Prom
     db,
   )
 }
+
+/** Correction tables of the project's analyses, with many equal values. */
+export async function seedManyCorrections(
+  db: Kysely<Database>,
+  { projectId, count }: { projectId: string; count: number },
+): Promise<void> {
+  await sql`insert into corrections (project_id, analysis_id, name, kind, settings, table_result, sense_basis, author_name,
+      created_at, created_by)
+    select ${projectId}, ids[1 + n % cardinality(ids)], case n % 2 when 0 then 'Table ' else 'table ' end || (n % 37),
+      case n % 3 when 0 then 'addition' else 'stand-alone' end,
+      jsonb_build_object('binCount', (array[8, 96, 240, 1000])[1 + n % 4]), '{}',
+      case n % 5 when 0 then 'proven' else 'assumed' end, case when n % 10 = 0 then 'Guest ' || (n % 3) end,
+      timestamptz '2026-09-01 00:00:00+00' + (n / 4) * interval '1 millisecond', made_by
+    from generate_series(1, ${count}) as n,
+      (select array_agg(id order by created_at, id) as ids, min(created_by::text)::uuid as made_by
+        from analyses where project_id = ${projectId}) as made`.execute(db)
+}
+
+/** Further projects of one person, with many equal and some missing values. */
+export async function seedManyProjects(
+  db: Kysely<Database>,
+  { userId, count }: { userId: string; count: number },
+): Promise<void> {
+  await sql`with made as (
+      insert into projects (name, created_at, updated_at, created_by, updated_by, archived_at, archived_by)
+      select case n % 3 when 0 then 'mount ' when 1 then 'Mount ' else 'Ärger ' end || (n % 41),
+        timestamptz '2026-01-01 00:00:00+00', timestamptz '2026-09-01 00:00:00+00' + (n / 3) * interval '1 millisecond',
+        ${userId}, ${userId}, case when n % 9 = 0 then now() end, case when n % 9 = 0 then ${userId}::uuid end
+      from generate_series(1, ${count}) as n
+      returning id
+    ), numbered as (select id, row_number() over (order by id) as n from made),
+    joined as (
+      insert into memberships (project_id, user_id, role)
+      select id, ${userId}, (array['owner', 'editor', 'viewer'])[1 + n % 3] from numbered
+    )
+    insert into drive_trains (project_id, number, axis_kind, wheel_teeth, worm_starts, stages, created_by)
+    select id, 1, 'worm', case when n % 6 <> 0 then 90 + n % 29 end, 1 + n % 2, '[]', ${userId} from numbered`.execute(
+    db,
+  )
+}

@@ -5,6 +5,7 @@ import { requireProjectPage } from '@/lib/server/current-user'
 import { loadAnalysis, loadHistory } from '@/lib/server/load-analyses'
 import { loadMembers } from '@/lib/server/load-projects'
 import { loadRuns } from '@/lib/server/load-runs'
+import { unlessUnreadable } from '@/lib/server/plain'
 
 export default async function OverviewPage({ params }: PageProps<'/projects/[projectId]'>) {
   const { projectId } = await params
@@ -20,7 +21,10 @@ export default async function OverviewPage({ params }: PageProps<'/projects/[pro
     [latestRunsKey(projectId)]: runs,
     [`${base}/history`]: history,
     [`${base}/members`]: { members },
-    ...(last ? { [`${base}/analyses/${last.analysisId}`]: await loadAnalysis(access, last.analysisId) } : {}),
+    // Its figures head the page; the page stands without them.
+    ...(last
+      ? { [`${base}/analyses/${last.analysisId}`]: await unlessUnreadable(loadAnalysis(access, last.analysisId)) }
+      : {}),
   }
   return (
     <SwrFallback fallback={fallback}>
