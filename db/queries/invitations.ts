@@ -2,7 +2,7 @@ import { sql, type Kysely, type Transaction } from 'kysely'
 import type { Role } from '@/lib/schemas/api'
 import type { Invitation } from '@/lib/schemas/people'
 import type { Database } from '../schema'
-import type { ProjectAccess } from './access'
+import { accessProject, type ProjectAccess } from './access'
 import { enqueueMail } from './mail-jobs'
 import { findMemberByEmail, lockPeople } from './memberships'
 import { Refusal } from './refusal'
@@ -45,8 +45,15 @@ async function findInvitation(db: Kysely<Database>, access: ProjectAccess<'manag
   throw new Refusal({ kind: 'unknown' }, 'This invitation no longer waits: it was accepted or taken back')
 }
 
-async function assertInUse(trx: Transaction<Database>, access: ProjectAccess): Promise<void> {
-  const project = await lockPeople(trx, access.projectId)
+/** Whoever is an owner no more once it is their turn invites nobody, least of all another owner. */
+async function lockAsOwner(trx: Transaction<Database>, { projectId, userId }: ProjectAccess<'manage'>) {
+  const project = await lockPeople(trx, projectId)
+  await accessProject(trx, { userId, projectId, right: 'manage' })
+  return project
+}
+
+async function assertInUse(trx: Transaction<Database>, access: ProjectAccess<'manage'>): Promise<void> {
+  const project = await lockAsOwner(trx, access)
   if (!project?.archivedAt) return
   throw new Refusal({ kind: 'archived' }, 'This project is archived: open it again before you invite anyone')
 }
@@ -121,7 +128,7 @@ export async function revokeInvitation(
   access: ProjectAccess<'manage'>,
   invitationId: string,
 ) {
-  await lockPeople(trx, access.projectId)
+  await lockAsOwner(trx, access)
   const invitation = await findInvitation(trx, access, invitationId)
   await trx
     .updateTable('invitations')

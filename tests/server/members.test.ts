@@ -1,8 +1,10 @@
-import { beforeEach, expect, test } from 'vitest'
+import { sql } from 'kysely'
+import { beforeEach, expect, test, vi } from 'vitest'
 import { DELETE as removeMember, PATCH as changeRole } from '@/app/api/projects/[projectId]/members/[userId]/route'
 import { GET as listMembers } from '@/app/api/projects/[projectId]/members/route'
 import { GET as listAuditEvents } from '@/app/api/projects/[projectId]/audit-events/route'
-import { GET as findProject } from '@/app/api/projects/[projectId]/route'
+import { POST as invite } from '@/app/api/projects/[projectId]/invitations/route'
+import { DELETE as deleteProject, GET as findProject } from '@/app/api/projects/[projectId]/route'
 import type { Role } from '@/lib/schemas/api'
 import { openTestDatabase } from '../support/test-database'
 import { makeProject, type TestProject } from '../support/test-project'
@@ -139,6 +141,38 @@ test.each(ROUNDS)('two owners who remove each other at once: one of them stays (
   const responses = await Promise.all([remove(first, second.id), remove(second, first.id)])
   expect(responses.map(({ status }) => status).sort()).toEqual([204, 404])
   expect(Object.values(await rolesOf()).filter((role) => role === 'owner')).toHaveLength(1)
+})
+
+test('an owner who is demoted while inviting or deleting the project does neither', async () => {
+  const [owner, second] = await twoOwners()
+  const params = { projectId: project.id }
+  const attempts: [unknown, object][] = [
+    [invite, { method: 'POST', body: { email: 'accomplice@example.org', role: 'owner' } }],
+    [deleteProject, { method: 'DELETE', body: { name: 'Test mount' } }],
+  ]
+  const pending = await database.db.transaction().execute(async (trx) => {
+    await trx.selectFrom('projects').select('id').where('id', '=', project.id).forNoKeyUpdate().execute()
+    const asked = attempts.map(([handler, options]) => call(handler, '/', params, { ...options, cookie: owner.cookie }))
+    await vi.waitUntil(
+      async () => {
+        const { rows } = await sql<{ count: number }>`select count(*)::int as count from pg_stat_activity
+          where datname = current_database() and wait_event_type = 'Lock'`.execute(database.db)
+        return rows[0].count === attempts.length
+      },
+      { timeout: 20_000 },
+    )
+    await trx
+      .updateTable('memberships')
+      .set({ role: 'viewer' })
+      .where('projectId', '=', project.id)
+      .where('userId', '=', owner.id)
+      .execute()
+    return { asked }
+  })
+  for (const response of await Promise.all(pending.asked)) expect(response.status).toBe(403)
+  expect((await rolesOf())[second.id]).toBe('owner')
+  const invitations = database.db.selectFrom('invitations').select('id').where('projectId', '=', project.id)
+  expect(await invitations.execute()).toEqual([])
 })
 
 test('people of an archived project can still leave and be let go', async () => {

@@ -1,5 +1,7 @@
 import { database } from '@/db'
 import { insertAccountEvent, insertAuditEvent } from '@/db/queries/audit'
+import { accessProject } from '@/db/queries/access'
+import { lockPeople } from '@/db/queries/memberships'
 import { deleteProject, findProject, updateProjectName } from '@/db/queries/projects'
 import { projectChangeSchema, projectDeletionSchema, projectSchema } from '@/lib/schemas/api'
 import { AppError } from '@/lib/server/errors'
@@ -35,6 +37,9 @@ export function DELETE(request: Request, context: Context) {
     await database()
       .transaction()
       .execute(async (trx) => {
+        // Nothing can be got back, so the right is looked at once more when nobody can take it away any more.
+        await lockPeople(trx, access.projectId)
+        await accessProject(trx, { ...access, right: 'manage' })
         const { name } = await findProject(trx, access)
         if (typed.name.trim() !== name) {
           const message = `Type the name as it stands: “${name}”. Nothing was deleted.`
