@@ -15,6 +15,8 @@ interface ShareButtonProps {
   projectId: string
   analysisId: string
   notes: readonly Note[]
+  /** In an archived project links are only looked at and revoked. */
+  isArchived?: boolean
 }
 
 /** “Share”, and the panel where links to this analysis are made, handed on and taken back. */
@@ -22,8 +24,13 @@ export function ShareButton(props: ShareButtonProps) {
   const [isOpen, setOpen] = useState(false)
   return (
     <>
-      <Button onClick={() => setOpen(true)}>Share</Button>
-      <Dialog isOpen={isOpen} onClose={() => setOpen(false)} title="Share this analysis" className="max-w-2xl">
+      <Button onClick={() => setOpen(true)}>{props.isArchived ? 'Share links' : 'Share'}</Button>
+      <Dialog
+        isOpen={isOpen}
+        onClose={() => setOpen(false)}
+        title={props.isArchived ? 'Links to this analysis' : 'Share this analysis'}
+        className="max-w-2xl"
+      >
         <SharePanel {...props} onClose={() => setOpen(false)} />
       </Dialog>
     </>
@@ -32,7 +39,13 @@ export function ShareButton(props: ShareButtonProps) {
 
 type Work = { kind: 'look' } | { kind: 'make' } | { kind: 'change'; link: ShareLink }
 
-function SharePanel({ projectId, analysisId, notes, onClose }: ShareButtonProps & { onClose: () => void }) {
+function SharePanel({
+  projectId,
+  analysisId,
+  notes,
+  isArchived = false,
+  onClose,
+}: ShareButtonProps & { onClose: () => void }) {
   const { links, error, reload, make, change, revoke } = useShareLinks(projectId, analysisId)
   const [work, setWork] = useState<Work>({ kind: 'look' })
   const look = () => setWork({ kind: 'look' })
@@ -47,20 +60,27 @@ function SharePanel({ projectId, analysisId, notes, onClose }: ShareButtonProps 
       </Notice>
       {work.kind === 'change' ? (
         <ShareLinkForm
-          key={work.link.id}
+          key={`${work.link.id} ${work.link.version}`}
           link={work.link}
           notes={notes}
-          onSend={async (fields) => {
-            await change(work.link.id, fields)
+          onSend={async (fields, version) => {
+            await change(work.link.id, { ...fields, version })
             look()
           }}
+          onTakeTheirs={(link) => setWork({ kind: 'change', link })}
           onCancel={look}
         />
       ) : (
         <DataState what="the links" data={links} error={error} onRetry={reload}>
           {(all) => (
             <>
-              {work.kind === 'make' || isFirst ? (
+              {isArchived ? (
+                <p>
+                  {isFirst
+                    ? 'No link leads to this analysis. New ones can be made once an owner opens the project again.'
+                    : 'Links go on while the project is archived. They can be revoked here, and changed once an owner opens the project again.'}
+                </p>
+              ) : work.kind === 'make' || isFirst ? (
                 <ShareLinkForm
                   link={null}
                   notes={notes}
@@ -84,7 +104,7 @@ function SharePanel({ projectId, analysisId, notes, onClose }: ShareButtonProps 
                     <ShareLinkEntry
                       key={link.id}
                       link={link}
-                      onChange={() => setWork({ kind: 'change', link })}
+                      onChange={isArchived ? undefined : () => setWork({ kind: 'change', link })}
                       onRevoke={() => revoke(link.id)}
                     />
                   ))}

@@ -12,7 +12,8 @@ import { addressOf, stateOf } from './use-share-links'
 
 interface ShareLinkEntryProps {
   link: ShareLink
-  onChange: () => void
+  /** Left out where the link can only be revoked. */
+  onChange?: () => void
   onRevoke: () => Promise<void>
 }
 
@@ -90,9 +91,11 @@ export function ShareLinkEntry({ link, onChange, onRevoke }: ShareLinkEntryProps
               Open
             </ButtonAnchor>
           ) : null}
-          <Button size="small" onClick={onChange} aria-label={`Change ${name}`}>
-            Change
-          </Button>
+          {onChange ? (
+            <Button size="small" onClick={onChange} aria-label={`Change ${name}`}>
+              Change
+            </Button>
+          ) : null}
           <Button size="small" variant="danger" onClick={() => setAsking(true)} aria-label={`Revoke ${name}`}>
             Revoke
           </Button>

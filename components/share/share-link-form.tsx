@@ -3,16 +3,18 @@
 import { useState } from 'react'
 import { anchorText } from '@/components/notes/note-types'
 import { Button } from '@/components/ui/button'
+import { ConflictNotice } from '@/components/ui/conflict-notice'
 import { Checkbox } from '@/components/ui/checkbox'
 import { Actions } from '@/components/ui/dialog'
 import { Field, FieldGroup } from '@/components/ui/field'
 import { Notice } from '@/components/ui/notice'
 import { Select } from '@/components/ui/select'
 import { TextArea } from '@/components/ui/text-input'
+import type { Dates } from '@/lib/client/dates'
 import { useDates } from '@/lib/client/display'
 import { RequestError } from '@/lib/client/fetcher'
 import type { Note } from '@/lib/schemas/api'
-import { PREFACE_MAX, type ShareLink, type ShareLinkFields } from '@/lib/schemas/share'
+import { PREFACE_MAX, shareLinkSchema, type ShareLink, type ShareLinkFields } from '@/lib/schemas/share'
 
 const DURATIONS = { week: 7, month: 30, year: 365 } as const
 type Expiry = keyof typeof DURATIONS | 'never' | 'as-it-is'
@@ -24,16 +26,23 @@ const EXPIRY_OPTIONS: { value: Expiry; label: string }[] = [
   { value: 'never', label: 'until it is revoked' },
 ]
 
+function inDays(days: number): string {
+  return new Date(Date.now() + days * 86_400_000).toISOString()
+}
+
 interface ShareLinkFormProps {
   /** The link to change; null: a new one. */
   link: ShareLink | null
   notes: readonly Note[]
-  onSend: (fields: ShareLinkFields) => Promise<void>
+  /** `version`: the one of the link that the change is made from. */
+  onSend: (fields: ShareLinkFields, version: number) => Promise<void>
+  /** Somebody else changed the link meanwhile: goes on from what they made of it. */
+  onTakeTheirs?: (link: ShareLink) => void
   onCancel: () => void
 }
 
 /** How long a link lasts, what its reader is told first, and which notes are shown. */
-export function ShareLinkForm({ link, notes, onSend, onCancel }: ShareLinkFormProps) {
+export function ShareLinkForm({ link, notes, onSend, onTakeTheirs, onCancel }: ShareLinkFormProps) {
   const dates = useDates()
   const kept = link?.expiresAt ?? null
   const [expiry, setExpiry] = useState<Expiry>(link === null ? 'month' : kept === null ? 'never' : 'as-it-is')
@@ -42,20 +51,22 @@ export function ShareLinkForm({ link, notes, onSend, onCancel }: ShareLinkFormPr
   const [isBusy, setBusy] = useState(false)
   const [fault, setFault] = useState<RequestError | Error | null>(null)
   const fields = fault instanceof RequestError ? fault.fields : {}
-  const isElsewhere = fault !== null && Object.keys(fields).length === 0
+  const theirs =
+    fault instanceof RequestError && fault.isConflict ? shareLinkSchema.safeParse(fault.current).data : null
+  const isElsewhere = fault !== null && !theirs && Object.keys(fields).length === 0
 
   function expiresAt(): string | null {
     if (expiry === 'never') return null
     if (expiry === 'as-it-is') return kept
-    return new Date(Date.now() + DURATIONS[expiry] * 86_400_000).toISOString()
+    return inDays(DURATIONS[expiry])
   }
 
-  async function send() {
+  async function send(version = link?.version ?? 1) {
     setBusy(true)
     setFault(null)
     try {
       const known = new Set(notes.map(({ id }) => id))
-      await onSend({ preface, expiresAt: expiresAt(), noteIds: noteIds.filter((id) => known.has(id)) })
+      await onSend({ preface, expiresAt: expiresAt(), noteIds: noteIds.filter((id) => known.has(id)) }, version)
     } catch (error) {
       setFault(error instanceof Error ? error : new Error('The link could not be saved. Try again.'))
       setBusy(false)
@@ -120,6 +131,15 @@ export function ShareLinkForm({ link, notes, onSend, onCancel }: ShareLinkFormPr
           </div>
         </FieldGroup>
       ) : null}
+      {theirs ? (
+        <ConflictNotice
+          thing="this link"
+          onKeepMine={() => void send(theirs.version)}
+          onTakeTheirs={() => onTakeTheirs?.(theirs)}
+        >
+          <p>{theirsInWords(theirs, notes, dates)}</p>
+        </ConflictNotice>
+      ) : null}
       {isElsewhere ? (
         <Notice tone="error" isLive>
           {fault.message}
@@ -137,4 +157,11 @@ export function ShareLinkForm({ link, notes, onSend, onCancel }: ShareLinkFormPr
 
 function fromNow(option: (typeof EXPIRY_OPTIONS)[number]) {
   return option.value === 'never' ? option : { ...option, label: `${option.label} from now` }
+}
+
+function theirsInWords({ expiresAt, preface, noteIds }: ShareLink, notes: readonly Note[], dates: Dates): string {
+  const until = expiresAt === null ? 'until it is revoked' : `until ${dates.minute(expiresAt)}`
+  const shown = notes.filter(({ id }) => noteIds.includes(id)).map(({ text }) => `“${text.slice(0, 60)}”`)
+  const withNotes = shown.length === 0 ? 'no notes' : shown.join(', ')
+  return `Now it lasts ${until}, shows ${withNotes}, and ${preface === null ? 'says nothing first' : `says first: “${preface.slice(0, 200)}”`}.`
 }

@@ -2,7 +2,13 @@
 
 import useSWR from 'swr'
 import { getJson, sendJson, sendOnly } from '@/lib/client/fetcher'
-import { shareLinkListSchema, shareLinkSchema, type ShareLink, type ShareLinkFields } from '@/lib/schemas/share'
+import {
+  shareLinkListSchema,
+  shareLinkSchema,
+  type ShareLink,
+  type ShareLinkChange,
+  type ShareLinkFields,
+} from '@/lib/schemas/share'
 
 /** The share links of one analysis and what can be done with them. */
 export function useShareLinks(projectId: string, analysisId: string) {
@@ -20,8 +26,8 @@ export function useShareLinks(projectId: string, analysisId: string) {
       await mutate()
       return made
     },
-    change: async (linkId: string, fields: ShareLinkFields) => {
-      await sendJson('PATCH', `${base}/share-links/${linkId}`, fields, shareLinkSchema)
+    change: async (linkId: string, change: ShareLinkChange) => {
+      await sendJson('PATCH', `${base}/share-links/${linkId}`, change, shareLinkSchema)
       await mutate()
     },
     revoke: async (linkId: string) => {

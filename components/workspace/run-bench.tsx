@@ -16,7 +16,7 @@ import { useBenchAnalysis } from '@/lib/client/use-analysis'
 import { compareResults, rerunFinding } from '@/lib/findings/rerun-finding'
 import { correctionSchema, type Analysis, type Project, type Run } from '@/lib/schemas/api'
 import { defaultRecipe } from '@/lib/schemas/recipe'
-import { canEditProject } from '@/lib/schemas/rights'
+import { canEditProject, RIGHTS } from '@/lib/schemas/rights'
 import { assertCurrent } from './assert-current'
 import { NameDialog } from './name-dialog'
 import { RenameAnalysis } from './rename-analysis'
@@ -103,7 +103,11 @@ export function RunBench({ project, run, analysis, savedResult, userId }: RunBen
               // A page of its own, loaded afresh: its margins on paper come with the nonce of its own answer.
               <ButtonAnchor href={`/projects/${project.id}/analyses/${analysis.id}/report`}>Print report</ButtonAnchor>
             ) : null}
-            {isReadOnly ? null : (
+            {isReadOnly ? (
+              analysis && RIGHTS[project.role].unshare ? (
+                <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} isArchived />
+              ) : null
+            ) : (
               <>
                 {analysis ? <ShareButton projectId={project.id} analysisId={analysis.id} notes={notes.notes} /> : null}
                 {analysis ? <Button onClick={() => setRenaming(true)}>Rename</Button> : null}

@@ -1,18 +1,19 @@
 import { sql, type Kysely, type Transaction } from 'kysely'
-import type { ShareLinkFields } from '@/lib/schemas/share'
+import type { ShareLinkChange, ShareLinkFields } from '@/lib/schemas/share'
 import type { Database } from '../schema'
 import { newToken } from '../tokens'
 import type { ProjectAccess } from './access'
 import { findAnalysis } from './analyses'
 import { Refusal, unknownThing } from './refusal'
 
-function linksOf(db: Kysely<Database>, access: ProjectAccess<'edit'>) {
+function linksOf(db: Kysely<Database>, access: ProjectAccess<'edit' | 'unshare'>) {
   return db
     .selectFrom('shareLinks')
     .innerJoin('users', 'users.id', 'shareLinks.createdBy')
     .where('shareLinks.projectId', '=', access.projectId)
     .select([
       'shareLinks.id',
+      'shareLinks.version',
       'shareLinks.analysisId',
       'shareLinks.token',
       'shareLinks.preface',
@@ -30,7 +31,7 @@ function linksOf(db: Kysely<Database>, access: ProjectAccess<'edit'>) {
 }
 
 /** Newest first, ended ones too. */
-export async function listShareLinks(db: Kysely<Database>, access: ProjectAccess<'edit'>, analysisId: string) {
+export async function listShareLinks(db: Kysely<Database>, access: ProjectAccess<'unshare'>, analysisId: string) {
   await findAnalysis(db, access, analysisId)
   return linksOf(db, access)
     .where('shareLinks.analysisId', '=', analysisId)
@@ -39,7 +40,7 @@ export async function listShareLinks(db: Kysely<Database>, access: ProjectAccess
     .execute()
 }
 
-export async function findShareLink(db: Kysely<Database>, access: ProjectAccess<'edit'>, linkId: string) {
+export async function findShareLink(db: Kysely<Database>, access: ProjectAccess<'edit' | 'unshare'>, linkId: string) {
   const row = await linksOf(db, access).where('shareLinks.id', '=', linkId).executeTakeFirst()
   if (!row) throw unknownThing('share link')
   return row
@@ -67,25 +68,41 @@ export async function insertShareLink(
   return { link: await findShareLink(trx, access, id), analysisName: name }
 }
 
+/** @throws {Refusal} 'changed' where it was changed from the same version meanwhile, 'link-ended' once it was revoked */
 export async function updateShareLink(
   trx: Transaction<Database>,
   access: ProjectAccess<'edit'>,
-  { linkId, fields }: { linkId: string; fields: ShareLinkFields },
+  { linkId, version, preface, expiresAt, noteIds }: ShareLinkChange & { linkId: string },
 ) {
-  const { analysisId, revokedAt } = await findShareLink(trx, access, linkId)
-  if (revokedAt) throw new Refusal({ kind: 'link-ended' }, 'This link was revoked. Make a new one instead.')
-  await trx
+  const { analysisId } = await findShareLink(trx, access, linkId)
+  const changed = await trx
     .updateTable('shareLinks')
-    .set({ preface: fields.preface, expiresAt: fields.expiresAt === null ? null : new Date(fields.expiresAt) })
+    .set({
+      preface,
+      expiresAt: expiresAt === null ? null : new Date(expiresAt),
+      version: sql<number>`version + 1`,
+    })
     .where('id', '=', linkId)
-    .execute()
-  await replaceNotes(trx, { linkId, analysisId, noteIds: fields.noteIds })
+    .where('version', '=', version)
+    .where('revokedAt', 'is', null)
+    .returning('id')
+    .executeTakeFirst()
+  if (!changed) throw overtaken(await findShareLink(trx, access, linkId))
+  await replaceNotes(trx, { linkId, analysisId, noteIds })
   const { name } = await findAnalysis(trx, access, analysisId)
   return { link: await findShareLink(trx, access, linkId), analysisName: name }
 }
 
+function overtaken(current: Awaited<ReturnType<typeof findShareLink>>): Refusal {
+  if (current.revokedAt) return new Refusal({ kind: 'link-ended' }, 'This link was revoked. Make a new one instead.')
+  return new Refusal(
+    { kind: 'changed', change: null, current },
+    'This link was changed by somebody else meanwhile. Your version is still in the form; look at theirs before you save again.',
+  )
+}
+
 /** Ends the link for good; one that was revoked before stays as it is. */
-export async function revokeShareLink(trx: Transaction<Database>, access: ProjectAccess<'edit'>, linkId: string) {
+export async function revokeShareLink(trx: Transaction<Database>, access: ProjectAccess<'unshare'>, linkId: string) {
   const { analysisId } = await findShareLink(trx, access, linkId)
   const revoked = await trx
     .updateTable('shareLinks')

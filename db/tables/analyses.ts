@@ -76,6 +76,7 @@ export interface CorrectionsTable {
 /** A read-only report of one analysis for whoever holds the link. */
 export interface ShareLinksTable {
   id: Generated<string>
+  version: Generated<number>
   projectId: string
   analysisId: string
   /** 256 random bits, base64url. Readable: the table lies beside the analysis that it opens. */

@@ -2,27 +2,29 @@ import type { Role } from './api'
 
 /** What each role may do in a project; the one place that says so, to the server and in words to people. */
 export const RIGHTS = {
-  viewer: { read: true, edit: false, manage: false },
-  editor: { read: true, edit: true, manage: false },
-  owner: { read: true, edit: true, manage: true },
+  viewer: { read: true, edit: false, unshare: false, manage: false },
+  editor: { read: true, edit: true, unshare: true, manage: false },
+  owner: { read: true, edit: true, unshare: true, manage: true },
 } as const satisfies Record<Role, Record<string, boolean>>
 
 /**
  * 'read': see everything, download. 'edit': runs, analyses, notes, share links, correction tables, optics, the drive train;
- * nobody while the project is archived. 'manage': the project itself, its people, and other people's notes.
+ * nobody while the project is archived. 'unshare': see share links and revoke them, then too. 'manage': the project itself, its people, and other people's notes.
  */
 export type Right = keyof (typeof RIGHTS)[Role]
 
+/** Those that people are told of; 'unshare' goes without saying where links can be made. */
 const RIGHT_NAMES = ['read', 'edit', 'manage'] as const satisfies readonly Right[]
+type NamedRight = (typeof RIGHT_NAMES)[number]
 
 /** Each right in words that follow “may”. */
-const RIGHT_WORDS: Record<Right, string> = {
+const RIGHT_WORDS: Record<NamedRight, string> = {
   read: 'read and download everything',
   edit: 'bring in runs, analyse, write notes, share analyses and make correction tables',
   manage: 'decide who is here, and rename, archive or delete the project',
 }
 
-function rightsOf(role: Role): Right[] {
+function rightsOf(role: Role): NamedRight[] {
   return RIGHT_NAMES.filter((right) => RIGHTS[role][right])
 }
 
@@ -41,7 +43,7 @@ export interface RightsChange {
 }
 
 export function rightsChange(before: Role, after: Role): RightsChange {
-  const words = (rights: Right[]) => rights.map((right) => RIGHT_WORDS[right]).join('; ') || null
+  const words = (rights: NamedRight[]) => rights.map((right) => RIGHT_WORDS[right]).join('; ') || null
   const [had, has] = [rightsOf(before), rightsOf(after)]
   return {
     gained: words(has.filter((right) => !had.includes(right))),

@@ -7,8 +7,9 @@ import { fullAnalysisResultSchema } from './analysis-result'
 /*
  * Share links: one read-only report for whoever holds the link.
  *
- * GET, POST …/analyses/[analysisId]/share-links; PATCH, DELETE …/share-links/[linkId] (all: editor). DELETE revokes: the
- * link stays in the list and opens nothing more.
+ * GET, POST …/analyses/[analysisId]/share-links; PATCH, DELETE …/share-links/[linkId] (all: editor). PATCH answers 409
+ * `changed-meanwhile` with the link as it is in `current`. DELETE revokes: the link stays in the list and opens nothing more.
+ * GET and DELETE work in an archived project too, where a link goes on until it is revoked.
  * GET /api/share/[token] → shareReportSchema, without a session; GET /api/share/[token]/columns → packed columns as a gzip
  * file. 404 for a token that is none, 410 `link-ended` once it has expired or was revoked.
  */
@@ -34,9 +35,12 @@ export const shareLinkFieldsSchema = z.object({
   noteIds: z.array(id).max(500),
 })
 export type ShareLinkFields = z.output<typeof shareLinkFieldsSchema>
+export const shareLinkChangeSchema = shareLinkFieldsSchema.extend({ version: z.number().int().min(1) })
+export type ShareLinkChange = z.output<typeof shareLinkChangeSchema>
 
 export const shareLinkSchema = z.object({
   id,
+  version: z.number().int(),
   token: z.string(),
   preface: z.string().nullable(),
   noteIds: z.array(id),

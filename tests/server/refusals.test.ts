@@ -283,7 +283,14 @@ const cases: [string, Case][] = [
   ],
   [
     'PATCH share-links/…',
-    { method: 'PATCH', module: shareLink, may: EDIT, status: 200, fresh: 'linkId', body: () => SHARED },
+    {
+      method: 'PATCH',
+      module: shareLink,
+      may: EDIT,
+      status: 200,
+      fresh: 'linkId',
+      body: () => ({ ...SHARED, version: 1 }),
+    },
   ],
   ['DELETE share-links/…', { method: 'DELETE', module: shareLink, may: EDIT, status: 204, fresh: 'linkId' }],
   ['GET corrections', { method: 'GET', module: corrections, may: READ, status: 200 }],

@@ -81,8 +81,8 @@ describe('a share link', () => {
       lastOpenedAt: null,
     })
     expect(made.token).toMatch(/^[A-Za-z0-9_-]{43}$/)
-    const changed = await (await change(made.id, 'PATCH', { ...FIELDS, preface: '' })).json()
-    expect(changed).toEqual({ ...made, preface: null, expiresAt: null, noteIds: [] })
+    const changed = await (await change(made.id, 'PATCH', { ...FIELDS, preface: '', version: 1 })).json()
+    expect(changed).toEqual({ ...made, version: 2, preface: null, expiresAt: null, noteIds: [] })
     expect((await list())[0]).toEqual(changed)
     expect((await change(made.id, 'DELETE')).status).toBe(204)
     expect((await change(made.id, 'DELETE')).status).toBe(204)
@@ -114,10 +114,35 @@ describe('a share link', () => {
     )
   })
 
+  test('is not changed from a version that somebody else has changed: a note taken out stays out', async () => {
+    const { id, token } = await makeLink({ ...FIELDS, noteIds: [chosen, hidden] })
+    const taken = await change(id, 'PATCH', { ...FIELDS, noteIds: [chosen], version: 1 })
+    expect(taken.status).toBe(200)
+    const stale = await change(id, 'PATCH', {
+      preface: 'Hello',
+      expiresAt: null,
+      noteIds: [chosen, hidden],
+      version: 1,
+    })
+    expect(stale.status).toBe(409)
+    expect((await stale.json()).error).toMatchObject({ code: 'changed-meanwhile', current: await taken.json() })
+    const report = shareReportSchema.parse(await (await open(token)).json())
+    expect(report.preface).toBeNull()
+    expect(report.subject.notes.map(({ text }) => text)).toEqual(['For the support desk'])
+  })
+
+  test('is changed by one of two at once', async () => {
+    const { id } = await makeLink()
+    const responses = await Promise.all(
+      [[chosen], [hidden]].map((noteIds) => change(id, 'PATCH', { ...FIELDS, noteIds, version: 1 })),
+    )
+    expect(responses.map(({ status }) => status).sort()).toEqual([200, 409])
+  })
+
   test('once revoked is changed no more', async () => {
     const { id } = await makeLink()
     await change(id, 'DELETE')
-    const response = await change(id, 'PATCH', FIELDS)
+    const response = await change(id, 'PATCH', { ...FIELDS, version: 1 })
     expect(response.status).toBe(410)
     expect((await response.json()).error.code).toBe('link-ended')
   })
@@ -246,8 +271,8 @@ describe('what a link opens', () => {
     expect(await shareStatus(makeRequest('/'), token)).toBe(status)
   })
 
-  test('goes on in an archived project', async () => {
-    const { token } = await makeLink()
+  test('goes on in an archived project until it is revoked there', async () => {
+    const { id, token } = await makeLink()
     const archive = (values: { archivedAt: Date | null; archivedBy: string | null }) =>
       database.db.updateTable('projects').set(values).where('id', '=', project.id).execute()
     await archive({ archivedAt: new Date(), archivedBy: project.people.owner.id })
@@ -255,6 +280,10 @@ describe('what a link opens', () => {
       expect((await open(token)).status).toBe(200)
       expect((await openColumns(token)).status).toBe(200)
       expect((await post(FIELDS)).status).toBe(409)
+      expect((await change(id, 'PATCH', { ...FIELDS, version: 1 })).status).toBe(409)
+      expect((await list()).map((link) => link.id)).toContain(id)
+      expect((await change(id, 'DELETE')).status).toBe(204)
+      expect((await open(token)).status).toBe(410)
     } finally {
       await archive({ archivedAt: null, archivedBy: null })
     }

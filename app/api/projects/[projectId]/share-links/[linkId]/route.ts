@@ -1,7 +1,7 @@
 import { database } from '@/db'
 import { insertAuditEvent } from '@/db/queries/audit'
 import { revokeShareLink, updateShareLink } from '@/db/queries/share-links'
-import { shareLinkFieldsSchema, shareLinkSchema } from '@/lib/schemas/share'
+import { shareLinkChangeSchema, shareLinkSchema } from '@/lib/schemas/share'
 import { answer, answerNothing, readJson, respondInProject, type RouteContext } from '@/lib/server/respond'
 import { assertLaterThanNow } from '@/lib/server/share'
 
@@ -9,12 +9,12 @@ type Context = RouteContext<'projectId' | 'linkId'>
 
 export function PATCH(request: Request, context: Context) {
   return respondInProject({ request, context, right: 'edit' }, async ({ access, params }) => {
-    const fields = await readJson(request, shareLinkFieldsSchema)
-    assertLaterThanNow(fields.expiresAt)
+    const change = await readJson(request, shareLinkChangeSchema)
+    assertLaterThanNow(change.expiresAt)
     const changed = await database()
       .transaction()
       .execute(async (trx) => {
-        const { link, analysisName } = await updateShareLink(trx, access, { linkId: params.linkId, fields })
+        const { link, analysisName } = await updateShareLink(trx, access, { linkId: params.linkId, ...change })
         await insertAuditEvent(trx, access, { action: 'share-link.change', subject: analysisName })
         return link
       })
@@ -22,9 +22,9 @@ export function PATCH(request: Request, context: Context) {
   })
 }
 
-/** Revokes it. It stays in the list, so that whoever opens it learns that it has ended. */
+/** Revokes it, in an archived project too. It stays in the list, so that whoever opens it learns that it has ended. */
 export function DELETE(request: Request, context: Context) {
-  return respondInProject({ request, context, right: 'edit' }, async ({ access, params }) => {
+  return respondInProject({ request, context, right: 'unshare' }, async ({ access, params }) => {
     await database()
       .transaction()
       .execute(async (trx) => {

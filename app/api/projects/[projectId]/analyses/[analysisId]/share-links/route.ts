@@ -8,7 +8,7 @@ import { assertLaterThanNow } from '@/lib/server/share'
 type Context = RouteContext<'projectId' | 'analysisId'>
 
 export function GET(request: Request, context: Context) {
-  return respondInProject({ request, context, right: 'edit' }, async ({ access, params }) =>
+  return respondInProject({ request, context, right: 'unshare' }, async ({ access, params }) =>
     answer(shareLinkListSchema, { links: await listShareLinks(database(), access, params.analysisId) }),
   )
 }
