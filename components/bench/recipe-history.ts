@@ -5,7 +5,7 @@ export interface RecipeHistory {
   past: readonly Recipe[]
   future: readonly Recipe[]
   /** The setting that was changed last, and when; quick changes of one setting are one step. */
-  last: { key: string; atMs: number } | null
+  last: { key: string | null; atMs: number } | null
 }
 
 export const EMPTY_HISTORY: RecipeHistory = { past: [], future: [], last: null }
@@ -17,15 +17,16 @@ const ONE_STEP_MS = 1200
 export interface RecipeChange {
   /** The recipe that is being left. */
   from: Recipe
-  /** Which setting changes. */
-  key: string
+  /** Which setting changes; null for a press that is a step of its own, however soon it follows the one before. */
+  key: string | null
   atMs: number
 }
 
 /** After a change: one step more to undo, nothing to redo. */
 export function recordChange(history: RecipeHistory, { from, key, atMs }: RecipeChange): RecipeHistory {
   const { last, past } = history
-  const isSameStep = past.length > 0 && last !== null && last.key === key && atMs - last.atMs < ONE_STEP_MS
+  const isSameStep =
+    key !== null && past.length > 0 && last !== null && last.key === key && atMs - last.atMs < ONE_STEP_MS
   return {
     past: isSameStep ? past : [...past, from].slice(-MOST_STEPS),
     future: [],

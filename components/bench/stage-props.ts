@@ -11,7 +11,7 @@ export interface StageInput {
   recipe: Recipe
   /** How swings and displacements of this run are shown to the person. */
   display: Display
-  change: (key: string, next: Recipe) => void
+  change: (key: string | null, next: Recipe) => void
   notes: readonly NumberedNote[]
   noteActions: NoteActions
   isLocked: boolean

@@ -49,7 +49,7 @@ export function TrackStage({ result, views, recipe, display, change, notes, note
 
   function leaveOut(span: { startSeconds: number; endSeconds: number }) {
     const spans = [...excludedSpans, { startSeconds: tidy(span.startSeconds), endSeconds: tidy(span.endSeconds) }]
-    change('excludedSpans', { ...recipe, excludedSpans: spans.sort((a, b) => a.startSeconds - b.startSeconds) })
+    change(null, { ...recipe, excludedSpans: spans.sort((a, b) => a.startSeconds - b.startSeconds) })
     setSelection(null)
   }
 
@@ -68,7 +68,7 @@ export function TrackStage({ result, views, recipe, display, change, notes, note
             spans={excludedSpans}
             isLocked={isLocked}
             onRemove={(index) =>
-              change('excludedSpans', { ...recipe, excludedSpans: excludedSpans.filter((_, each) => each !== index) })
+              change(null, { ...recipe, excludedSpans: excludedSpans.filter((_, each) => each !== index) })
             }
           />
           {!isLocked && result ? <ExcludeForm onLeaveOut={leaveOut} /> : null}

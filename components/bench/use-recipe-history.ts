@@ -5,8 +5,8 @@ import type { Recipe } from '@/lib/analysis/types'
 import { EMPTY_HISTORY, recordChange, redo, undo, type HistoryStep } from './recipe-history'
 
 export interface RecipeEditing {
-  /** Changes a setting; `key` names it, so that quick changes of one setting are one step. */
-  change: (key: string, next: Recipe) => void
+  /** Changes a setting; `key` names it, so that quick changes of one setting are one step; null: never. */
+  change: (key: string | null, next: Recipe) => void
   undo: (() => void) | null
   redo: (() => void) | null
 }
@@ -16,7 +16,7 @@ export function useRecipeHistory(recipe: Recipe, onRecipeChange: (recipe: Recipe
   const [history, setHistory] = useState(EMPTY_HISTORY)
 
   const change = useCallback(
-    (key: string, next: Recipe) => {
+    (key: string | null, next: Recipe) => {
       setHistory((before) => recordChange(before, { from: recipe, key, atMs: Date.now() }))
       onRecipeChange(next)
     },

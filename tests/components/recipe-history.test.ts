@@ -18,12 +18,13 @@ test('steps back and forth through the recipes', () => {
 })
 
 test('quick changes of one setting are one step; slow ones and others are their own', () => {
-  const at = (history: typeof EMPTY_HISTORY, key: string, atMs: number) =>
+  const at = (history: typeof EMPTY_HISTORY, key: string | null, atMs: number) =>
     recordChange(history, { from: recipe(atMs), key, atMs })
   const typed = at(at(at(EMPTY_HISTORY, 'a', 0), 'a', 300), 'a', 600)
   expect(typed.past).toHaveLength(1)
   expect(at(typed, 'a', 5000).past).toHaveLength(2)
   expect(at(typed, 'b', 700).past).toHaveLength(2)
+  expect(at(at(EMPTY_HISTORY, null, 0), null, 300).past).toHaveLength(2)
 })
 
 test('a change after undo leaves nothing to redo', () => {
