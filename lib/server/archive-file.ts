@@ -1,5 +1,5 @@
 import 'server-only'
-import { mkdtemp, open, rm, type FileHandle } from 'node:fs/promises'
+import { mkdtemp, open, readdir, rm, stat, type FileHandle } from 'node:fs/promises'
 import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { Reader, ZipReader, type FileEntry } from '@zip.js/zip.js'
@@ -25,9 +25,25 @@ const BODY_LIMITS = {
   tooLargeMessage: 'The archive is larger than 1 GB, the most that can be brought in.',
 }
 
+const FOLDER_PREFIX = 'turnwright-archive-'
+/** Longer than any archive takes to be brought in. */
+const LEFT_BEHIND_MS = 24 * 3_600_000
+
+/** Takes away what a server that was killed amid its work has left: up to 1 GB each time. */
+async function sweepLeftBehind(): Promise<void> {
+  const names = (await readdir(tmpdir())).filter((name) => name.startsWith(FOLDER_PREFIX))
+  for (const path of names.map((name) => join(tmpdir(), name))) {
+    // Gone meanwhile, or another user's.
+    const found = await stat(path).catch(() => null)
+    if (!found || Date.now() - found.mtimeMs < LEFT_BEHIND_MS) continue
+    await rm(path, { recursive: true, force: true }).catch(() => {})
+  }
+}
+
 /** A folder of our own for as long as `work` lasts; whatever happens, it is gone afterwards. */
 export async function inTemporaryFolder<T>(work: (folder: string) => Promise<T>): Promise<T> {
-  const folder = await mkdtemp(join(tmpdir(), 'turnwright-archive-'))
+  await sweepLeftBehind()
+  const folder = await mkdtemp(join(tmpdir(), FOLDER_PREFIX))
   try {
     return await work(folder)
   } finally {

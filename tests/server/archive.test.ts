@@ -1,5 +1,6 @@
-import { readdirSync } from 'node:fs'
+import { mkdtempSync, readdirSync, rmSync, utimesSync, writeFileSync } from 'node:fs'
 import { tmpdir } from 'node:os'
+import { join } from 'node:path'
 import { sql } from 'kysely'
 import { beforeAll, beforeEach, describe, expect, test } from 'vitest'
 import { GET as listAnalyses } from '@/app/api/projects/[projectId]/analyses/route'
@@ -453,6 +454,57 @@ describe('a project with everything that is awkward', () => {
       ])
     } finally {
       limits.mostEntries = usual
+    }
+  })
+
+  test('what a server that was killed has left behind goes with the next archive, and nothing younger', async () => {
+    const [old, young] = [1, 2].map(() => mkdtempSync(join(tmpdir(), 'turnwright-archive-')))
+    try {
+      writeFileSync(join(old, 'archive.zip'), 'half of one')
+      const yesterday = new Date(Date.now() - 25 * 3_600_000)
+      utimesSync(old, yesterday, yesterday)
+      expect((await upload(text('no ZIP'), importer.cookie)).status).toBe(422)
+      expect(temporaryFolders()).toEqual([young.split('/').at(-1)])
+    } finally {
+      for (const folder of [old, young]) rmSync(folder, { recursive: true, force: true })
+    }
+  })
+
+  test('two entries that share their bytes, of which a small file could have thousands', async () => {
+    const files = await unzip(archive)
+    const twins = ['corrections/aaa/table.csv', 'corrections/bbb/table.csv']
+    for (const path of twins) replaceFile(files, path, text('x'.repeat(5000)))
+    const bytes = await zipped(files)
+    const [first, second] = twins.map((path) => Buffer.from(bytes).lastIndexOf(path) - 46)
+    const directory = new DataView(bytes.buffer, bytes.byteOffset)
+    for (const at of [first, second]) expect(directory.getUint32(at, true)).toBe(0x02014b50)
+    // The place of the second one's content is that of the first one's.
+    directory.setUint32(second + 42, directory.getUint32(first + 42, true), true)
+    const response = await upload(bytes, importer.cookie)
+    const { error } = await response.json()
+    expect([response.status, error.code]).toEqual([422, 'bad-archive'])
+    expect(error.message).toMatch(/^corrections\/(aaa|bbb)\/table\.csv is damaged/)
+    expect(temporaryFolders()).toEqual([])
+  })
+
+  test('an archive that unpacks to more than a fair multiple of its size', async () => {
+    const { ARCHIVE_LIMITS } = await import('@/lib/server/archive-file')
+    const limits = ARCHIVE_LIMITS as { ratioFreeBytes: number }
+    const usual = limits.ratioFreeBytes
+    limits.ratioFreeBytes = 40_000_000
+    try {
+      const files: Files = new Map([['manifest.json', (await unzip(archive)).get('manifest.json')!]])
+      files.set('manifest.json', text(textOf(files, 'manifest.json').replace(/"files": \[[^]*\]/, '"files": []')))
+      for (let i = 0; i < 3; i++) replaceFile(files, `corrections/${i}/table.csv`, new Uint8Array(30_000_000))
+      for (const path of ['project.json', 'trail.json']) replaceFile(files, path, text('{}'))
+      const bomb = await zipped(files)
+      expect(bomb.length).toBeLessThan(200_000)
+      const response = await upload(bomb, importer.cookie)
+      const { error } = await response.json()
+      expect([response.status, error.code]).toEqual([422, 'bad-archive'])
+      expect(error.message).toMatch(/unpacks the archive to more than 200 times its size/)
+    } finally {
+      limits.ratioFreeBytes = usual
     }
   })
 
