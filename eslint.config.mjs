@@ -2,23 +2,20 @@ import nextVitals from 'eslint-config-next/core-web-vitals'
 import nextTypeScript from 'eslint-config-next/typescript'
 
 /** Folders whose files may not import from the folders listed beside them (DEVELOPERS.md, "Who may import what"). */
+const IMPURE = ['./app', './components', './db', './lib/client', './lib/server', './workers']
+const PURE_FOLDERS = ['formats', 'figures', 'findings', 'mail', 'schemas']
+
 const zones = [
-  { target: './lib/analysis', from: ['./app', './components', './db', './lib', './workers'], except: ['./analysis'] },
-  {
-    target: './lib/simulate',
-    from: ['./app', './components', './db', './lib/client', './lib/server', './lib/formats', './workers'],
-  },
-  { target: './lib/formats', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
-  { target: './lib/figures', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
-  { target: './lib/findings', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
-  { target: './lib/mail', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
-  { target: './lib/schemas', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
-  { target: './lib/cli', from: ['./app', './components', './db', './lib/client', './lib/server', './workers'] },
-  { target: './workers', from: ['./app', './components', './db', './lib/client', './lib/server'] },
-  { target: './db', from: ['./app', './components', './lib/client', './lib/server', './workers'] },
-  { target: './lib/server', from: ['./app', './components', './lib/client', './workers'] },
-  { target: './lib/client', from: ['./app', './components', './db', './lib/server'] },
-  { target: './components', from: ['./app', './db', './lib/server', './workers'] },
+  { target: './lib/analysis', from: [...IMPURE, './lib'], except: ['./analysis'] },
+  { target: './lib/simulate', from: [...IMPURE, './lib'], except: ['./analysis', './simulate'] },
+  ...PURE_FOLDERS.map((folder) => ({ target: `./lib/${folder}`, from: [...IMPURE, './lib/cli'] })),
+  { target: './lib/*.ts', from: [...IMPURE, './lib/cli'] },
+  { target: './lib/cli', from: IMPURE },
+  { target: './workers', from: ['./app', './components', './db', './lib/cli', './lib/client', './lib/server'] },
+  { target: './db', from: ['./app', './components', './lib/cli', './lib/client', './lib/server', './workers'] },
+  { target: './lib/server', from: ['./app', './components', './lib/cli', './lib/client', './workers'] },
+  { target: './lib/client', from: ['./app', './components', './db', './lib/cli', './lib/server'] },
+  { target: './components', from: ['./app', './db', './lib/cli', './lib/server', './workers'] },
   { target: './app', from: ['./tests'] },
 ]
 
@@ -45,6 +42,19 @@ const config = [
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_' }],
       'import/no-restricted-paths': ['error', { zones: flatZones }],
+    },
+  },
+  {
+    files: ['lib/*.ts', ...['analysis', 'simulate', ...PURE_FOLDERS].map((folder) => `lib/${folder}/**`)],
+    rules: {
+      'no-restricted-imports': [
+        'error',
+        {
+          patterns: [
+            { regex: '^(react|react-dom|next|swr|kysely|pg|node:.*)($|/)', message: 'This part of lib is pure.' },
+          ],
+        },
+      ],
     },
   },
   {

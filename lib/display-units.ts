@@ -1,7 +1,7 @@
 import type { Conversion, Estimate } from '@/lib/analysis/types'
 import { DECLINATION_LIMIT_DEGREES } from '@/lib/analysis/convert'
 import type { Preferences } from '@/lib/schemas/preferences'
-import { estimateParts, formatEstimate, formatNumber, type EstimateOptions, type EstimateParts } from '@/lib/units'
+import { formatEstimate, formatNumber, type EstimateOptions } from '@/lib/units'
 
 /**
  * How swings and displacements of one run are shown. What is computed, saved, exported and kept in addresses is always an
@@ -107,11 +107,6 @@ export function shownDisplacement(arcsec: Estimate, display: Display): Estimate 
 
 function scaled({ value, stderr }: Estimate, factor: number): Estimate {
   return { value: value * factor, stderr: stderr === null ? null : stderr * factor }
-}
-
-/** An amplitude for tables and figures: its parts, with the unit. */
-export function swingParts(amplitudeArcsec: Estimate, display: Display, options: EstimateOptions = {}): EstimateParts {
-  return estimateParts(shownSwing(amplitudeArcsec, display), { ...options, unit: displacementUnitOf(display) })
 }
 
 /** 7.350 ± 0.042″, 14.700 ± 0.084″. */

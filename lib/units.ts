@@ -139,13 +139,6 @@ export function formatBytes(bytes: number): string {
   return trimZeros(fixed(size, size < 10 ? 1 : 0)) + THIN_SPACE + unit
 }
 
-/** An instant in UTC to the second: 2031-11-14 21:03:07 UTC. */
-export function formatUtc(millisecondsSince1970: number | null): string {
-  if (millisecondsSince1970 === null) return ABSENT
-  const date = new Date(millisecondsSince1970)
-  return Number.isNaN(date.getTime()) ? ABSENT : `${date.toISOString().slice(0, 19).replace('T', ' ')} UTC`
-}
-
 /** An angle in degrees brought into [0, 360). */
 export function wrapDegrees(degrees: number): number {
   const turns = degrees / 360

@@ -1,5 +1,5 @@
 /** Offers text or bytes to the browser as a file. */
-export function saveFile(content: Blob, fileName: string): void {
+function saveFile(content: Blob, fileName: string): void {
   const url = URL.createObjectURL(content)
   const link = document.createElement('a')
   link.href = url

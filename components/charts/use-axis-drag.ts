@@ -79,7 +79,7 @@ function keepToOurselves(event: SyntheticEvent): void {
 }
 
 /** Data value at a share 0 … 1 of the axis from its left end. */
-export function axisValue(share: number, { range, isLog }: Pick<Figure['x'], 'range' | 'isLog'>): number {
+function axisValue(share: number, { range, isLog }: Pick<Figure['x'], 'range' | 'isLog'>): number {
   return isLog ? range[0] * (range[1] / range[0]) ** share : range[0] + share * (range[1] - range[0])
 }
 

@@ -28,7 +28,7 @@ export function overviewKeyFigures({ worm, turn }: OverviewFigures, display: Dis
 }
 
 /** Beside the peak-to-peak of the whole worm that of its fundamental must say whose it is. */
-export function fundamentalLabel(display: Display): string {
+function fundamentalLabel(display: Display): string {
   return swingWord(display) === 'amplitude' ? 'Worm amplitude' : 'Its fundamental, peak to peak'
 }
 

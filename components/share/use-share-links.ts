@@ -37,7 +37,6 @@ export function useShareLinks(projectId: string, analysisId: string) {
   }
 }
 
-export type ShareLinks = ReturnType<typeof useShareLinks>
 
 /** The address that is handed on. */
 export function addressOf({ token }: ShareLink): string {

@@ -56,11 +56,6 @@ export function SheetSection({ number, title, question, settings, finding, aside
   )
 }
 
-/** A figure within a finding, in brass. */
-export function Highlight({ children }: { children: ReactNode }) {
-  return <span className="text-brass">{children}</span>
-}
-
 /** A setting or a fact on one line: name at the left, figure at the right. */
 export function FactRow({ name, children }: { name: ReactNode; children: ReactNode }) {
   return (

@@ -12,7 +12,7 @@ const REFUSING = 'refusing'
 const MESSAGE_NAME = /^\d{14}-[0-9a-f]{12}\.eml$/
 
 /** The newest ones that are kept. */
-export const MOST_LOCAL_MAILS = 200
+const MOST_LOCAL_MAILS = 200
 
 export function isLocalMailName(name: string): boolean {
   return MESSAGE_NAME.test(name)

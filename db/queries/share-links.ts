@@ -40,7 +40,7 @@ export async function listShareLinks(db: Kysely<Database>, access: ProjectAccess
     .execute()
 }
 
-export async function findShareLink(db: Kysely<Database>, access: ProjectAccess<'edit' | 'unshare'>, linkId: string) {
+async function findShareLink(db: Kysely<Database>, access: ProjectAccess<'edit' | 'unshare'>, linkId: string) {
   const row = await linksOf(db, access).where('shareLinks.id', '=', linkId).executeTakeFirst()
   if (!row) throw unknownThing('share link')
   return row

@@ -38,7 +38,7 @@ function readRaw(key: string): string | null {
   }
 }
 
-export function findDraft(key: string): NoteDraft | null {
+function findDraft(key: string): NoteDraft | null {
   const raw = readRaw(key)
   if (raw === null) return null
   const known = parsed.get(key)

@@ -35,7 +35,7 @@ const DARK_STYLE = `@media (prefers-color-scheme: dark) {
 
 const ESCAPES: Record<string, string> = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' }
 
-export function escapeHtml(text: string): string {
+function escapeHtml(text: string): string {
   return text.replace(/[&<>"']/g, (letter) => ESCAPES[letter])
 }
 

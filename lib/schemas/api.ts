@@ -52,7 +52,6 @@ export const signInSchema = z.object({
 export const meSchema = z.object({
   user: z.object({ id, displayName: z.string(), email: z.string(), preferences: preferencesSchema }).nullable(),
 })
-export type Me = z.infer<typeof meSchema>
 
 // Projects ------------------------------------------------------------------------------------------------------------
 

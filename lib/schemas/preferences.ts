@@ -11,7 +11,7 @@ export type SwingMeasure = z.infer<typeof swingMeasureSchema>
 export const displacementUnitSchema = z.enum(['arcsec', 'px'])
 export type DisplacementUnit = z.infer<typeof displacementUnitSchema>
 
-export function isTimeZone(name: string): boolean {
+function isTimeZone(name: string): boolean {
   try {
     new Intl.DateTimeFormat('en', { timeZone: name })
     return true

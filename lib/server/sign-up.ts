@@ -13,7 +13,7 @@ import { hashPassword } from './passwords'
 import { accountLimit, addressLimit, takeAttempt } from './rate-limit'
 
 /** Tells the browser that signed up from the others in which the link of the mail may be followed. */
-export const SIGN_UP_COOKIE = 'turnwright_sign_up'
+const SIGN_UP_COOKIE = 'turnwright_sign_up'
 const SIGN_UP_SECONDS = 24 * 3600
 
 /** The secret that the browser was given when it signed up, or null. */

@@ -13,7 +13,6 @@ import {
   sizedDisplacement,
   sizedSwing,
   swingColumn,
-  swingParts,
   type Display,
 } from '@/lib/display-units'
 import { exampleRecipe } from '../support/example-outcome'
@@ -29,7 +28,6 @@ describe('a swing', () => {
     expect(shownSwing(amplitude, PEAK)).toEqual({ value: 0.5, stderr: 0.06 })
     expect(formatSwing(amplitude, PLAIN_DISPLAY)).toBe('0.250 ± 0.030″')
     expect(formatSwing(amplitude, PEAK)).toBe('0.500 ± 0.060″')
-    expect(swingParts(amplitude, PEAK)).toMatchObject({ value: '0.500', error: '0.060', unit: '″' })
     expect(sizedSwing(4, PEAK)).toBe('8.0″')
   })
 

@@ -11,7 +11,6 @@ import {
   formatPeriod,
   formatProbability,
   formatSignificant,
-  formatUtc,
   imageScaleArcsecPerPx,
   wrapDegrees,
 } from '@/lib/units'
@@ -122,14 +121,12 @@ test.each([
   expect(formatProbability(probability)).toBe(thin(expected))
 })
 
-test('formatPercent, formatCount, formatBytes and formatUtc', () => {
+test('formatPercent, formatCount and formatBytes', () => {
   expect(formatPercent(0.934)).toBe(thin('93~%'))
   expect(formatCount(1366)).toBe('1366')
   expect(formatCount(1000000)).toBe(thin('1~000~000'))
   expect(formatBytes(64 * 1024 * 1024)).toBe(thin('64~MB'))
   expect(formatBytes(1536)).toBe(thin('1.5~kB'))
-  expect(formatUtc(Date.UTC(2031, 10, 14, 21, 3, 7, 400))).toBe('2031-11-14 21:03:07 UTC')
-  expect(formatUtc(NaN)).toBe(ABSENT)
 })
 
 test('wrapDegrees stays in [0, 360) even for a rounding-sized negative', () => {
