@@ -31,9 +31,11 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, mar
   // Drawn at about the size it is seen at, so that the letters keep theirs.
   const width = isNarrow ? 336 : 870
   const titleLines = wrapped(axisTitle, width - 24)
+  const angleLines = wrapped(angleTitle, width - MARGIN.right - 12)
   // The numbers of the notes stand between the title and the bars.
   const extra = LINE_HEIGHT * (titleLines.length - 1) + (notes.length > 0 ? 14 : 0)
-  const height = 238 + extra
+  const extraBelow = LINE_HEIGHT * (angleLines.length - 1)
+  const height = 238 + extra + extraBelow
   const [low, high] = extent(
     bars.map(({ value }) => value),
     curve.map(({ value }) => value),
@@ -44,7 +46,7 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, mar
     left: MARGIN.left,
     right: width - MARGIN.right,
     top: MARGIN.top + extra,
-    bottom: height - MARGIN.bottom,
+    bottom: height - MARGIN.bottom - extraBelow,
   }
   const x = (angle: number) => plot.left + (angle / 360) * (plot.right - plot.left)
   const y = (value: number) => plot.bottom - ((value - low + pad) / (high - low + 2 * pad)) * (plot.bottom - plot.top)
@@ -163,9 +165,18 @@ export function TableChart({ picture, summary, axisTitle, angleTitle, notes, mar
           </text>
         </g>
       ))}
-      <text x={plot.right} y={plot.bottom + 40} textAnchor="end" fontSize="12" className="figures fill-soft">
-        {angleTitle}
-      </text>
+      {angleLines.map((line, index) => (
+        <text
+          key={line}
+          x={plot.right}
+          y={plot.bottom + 40 + LINE_HEIGHT * index}
+          textAnchor="end"
+          fontSize="12"
+          className="figures fill-soft"
+        >
+          {line}
+        </text>
+      ))}
     </SvgPicture>
   )
 }

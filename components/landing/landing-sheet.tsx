@@ -6,13 +6,14 @@ import { LandingTrackDrawing } from './landing-track'
 
 /** Track, spectrum and turn of one run on one sheet; the sentences above the drawings are their text alternative. */
 export function LandingSheet({ picture }: { picture: LandingPicture }) {
-  const { track, stems, dial, findings, figures } = picture
+  const { track, stems, narrowTrack, narrowStems, dial, findings, figures } = picture
   return (
     <figure className="overflow-hidden rounded-card border border-rule bg-card">
       <div className={dial ? 'grid lg:grid-cols-[minmax(0,1.45fr)_minmax(0,1fr)]' : undefined}>
         <div className="min-w-0 border-rule p-5 max-sm:px-3 lg:border-r">
           <p className="mb-3 text-finding font-semibold text-pretty">{findings.track}</p>
-          <LandingTrackDrawing track={track} />
+          <LandingTrackDrawing track={track} className="max-sm:hidden" />
+          <LandingTrackDrawing track={narrowTrack} className="sm:hidden" />
           <ul className="mt-1 flex flex-wrap gap-x-5 gap-y-1 text-sm text-soft">
             <LegendItem name="recorded" className="stroke-steel" width={1.2} />
             <LegendItem name="fitted" className="stroke-brass" width={2.4} />
@@ -51,7 +52,8 @@ export function LandingSheet({ picture }: { picture: LandingPicture }) {
         ) : null}
         <div className="min-w-0 border-t border-rule p-5 max-sm:px-3 lg:border-r">
           <p className="mb-3 text-finding font-semibold text-pretty">{findings.stems}</p>
-          <LandingStemsDrawing stems={stems} />
+          <LandingStemsDrawing stems={stems} className="max-sm:hidden" />
+          <LandingStemsDrawing stems={narrowStems} className="sm:hidden" />
         </div>
       </div>
       <figcaption className="border-t border-rule px-5 py-3 text-sm text-soft max-sm:px-3">

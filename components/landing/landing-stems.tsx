@@ -2,10 +2,15 @@ import type { LandingStems } from '@/lib/figures/landing-stems'
 import { PictureText } from './picture-text'
 
 /** The swings that were found, as stems with a dot over the spectrum of what they leave. */
-export function LandingStemsDrawing({ stems }: { stems: LandingStems }) {
+export function LandingStemsDrawing({ stems, className }: { stems: LandingStems; className: string }) {
   const { plot, width, height } = stems
   return (
-    <svg viewBox={`0 0 ${width} ${height}`} className="block h-auto w-full" aria-hidden="true" focusable="false">
+    <svg
+      viewBox={`0 0 ${width} ${height}`}
+      className={`block h-auto w-full ${className}`}
+      aria-hidden="true"
+      focusable="false"
+    >
       {stems.amplitudeTicks.map(({ at, label }) => (
         <g key={label}>
           <line x1={plot.left} x2={plot.right} y1={at} y2={at} className="stroke-faint" />
@@ -24,13 +29,13 @@ export function LandingStemsDrawing({ stems }: { stems: LandingStems }) {
         className="fill-faint stroke-steel"
       />
       <line x1={plot.left} x2={plot.right} y1={28} y2={28} className="stroke-rule" />
-      <PictureText x={plot.left - 8} y={21} anchor="end" isOptional>
+      <PictureText x={plot.left - 8} y={21} anchor="end">
         order
       </PictureText>
       {stems.orderTicks.map(({ at, label }) => (
         <g key={label}>
           <line x1={at} x2={at} y1={28} y2={34} className="stroke-soft" />
-          <PictureText x={at} y={21} anchor="middle" isOptional={Number(label) > 4 && Number(label) !== 12}>
+          <PictureText x={at} y={21} anchor="middle">
             {label}
           </PictureText>
         </g>
@@ -44,7 +49,7 @@ export function LandingStemsDrawing({ stems }: { stems: LandingStems }) {
             y={labelY}
             textAnchor={anchor}
             stroke="none"
-            className={`text-[13px] font-semibold max-sm:hidden ${kind === 'worm' ? 'fill-brass' : 'fill-verdigris'}`}
+            className={`text-[13px] font-semibold ${kind === 'worm' ? 'fill-brass' : 'fill-verdigris'}`}
           >
             {label}
           </text>
@@ -59,7 +64,7 @@ export function LandingStemsDrawing({ stems }: { stems: LandingStems }) {
           </PictureText>
         </g>
       ))}
-      <PictureText x={plot.right} y={height - 4} anchor="end" isOptional>
+      <PictureText x={plot.right} y={height - 4} anchor="end">
         period of the swing
       </PictureText>
     </svg>

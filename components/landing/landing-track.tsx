@@ -2,10 +2,15 @@ import type { LandingTrack } from '@/lib/figures/landing-picture'
 import { PictureText } from './picture-text'
 
 /** The recorded star, the fit over it, the drift below both; turns of the worm along the top. */
-export function LandingTrackDrawing({ track }: { track: LandingTrack }) {
+export function LandingTrackDrawing({ track, className }: { track: LandingTrack; className: string }) {
   const { plot, width, height } = track
   return (
-    <svg viewBox={`0 0 ${width} ${height}`} className="block h-auto w-full" aria-hidden="true" focusable="false">
+    <svg
+      viewBox={`0 0 ${width} ${height}`}
+      className={`block h-auto w-full ${className}`}
+      aria-hidden="true"
+      focusable="false"
+    >
       {track.valueTicks.map(({ at, label }) => (
         <g key={label}>
           <line x1={plot.left} x2={plot.right} y1={at} y2={at} className="stroke-faint" />
@@ -29,8 +34,8 @@ export function LandingTrackDrawing({ track }: { track: LandingTrack }) {
           {i === 0 ? null : (
             <line x1={x} x2={x} y1={plot.top} y2={plot.bottom} strokeDasharray="2 4" className="stroke-rule" />
           )}
-          {turnWidth > 60 ? (
-            <PictureText x={x + turnWidth / 2} y={plot.top - 10} anchor="middle" isOptional={i % 2 === 1}>
+          {turnWidth > (i % 2 === 0 ? 40 : 60) ? (
+            <PictureText x={x + turnWidth / 2} y={plot.top - 10} anchor="middle">
               {label}
             </PictureText>
           ) : null}

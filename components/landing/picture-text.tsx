@@ -7,23 +7,13 @@ interface PictureTextProps {
   anchor: 'start' | 'middle' | 'end'
   /** Colour; the soft one unless given. */
   className?: string
-  /** In a square drawing, which a phone shows at nearly its full size, letters stay as they are. */
+  /** A square drawing is shown a little smaller than it is drawn, so its letters are larger. */
   isSquare?: boolean
-  /** Left out on a phone, where the drawing is half as wide and its letters therefore twice as large. */
-  isOptional?: boolean
   children: ReactNode
 }
 
-/** Letters in a drawing; they grow, in the drawing's units, as the drawing shrinks. */
-export function PictureText({
-  x,
-  y,
-  anchor,
-  className = 'fill-soft',
-  isSquare = false,
-  isOptional = false,
-  children,
-}: PictureTextProps) {
+/** Letters in a drawing, on a rim of the card's colour that keeps lines off them. */
+export function PictureText({ x, y, anchor, className = 'fill-soft', isSquare = false, children }: PictureTextProps) {
   return (
     <text
       x={x}
@@ -32,12 +22,7 @@ export function PictureText({
       paintOrder="stroke"
       strokeWidth="4"
       strokeLinejoin="round"
-      className={classNames(
-        'stroke-card font-mono',
-        isSquare ? 'text-[14px]' : 'text-[12.5px] max-sm:text-[21px]',
-        isOptional && 'max-sm:hidden',
-        className,
-      )}
+      className={classNames('stroke-card font-mono', isSquare ? 'text-[14px]' : 'text-[12.5px]', className)}
     >
       {children}
     </text>

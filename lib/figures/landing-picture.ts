@@ -10,6 +10,9 @@ import { bands, evenTicks, linearScale, pathOf, type Band, type PlotBox, type Ti
 export interface LandingPicture {
   track: LandingTrack
   stems: LandingStems
+  /** The same for a phone: drawn at about its width, so that pictures keep their height and letters their size. */
+  narrowTrack: LandingTrack
+  narrowStems: LandingStems
   /** Null when the record gave no worm. */
   dial: LandingDial | null
   findings: LandingFindings
@@ -33,32 +36,34 @@ export interface LandingTrack {
 
 export function landingPicture({ result, views }: Pick<AnalysisSuccess, 'result' | 'views'>): LandingPicture {
   return {
-    track: landingTrack(result, views),
-    stems: landingStems(result, views),
+    track: landingTrack(result, views, WIDE),
+    stems: landingStems(result, views, { isNarrow: false }),
+    narrowTrack: landingTrack(result, views, NARROW),
+    narrowStems: landingStems(result, views, { isNarrow: true }),
     dial: views.turn ? landingDial(views.turn) : null,
     findings: landingFindings(result),
     figures: keyFigures(result),
   }
 }
 
-const WIDTH = 760
-const HEIGHT = 352
-const PLOT = { left: 58, right: 752, top: 52, bottom: 298 }
+type Frame = Pick<LandingTrack, 'width' | 'height' | 'plot'>
+
+const WIDE: Frame = { width: 760, height: 352, plot: { left: 58, right: 752, top: 52, bottom: 298 } }
+const NARROW: Frame = { width: 344, height: 262, plot: { left: 42, right: 338, top: 48, bottom: 214 } }
 
 /** The recorded track with what was fitted to it, drawn over the drift. */
-function landingTrack(result: AnalysisResult, { track }: AnalysisViews): LandingTrack {
+function landingTrack(result: AnalysisResult, { track }: AnalysisViews, frame: Frame): LandingTrack {
+  const { plot } = frame
   const { firstUsedTimeSeconds, lastUsedTimeSeconds, gaps } = result.run
   const values = [...track.recordedArcsec, ...track.driftArcsec, ...track.strayArcsec].filter(Number.isFinite)
   const [lowest, highest] = [Math.min(...values), Math.max(...values)]
   const margin = 0.06 * (highest - lowest || 1)
-  const x = linearScale([firstUsedTimeSeconds, lastUsedTimeSeconds], [PLOT.left, PLOT.right])
-  const y = linearScale([lowest - margin, highest + margin], [PLOT.bottom, PLOT.top])
+  const x = linearScale([firstUsedTimeSeconds, lastUsedTimeSeconds], [plot.left, plot.right])
+  const y = linearScale([lowest - margin, highest + margin], [plot.bottom, plot.top])
 
   const ends = [...track.turnStartSeconds.slice(1), lastUsedTimeSeconds]
   return {
-    width: WIDTH,
-    height: HEIGHT,
-    plot: PLOT,
+    ...frame,
     recordedPath: pathOf(track.timeSeconds, track.recordedArcsec, x, y),
     fittedPath: pathOf(track.modelTimeSeconds, track.fittedArcsec, x, y),
     driftPath: pathOf(track.modelTimeSeconds, track.driftArcsec, x, y),

@@ -52,7 +52,7 @@ describe('landingDial', () => {
 // The whole analysis runs once: a second or two, more on a busy machine.
 describe('the sample run on the landing page', { timeout: 60_000 }, () => {
   test('is drawn whole: six turns, a cloud, three stray points, worm and belt and motor', async () => {
-    const { track, stems, dial, findings } = await samplePicture()
+    const { track, stems, dial, findings, narrowTrack, narrowStems } = await samplePicture()
     expect(track.turns.map(({ label }) => label)).toEqual(['turn 1', 'turn 2', 'turn 3', 'turn 4', 'turn 5', 'turn 6'])
     expect(track.gaps).toHaveLength(1)
     expect(track.strayPoints).toHaveLength(3)
@@ -71,6 +71,13 @@ describe('the sample run on the landing page', { timeout: 60_000 }, () => {
     // The record ends a few seconds into the seventh turn.
     expect(dial!.turnPaths).toHaveLength(7)
     expect(JSON.stringify([track, stems, dial])).not.toMatch(/null|NaN/)
+    // A phone gets the same swings and turns; the numbers of the orders keep their distance.
+    expect(narrowTrack.turns).toHaveLength(6)
+    expect(narrowStems.stems).toHaveLength(6)
+    expect(narrowStems.orderTicks.length).toBeLessThan(stems.orderTicks.length)
+    for (const { orderTicks } of [stems, narrowStems]) {
+      orderTicks.slice(1).forEach(({ at }, i) => expect(at - orderTicks[i].at).toBeGreaterThanOrEqual(17))
+    }
     // The simulator's truth: 15.9″ of peak to peak, 0.35″ a minute of drift over 57 minutes.
     expect(findings.track).toMatch(
       /^In 57 minutes the worm swings the axis by 1[56]\.\d″ each turn; drift adds 0\.3[45]″ a minute\.$/,
