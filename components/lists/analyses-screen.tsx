@@ -36,6 +36,7 @@ const columnsIn = ({ day }: Dates, display: Display): readonly ListColumn<Analys
   },
   {
     id: 'run',
+    isName: true,
     header: 'Run',
     isSecondary: true,
     cell: ({ projectId, runId, runName }) => (
@@ -70,7 +71,7 @@ const columnsIn = ({ day }: Dates, display: Display): readonly ListColumn<Analys
     startsDescending: true,
     cell: ({ peakToPeakArcsec, peakToPeakStderrArcsec }) => estimateText(peakToPeakArcsec, peakToPeakStderrArcsec, '″'),
   },
-  { id: 'by', header: 'Saved by', isSecondary: true, cell: ({ createdBy }) => createdBy },
+  { id: 'by', header: 'Saved by', isSecondary: true, isName: true, cell: ({ createdBy }) => createdBy },
   {
     id: 'created',
     header: 'On',

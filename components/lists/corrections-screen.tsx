@@ -30,6 +30,7 @@ const columnsIn = ({ day }: Dates): readonly ListColumn<CorrectionSummary>[] => 
   },
   {
     id: 'analysis',
+    isName: true,
     header: 'Made from',
     isSecondary: true,
     cell: ({ projectId, analysisId, analysisName }) => (
@@ -60,7 +61,7 @@ const columnsIn = ({ day }: Dates): readonly ListColumn<CorrectionSummary>[] => 
     cell: ({ settings }) => `${settings.meaning}, ${unitText(settings.unit)}`,
   },
   { id: 'sense', header: 'Sense', cell: ({ senseBasis }) => senseBasis },
-  { id: 'by', header: 'Made by', isSecondary: true, cell: ({ createdBy }) => createdBy },
+  { id: 'by', header: 'Made by', isSecondary: true, isName: true, cell: ({ createdBy }) => createdBy },
   {
     id: 'created',
     header: 'On',

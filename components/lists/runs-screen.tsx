@@ -71,7 +71,7 @@ const columnsIn = ({ zoneName, dayAndTime }: Dates): readonly ListColumn<RunSumm
     startsDescending: true,
     cell: ({ byteLength }) => formatBytes(byteLength),
   },
-  { id: 'by', header: 'Brought in by', isSecondary: true, cell: ({ createdBy }) => createdBy },
+  { id: 'by', header: 'Brought in by', isSecondary: true, isName: true, cell: ({ createdBy }) => createdBy },
 ]
 
 export function RunsScreen({ projectId }: { projectId: string }) {

@@ -21,6 +21,7 @@ const columnsIn = ({ zoneName, dayAndTime }: Dates): readonly ListColumn<AuditEv
   { id: 'action', header: 'Did what', cell: ({ action }) => auditWords(action) },
   {
     id: 'subject',
+    isName: true,
     header: 'To what',
     cell: ({ subject, at }) => (
       <>

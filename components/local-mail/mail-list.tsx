@@ -26,7 +26,7 @@ export function MailList({ mails, selected, onSelect }: MailListProps) {
               name === selected ? 'border-brass-fill bg-faint' : 'border-transparent hover:bg-faint',
             )}
           >
-            <span className="block font-semibold">{subject}</span>
+            <span className="block font-semibold wrap-anywhere">{subject}</span>
             <span className="block text-sm break-all text-soft">{to}</span>
             <span className="block text-sm text-soft">{formatMinute(at)}</span>
           </button>

@@ -93,7 +93,7 @@ export function NoteItem({ number, note, actions, isOutside = false, isGone = fa
               <TextButton
                 onClick={() => void attempt(() => onResolve(note, !isSettled)).then(() => focusSoon(elementId))}
               >
-                {isSettled ? 'Take up again' : 'Resolve'}
+                {isSettled ? 'Take up again' : 'Settle'}
               </TextButton>
             ) : null}
             {onChange && mayChange ? (
@@ -121,7 +121,7 @@ export function NoteItem({ number, note, actions, isOutside = false, isGone = fa
             {note.text}
           </blockquote>
           <p className="mt-3">
-            It is gone for everyone then, from the pictures as well. To keep it but put it aside, resolve it.
+            It is gone for everyone then, from the pictures as well. To keep it but put it aside, settle it.
           </p>
           {fault ? (
             <Notice tone="error" isLive className="mt-3">

@@ -98,7 +98,7 @@ export function InvitationsTable({ projectId, invitations, isArchived }: Invitat
         hasControls: true,
         value: () => null,
         cell: (invitation) => (
-          <div className="flex flex-wrap justify-end gap-2">
+          <div className="flex flex-wrap justify-end gap-2 lg:flex-nowrap">
             {isArchived ? null : (
               <Button
                 size="small"

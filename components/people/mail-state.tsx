@@ -10,7 +10,7 @@ export function MailState({ invitation }: { invitation: Invitation }) {
     case 'on-its-way':
       return <>on its way</>
     case 'sent':
-      return <>sent {dates.minute(invitation.sentAt)}</>
+      return <span className="sm:whitespace-nowrap">sent {dates.minute(invitation.sentAt)}</span>
     case 'failing':
       return (
         <span className="text-oxide">{invitation.mailFault ?? 'The mail server does not answer; we keep trying.'}</span>
@@ -22,5 +22,9 @@ export function MailState({ invitation }: { invitation: Invitation }) {
 export function ValidUntil({ invitation }: { invitation: Invitation }) {
   const dates = useDates()
   const at = dates.minute(invitation.expiresAt)
-  return invitation.isExpired ? <span className="text-oxide">expired {at}; send it again</span> : <>{at}</>
+  return invitation.isExpired ? (
+    <span className="text-oxide">expired {at}; send it again</span>
+  ) : (
+    <span className="sm:whitespace-nowrap">{at}</span>
+  )
 }

@@ -3,7 +3,7 @@
 import { useState } from 'react'
 import { Button } from '@/components/ui/button'
 import { DataState } from '@/components/ui/data-state'
-import { Dialog } from '@/components/ui/dialog'
+import { Actions, Dialog } from '@/components/ui/dialog'
 import { Notice } from '@/components/ui/notice'
 import type { Note } from '@/lib/schemas/api'
 import type { ShareLink } from '@/lib/schemas/share'
@@ -80,7 +80,8 @@ function SharePanel({
                     ? 'No link leads to this analysis. New ones can be made once an owner opens the project again.'
                     : 'Links go on while the project is archived. They can be revoked here, and changed once an owner opens the project again.'}
                 </p>
-              ) : work.kind === 'make' || isFirst ? (
+              ) : null}
+              {!isArchived && (work.kind === 'make' || isFirst) ? (
                 <ShareLinkForm
                   link={null}
                   notes={notes}
@@ -91,25 +92,29 @@ function SharePanel({
                   onCancel={isFirst ? onClose : look}
                 />
               ) : (
-                <div className="flex flex-wrap justify-between gap-2">
-                  <Button variant="primary" onClick={() => setWork({ kind: 'make' })}>
-                    Make another link
-                  </Button>
-                  <Button onClick={onClose}>Close</Button>
-                </div>
+                <>
+                  {all.length > 0 ? (
+                    <ul aria-label="Links to this analysis">
+                      {all.map((link) => (
+                        <ShareLinkEntry
+                          key={link.id}
+                          link={link}
+                          onChange={isArchived ? undefined : () => setWork({ kind: 'change', link })}
+                          onRevoke={() => revoke(link.id)}
+                        />
+                      ))}
+                    </ul>
+                  ) : null}
+                  <Actions className="mt-0">
+                    <Button onClick={onClose}>Close</Button>
+                    {isArchived ? null : (
+                      <Button variant="primary" onClick={() => setWork({ kind: 'make' })}>
+                        Make another link
+                      </Button>
+                    )}
+                  </Actions>
+                </>
               )}
-              {all.length > 0 && work.kind === 'look' ? (
-                <ul aria-label="Links to this analysis">
-                  {all.map((link) => (
-                    <ShareLinkEntry
-                      key={link.id}
-                      link={link}
-                      onChange={isArchived ? undefined : () => setWork({ kind: 'change', link })}
-                      onRevoke={() => revoke(link.id)}
-                    />
-                  ))}
-                </ul>
-              ) : null}
             </>
           )}
         </DataState>

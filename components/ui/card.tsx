@@ -10,7 +10,7 @@ export function TitledCard({ title, actions, children, className }: TitledCardPr
   return (
     <Card className={classNames('p-5 max-sm:p-4', className)}>
       <div className="mb-3 flex flex-wrap items-center justify-between gap-2">
-        <h2 className="text-finding font-semibold">{title}</h2>
+        <h2 className="min-w-0 text-finding font-semibold wrap-anywhere">{title}</h2>
         {actions}
       </div>
       {children}

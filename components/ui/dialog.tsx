@@ -30,7 +30,7 @@ export function Dialog({ isOpen, onClose, title, children, className }: DialogPr
       // Told also when we closed it ourselves, and by then another dialog may stand in its place.
       onClose={() => isOpen && onClose()}
       className={classNames(
-        'm-auto w-full max-w-lg rounded-card border border-steel bg-card p-6 text-ink outline-none max-sm:max-w-[calc(100vw-1.5rem)] max-sm:p-4',
+        'm-auto w-full max-w-lg rounded-card border border-steel bg-card p-6 wrap-anywhere text-ink outline-none max-sm:max-w-[calc(100vw-1.5rem)] max-sm:p-4',
         className,
       )}
     >

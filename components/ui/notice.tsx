@@ -27,7 +27,7 @@ export function Notice({ tone = 'note', title, children, actions, isLive = false
   return (
     <div
       role={isLive ? (tone === 'error' ? 'alert' : 'status') : undefined}
-      className={classNames('border-l-3 py-0.5 pl-3 text-base', bar, className)}
+      className={classNames('min-w-0 border-l-3 py-0.5 pl-3 text-base wrap-anywhere', bar, className)}
     >
       {heading ? <p className={classNames('font-semibold', tone === 'error' && 'text-oxide')}>{heading}</p> : null}
       <div>{children}</div>

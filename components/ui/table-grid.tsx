@@ -9,6 +9,8 @@ export interface GridColumn {
   isSecondary?: boolean
   /** False: the head is no button. */
   isSortable?: boolean
+  /** A name that people gave: may be long and without a space. */
+  isName?: boolean
   /** Holds buttons or other controls: its head is only read out and sorts nothing. */
   hasControls?: boolean
 }
@@ -47,9 +49,9 @@ export function TableGrid<Row, Column extends GridColumn>(props: TableGridProps<
                 const className = classNames(
                   'px-5 py-2.5 align-baseline font-normal max-sm:px-4',
                   column.isNumeric && 'figures text-right whitespace-nowrap',
-                  // A name without spaces breaks anywhere; the least width keeps it from becoming a column of letters.
-                  !column.isNumeric && !column.hasControls && 'wrap-anywhere',
-                  index === 0 ? 'min-w-28 sm:min-w-56' : !column.isNumeric && 'min-w-20',
+                  // The least width keeps a column that may break anywhere from becoming one of letters.
+                  index === 0 && 'min-w-28 wrap-anywhere sm:min-w-56',
+                  index > 0 && column.isName && 'min-w-24 wrap-anywhere sm:min-w-44',
                   column.isSecondary && 'max-sm:hidden',
                 )
                 return index === 0 ? (

@@ -86,7 +86,7 @@ ${DARK_STYLE}
 <body class="sheet" style="margin:0;padding:0;background:${DAY.sheet}">
 <div style="display:none;max-height:0;max-width:0;overflow:hidden;font-size:1px;line-height:1px;opacity:0">${escapeHtml(preheader(paragraphs, validity))}</div>
 <table role="presentation" class="sheet" width="100%" cellpadding="0" cellspacing="0" border="0" style="background:${DAY.sheet}"><tr><td align="center" style="padding:28px 14px">
-<table role="presentation" width="100%" cellpadding="0" cellspacing="0" border="0" style="max-width:560px;font-family:${FONT}">
+<table role="presentation" width="100%" cellpadding="0" cellspacing="0" border="0" style="max-width:560px;font-family:${FONT};overflow-wrap:anywhere;word-break:break-word">
 <tr><td class="ink" style="padding:0 4px 14px;color:${DAY.ink};font-size:18px;line-height:24px;font-weight:600"><span class="brass" style="color:${DAY.brass}" aria-hidden="true">∿</span>&nbsp;Turnwright</td></tr>
 <tr><td class="card" align="left" style="padding:26px 24px 14px;background:${DAY.card};border:1px solid ${DAY.rule};border-radius:10px">
 <h1 class="ink" style="margin:0 0 16px;color:${DAY.ink};font-size:23px;line-height:29px;font-weight:640">${escapeHtml(title)}</h1>

@@ -160,7 +160,7 @@ describe('a note', () => {
   test('of somebody else can be settled, not changed or removed', () => {
     const actions = { onChange: vi.fn(), onDelete: vi.fn(), onResolve: vi.fn(), canChange: () => false }
     render(<Notes notes={[first]} actions={actions} />)
-    expect(screen.getAllByRole('button').map(({ textContent }) => textContent)).toEqual(['Resolve'])
+    expect(screen.getAllByRole('button').map(({ textContent }) => textContent)).toEqual(['Settle'])
   })
 })
 

@@ -58,7 +58,7 @@ test('an editor pins a note by clicking a picture and names the owner, who gets 
   // The owner settles what the editor wrote.
   const owner = await browserOf(browser, 'owner')
   await owner.goto(address)
-  await noteWith(owner, mark).getByRole('button', { name: 'Resolve' }).click()
+  await noteWith(owner, mark).getByRole('button', { name: 'Settle' }).click()
   const ownTrack = owner.getByRole('region', { name: 'Track' })
   await expect(ownTrack.getByText(/settled notes?$/)).toBeVisible()
   await owner.getByRole('heading', { level: 1 }).click()
@@ -69,7 +69,7 @@ test('an editor pins a note by clicking a picture and names the owner, who gets 
   await ownTrack.getByRole('button', { name: 'show' }).click()
   await expect(noteWith(owner, mark)).toContainText(`by ${mira.displayName}`)
   await noteWith(owner, mark).getByRole('button', { name: 'Take up again' }).click()
-  await expect(noteWith(owner, mark).getByRole('button', { name: 'Resolve' })).toBeVisible()
+  await expect(noteWith(owner, mark).getByRole('button', { name: 'Settle' })).toBeVisible()
   await removeNote(owner, mark)
 })
 
