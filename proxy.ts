@@ -20,15 +20,24 @@ export async function proxy(request: NextRequest) {
 
 const SHARE_PAGE = /^\/share\/([^/]+)$/
 
+/** As the page gets it: a letter of a token may be written as its number. */
+function decoded(part: string): string {
+  try {
+    return decodeURIComponent(part)
+  } catch {
+    return part
+  }
+}
+
 /**
  * On to the page. A page can't choose its status, so the page of a share link that has ended gets its 410 here; for the
  * others the page itself says that there is nothing. What the page reads in x-share-status was never sent by a browser.
  */
 async function passOn(request: NextRequest, headers: Headers): Promise<NextResponse> {
   headers.delete(SHARE_STATUS_HEADER)
-  const token = SHARE_PAGE.exec(request.nextUrl.pathname)?.[1]
-  if (!token) return NextResponse.next({ request: { headers } })
-  const status = await shareStatus(request, token)
+  const part = SHARE_PAGE.exec(request.nextUrl.pathname)?.[1]
+  if (!part) return NextResponse.next({ request: { headers } })
+  const status = await shareStatus(request, decoded(part))
   headers.set(SHARE_STATUS_HEADER, String(status))
   if (status === 200) return NextResponse.next({ request: { headers } })
   return NextResponse.rewrite(request.nextUrl, { status, request: { headers } })

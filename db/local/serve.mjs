@@ -1,5 +1,6 @@
 import { createServer } from 'node:http'
 import next from 'next'
+import { isReadableAddress } from './readable-address.mjs'
 
 /*
  * Next.js behind a plain server of Node's, which tells the handlers from where a request really came: Next.js itself hands
@@ -21,6 +22,10 @@ await app.prepare()
 const handle = app.getRequestHandler()
 
 server.on('request', (request, response) => {
+  if (!isReadableAddress(request.url)) {
+    response.writeHead(400, { 'content-type': 'text/plain; charset=utf-8', 'cache-control': 'no-store' })
+    return response.end('This address can’t be read. Check it, or go back to the page that led here.\n')
+  }
   request.headers[ADDRESS_HEADER] = request.socket.remoteAddress ?? ''
   handle(request, response).catch((error) => {
     console.error(error)

@@ -1,3 +1,4 @@
+import { NextRequest } from 'next/server'
 import { beforeAll, describe, expect, test } from 'vitest'
 import * as analysis from '@/app/api/projects/[projectId]/analyses/[analysisId]/route'
 import * as shareLinks from '@/app/api/projects/[projectId]/analyses/[analysisId]/share-links/route'
@@ -8,6 +9,7 @@ import { accessProject } from '@/db/queries/access'
 import { shareReportSchema, type ShareLink } from '@/lib/schemas/share'
 import { loadReportSubject } from '@/lib/server/load-report'
 import { shareStatus, visitShareReport } from '@/lib/server/share'
+import { proxy } from '@/proxy'
 import { openTestDatabase } from '../support/test-database'
 import { makeAnalysis, makeNote, makeProject, makeRun, type TestProject } from '../support/test-project'
 import { call, makeRequest } from '../support/test-server'
@@ -287,6 +289,20 @@ describe('what a link opens', () => {
     } finally {
       await archive({ archivedAt: null, archivedBy: null })
     }
+  })
+
+  test('its page is answered with 200, 404 or 410, however its token is written', async () => {
+    const [link, revoked] = [await makeLink(), await makeLink()]
+    await change(revoked.id, 'DELETE')
+    const statusOf = async (path: string, headers = {}) =>
+      (await proxy(new NextRequest(`http://localhost:3000${path}`, { headers }))).status
+    const encoded = (token: string) => [...token].map((c) => `%${c.charCodeAt(0).toString(16)}`).join('')
+    for (const write of [(token: string) => token, encoded]) {
+      expect(await statusOf(`/share/${write(link.token)}`)).toBe(200)
+      expect(await statusOf(`/share/${write(revoked.token)}`, { 'x-share-status': '200' })).toBe(410)
+      expect(await statusOf(`/share/${write('A'.repeat(43))}`)).toBe(404)
+    }
+    expect(await statusOf('/share/%ff')).toBe(404)
   })
 
   test('is counted once for each visit of the page, not for its data', async () => {

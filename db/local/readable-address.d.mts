@@ -1,0 +1,1 @@
+export function isReadableAddress(url?: string): boolean
