@@ -116,6 +116,19 @@ describe('a share link', () => {
     )
   })
 
+  test('shows the notes that were chosen for it, not those of another link to the same analysis', async () => {
+    const [one, both, none] = [
+      await makeLink({ ...FIELDS, noteIds: [chosen] }),
+      await makeLink({ ...FIELDS, noteIds: [chosen, hidden] }),
+      await makeLink(),
+    ]
+    const textsOf = async ({ token }: ShareLink) =>
+      shareReportSchema.parse(await (await open(token)).json()).subject.notes.map(({ text }) => text)
+    expect(await textsOf(one)).toEqual(['For the support desk'])
+    expect(await textsOf(both)).toEqual(['For the support desk', 'Not for strangers'])
+    expect(await textsOf(none)).toEqual([])
+  })
+
   test('is not changed from a version that somebody else has changed: a note taken out stays out', async () => {
     const { id, token } = await makeLink({ ...FIELDS, noteIds: [chosen, hidden] })
     const taken = await change(id, 'PATCH', { ...FIELDS, noteIds: [chosen], version: 1 })
