@@ -83,6 +83,7 @@ test('theirs is taken: the form goes on from it', async () => {
 test('in an archived project links are revoked, and neither made nor changed', async () => {
   await open({ isArchived: true })
   expect(screen.queryByRole('button', { name: /Make|^Change/ })).toBeNull()
+  screen.getByRole('button', { name: 'Close' })
   await userEvent.click(screen.getByRole('button', { name: /^Revoke the link of/ }))
   await userEvent.click(screen.getByRole('button', { name: 'Revoke the link' }))
   await waitFor(() => expect(sent).toEqual([['DELETE', null]]))
