@@ -107,6 +107,7 @@ async function runPlaywright(clusterUrl) {
   const code = await node([tool('@playwright', 'test', 'cli.js'), 'test'], {
     E2E_BASE_URL: `http://localhost:${port}`,
     E2E_REPORT: report,
+    E2E_DATABASE_URL: url.href,
     SIGN_INS_FILE: signInsFile,
   })
   for (const each of [server, worker, mail]) await each.stop()

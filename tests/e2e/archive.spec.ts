@@ -2,17 +2,9 @@ import { readFile } from 'node:fs/promises'
 import { expect, test, type Locator, type Page } from '@playwright/test'
 import { visitorRecording } from './fixtures/recordings'
 import { BenchPage } from './support/bench-page'
-import { demoPerson, signIn } from './support/people'
-
-const HILLSIDE = 'Hillside club mount'
-
-async function openProject(page: Page, name: string, subPath = ''): Promise<string> {
-  await page.goto('/projects')
-  const address = await page.getByRole('link', { name, exact: true }).first().getAttribute('href')
-  if (!address) throw new Error(`${name} has no address`)
-  await page.goto(address + subPath)
-  return address
-}
+import { comeBackFor } from './support/come-back'
+import { demoAddress, firstEntryAddress, HILLSIDE } from './support/demo-project'
+import { browserOf, enterAs } from './support/people'
 
 /** Next.js keeps an empty alert of its own on every page. */
 function refusalOn(page: Page): Locator {
@@ -21,15 +13,15 @@ function refusalOn(page: Page): Locator {
 
 /** The figures of the project's first analysis as its page shows them. */
 async function figuresOfFirstAnalysis(page: Page, address: string): Promise<string> {
-  await page.goto(`${address}/analyses`)
-  await page.getByRole('table').getByRole('link').first().click()
+  await page.goto(await firstEntryAddress(page, address, 'analyses'))
   return new BenchPage(page).allFigures()
 }
 
 test('everything is downloaded, brought in again, archived, opened and deleted', async ({ page, browser }) => {
   test.setTimeout(300_000)
-  await signIn(page, demoPerson('owner'))
-  const original = await openProject(page, HILLSIDE, '/settings')
+  await enterAs(page.context(), 'owner')
+  const original = await demoAddress(page)
+  await page.goto(`${original}/settings`)
   const [download] = await Promise.all([
     page.waitForEvent('download'),
     page.getByRole('link', { name: 'Download everything' }).click(),
@@ -39,8 +31,8 @@ test('everything is downloaded, brought in again, archived, opened and deleted',
   const figures = await figuresOfFirstAnalysis(page, original)
 
   // A stranger to the project brings it in: what is asked for and shown is theirs alone.
-  const other = await (await browser.newContext()).newPage()
-  await signIn(other, demoPerson('viewer'))
+  const other = await browserOf(browser, 'viewer')
+  await other.goto('/projects')
   await other.getByRole('link', { name: 'Bring in an archive' }).click()
   const input = other.getByLabel('Archive file')
   const zip = { name: `${HILLSIDE}.zip`, mimeType: 'application/zip' }
@@ -92,13 +84,12 @@ test('everything is downloaded, brought in again, archived, opened and deleted',
   await confirm.click()
   await expect(other).toHaveURL(/\/projects$/)
   await expect(other.locator(`a[href="${copy}"]`)).toHaveCount(0)
-  await tab.evaluate(() => window.dispatchEvent(new Event('focus')))
-  await expect(tab.getByText('This project is not there any more')).toBeVisible()
+  await comeBackFor(tab, tab.getByText('This project is not there any more'))
   expect((await tab.goto(copy))?.status()).toBe(404)
 })
 
 test('a file that is no archive is refused by name before it is sent', async ({ page }) => {
-  await signIn(page, demoPerson('editor'))
+  await enterAs(page.context(), 'editor')
   await page.goto('/projects/import')
   await page
     .getByLabel('Archive file')

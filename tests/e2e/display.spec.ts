@@ -1,30 +1,25 @@
 import { expect, test, type Browser, type Page } from '@playwright/test'
 import { BenchPage, firstNumber } from './support/bench-page'
-import { demoPerson, signIn } from './support/people'
+import { demoAddress, firstEntryAddress } from './support/demo-project'
+import { browserOf, demoPerson, signIn } from './support/people'
+import { SERVER_ORIGIN } from './support/server'
 
-const HILLSIDE = 'Hillside club mount'
 const DEFAULTS = { theme: null, swingMeasure: 'amplitude', displacementUnit: 'arcsec', timeZone: null }
 
 /** The viewer’s account is shared with other tests, so it is left as it was found. */
 test.afterEach(async ({ browser }) => {
-  const page = await pageOf(browser)
-  const { origin } = new URL(page.url())
-  const answer = await page.request.patch('/api/account/preferences', { data: DEFAULTS, headers: { origin } })
+  const page = await browserOf(browser, 'viewer')
+  const options = { data: DEFAULTS, headers: { origin: SERVER_ORIGIN } }
+  const answer = await page.request.patch('/api/account/preferences', options)
   expect(answer.status()).toBe(200)
   await page.context().close()
 })
 
-async function pageOf(browser: Browser): Promise<Page> {
+/** Signs in by the form, which is when a browser learns the theme of an account. */
+async function signedInPage(browser: Browser): Promise<Page> {
   const page = await (await browser.newContext()).newPage()
   await signIn(page, demoPerson('viewer'))
   return page
-}
-
-async function projectAddress(page: Page): Promise<string> {
-  await page.goto('/projects')
-  const address = await page.getByRole('link', { name: HILLSIDE }).first().getAttribute('href')
-  if (!address) throw new Error('The demo project has no address')
-  return address
 }
 
 /** The choices look like buttons; the radio lies over its words. */
@@ -63,12 +58,10 @@ async function seenOnBench(page: Page, head: string): Promise<Seen> {
 }
 
 test('peak-to-peak, pixels and New Zealand time are seen on bench and overview', async ({ browser }) => {
-  const page = await pageOf(browser)
-  const address = await projectAddress(page)
-  await page.goto(`${address}/analyses`)
-  await page.getByRole('table').getByRole('link').first().click()
-  await page.waitForURL(/\/analyses\/[0-9a-f-]+/)
-  const analysis = page.url()
+  const page = await browserOf(browser, 'viewer')
+  const address = await demoAddress(page)
+  const analysis = await firstEntryAddress(page, address, 'analyses')
+  await page.goto(analysis)
   const before = await seenOnBench(page, 'ampl. ″')
 
   await page.goto('/account')
@@ -98,14 +91,11 @@ test('peak-to-peak, pixels and New Zealand time are seen on bench and overview',
 })
 
 test('the start of a run is shown in the zone of the person, named', async ({ browser }) => {
-  const page = await pageOf(browser)
-  const address = await projectAddress(page)
-  await page.goto(`${address}/runs`)
-  await page.getByRole('table').getByRole('link').first().click()
-  await page.waitForURL(/\/runs\/[0-9a-f-]+/)
+  const page = await browserOf(browser, 'viewer')
+  const run = await firstEntryAddress(page, await demoAddress(page), 'runs')
+  await page.goto(run)
   const recorded = page.getByText('Recorded', { exact: true }).locator('xpath=following-sibling::dd')
   await expect(recorded).toHaveText(/UTC$/)
-  const run = page.url()
   await page.goto('/account')
   await chooseZone(page, 'calcutta', /^Calcutta time/)
   await page.goto(run)
@@ -116,19 +106,19 @@ test('the start of a run is shown in the zone of the person, named', async ({ br
 test('the theme follows the account into a second browser, and the switch in the head is kept too', async ({
   browser,
 }) => {
-  const first = await pageOf(browser)
+  const first = await signedInPage(browser)
   const theme = (page: Page) => page.locator('html').getAttribute('data-theme')
   expect(await theme(first)).toBeNull()
   await choose(first, 'Theme', 'Night')
   expect(await theme(first)).toBe('night')
-  const second = await pageOf(browser)
+  const second = await signedInPage(browser)
   expect(await theme(second)).toBe('night')
   await second.goto('/account')
   await expect(
     second.getByRole('radiogroup', { name: 'Theme of this account' }).getByRole('radio', { name: 'Night' }),
   ).toBeChecked()
   await choose(second, 'Theme of this account', 'Dusk')
-  const third = await pageOf(browser)
+  const third = await signedInPage(browser)
   expect(await theme(third)).toBe('dusk')
   for (const page of [first, second, third]) await page.context().close()
 })

@@ -1,88 +1,12 @@
 import { expect, test, type Browser, type Page } from '@playwright/test'
-import { visitorRecording } from './fixtures/recordings'
-import { BenchPage } from './support/bench-page'
+import { letInvitationsExpire } from './support/database'
 import { setMailRefusing } from './support/mail'
-import { makeOwnProject } from './support/own-project'
-import { demoPerson, signIn } from './support/people'
-import { PeoplePage } from './support/people-page'
+import { browserOf, demoPerson } from './support/people'
+import { joinWithoutAccount, newAddress, ownersPeople } from './support/people-page'
 
 async function freshPage(browser: Browser): Promise<Page> {
   return (await browser.newContext()).newPage()
 }
-
-/** The demo's owner on the People screen of a project of their own. */
-async function ownersPeople(browser: Browser, purpose: string): Promise<PeoplePage> {
-  const page = await freshPage(browser)
-  await signIn(page, demoPerson('owner'))
-  const people = new PeoplePage(page, await makeOwnProject(page, purpose))
-  await people.open()
-  return people
-}
-
-const newAddress = (name: string) => `${name}.${Date.now()}@hillside.example`
-
-/** Makes the account that an invitation asks for, and ends in the project. */
-async function joinWithoutAccount(page: Page, link: string, name: string): Promise<void> {
-  await page.goto(link)
-  await page.getByLabel('Name', { exact: true }).fill(name)
-  await page.getByLabel('Password', { exact: true }).fill('a quiet evening')
-  await page.getByRole('button', { name: 'Make the account and join' }).click()
-  await expect(page).toHaveURL(/\/projects\/[0-9a-f-]{36}$/)
-}
-
-test('an owner invites an editor without and a viewer with an account, who join from their mails', async ({
-  browser,
-}) => {
-  const owner = await ownersPeople(browser, 'Joining mount')
-  await expect(owner.page.getByRole('heading', { level: 1 })).toHaveText('Only you work on this mount')
-  const editorEmail = newAddress('nora')
-  const viewer = demoPerson('viewer')
-  await owner.invite(editorEmail, 'editor')
-  await owner.invite(viewer.email, 'viewer')
-  await expect(owner.page.getByRole('heading', { level: 1 })).toContainText('two invitations wait')
-  for (const email of [editorEmail, viewer.email]) await expect(owner.invitation(email)).toContainText(/sent \d+/)
-
-  const editorPage = await freshPage(browser)
-  const link = await owner.linkFor(editorEmail)
-  await editorPage.goto(link)
-  await expect(editorPage.getByRole('heading', { level: 1 })).toContainText(
-    `invites you to “${owner.project.name}” as an editor`,
-  )
-  await joinWithoutAccount(editorPage, link, 'Nora Newcomer')
-  await editorPage.goto(`${owner.project.address}/runs/new`)
-  const bench = new BenchPage(editorPage)
-  await bench.choose(visitorRecording().file)
-  await bench.measuredOnTheAxis()
-  const stored = editorPage.waitForResponse((response) => response.url().endsWith('/import'), { timeout: 45_000 })
-  await editorPage.getByRole('button', { name: 'Store this run' }).click()
-  expect((await stored).status()).toBe(200)
-  await editorPage.goto(`${owner.project.address}/runs`)
-  await expect(editorPage.getByRole('link', { name: 'visitor-run' })).toBeVisible()
-
-  const viewerPage = await freshPage(browser)
-  await viewerPage.goto(await owner.linkFor(viewer.email))
-  await viewerPage.getByRole('link', { name: 'Sign in to join' }).click()
-  await viewerPage.getByLabel('E-mail').fill(viewer.email)
-  await viewerPage.getByLabel('Password', { exact: true }).fill(viewer.password)
-  await viewerPage.getByRole('button', { name: 'Sign in' }).click()
-  await viewerPage.getByRole('button', { name: `Join as ${viewer.displayName}` }).click()
-  await expect(viewerPage).toHaveURL(new RegExp(`${owner.project.address}$`))
-  await viewerPage.goto(`${owner.project.address}/people`)
-  await expect(viewerPage.getByText('You are a viewer')).toBeVisible()
-  await expect(viewerPage.getByText(editorEmail)).toHaveCount(0)
-  await expect(viewerPage.getByRole('button', { name: 'Send the invitation' })).toHaveCount(0)
-  await expect(viewerPage.getByRole('button', { name: /^Remove/ })).toHaveCount(0)
-  const { origin } = new URL(viewerPage.url())
-  const refused = await viewerPage.request.patch(`/api${owner.project.address}`, {
-    headers: { origin },
-    data: { version: 1, name: 'Mine now' },
-  })
-  expect(refused.status()).toBe(403)
-
-  await owner.open()
-  await expect(owner.page.getByRole('heading', { level: 1 })).toHaveText('Three people share this mount')
-  await expect(owner.member('Nora Newcomer').getByRole('combobox')).toHaveValue('editor')
-})
 
 test('a link that was used, replaced or revoked says so, and what to do', async ({ browser }) => {
   const owner = await ownersPeople(browser, 'Ended links mount')
@@ -131,6 +55,31 @@ test('a link that was used, replaced or revoked says so, and what to do', async 
   })
 })
 
+test('an invitation that has expired lets nobody in until it is sent again', async ({ browser }) => {
+  const owner = await ownersPeople(browser, 'Expired link mount')
+  const email = newAddress('late')
+  await owner.invite(email, 'editor')
+  const link = await owner.linkFor(email)
+  const guest = await freshPage(browser)
+  await guest.goto(link)
+  await expect(guest.getByRole('button', { name: 'Make the account and join' })).toBeVisible()
+  await letInvitationsExpire(email)
+  // The page was open before the time ran out.
+  await guest.getByLabel('Name', { exact: true }).fill('Lars Late')
+  await guest.getByLabel('Password', { exact: true }).fill('a quiet evening')
+  await guest.getByRole('button', { name: 'Make the account and join' }).click()
+  await expect(guest.getByText('This invitation has expired')).toBeVisible()
+  await guest.goto(link)
+  await expect(guest.getByRole('heading', { level: 1 })).toHaveText('This invitation has expired')
+
+  await owner.open()
+  await expect(owner.invitation(email)).toContainText('expired')
+  const since = new Date()
+  await owner.page.getByRole('button', { name: `Send again to ${email}` }).click()
+  await joinWithoutAccount(guest, await owner.linkFor(email, since), 'Lars Late')
+  expect(new URL(guest.url()).pathname).toBe(owner.project.address)
+})
+
 test('an address that waits already, or is here, is not invited twice', async ({ browser }) => {
   const owner = await ownersPeople(browser, 'Twice mount')
   const email = newAddress('twice')
@@ -151,8 +100,7 @@ test('somebody signed in with another address is told both, and may join', async
   const email = newAddress('other')
   await owner.invite(email, 'editor')
   const editor = demoPerson('editor')
-  const page = await freshPage(browser)
-  await signIn(page, editor)
+  const page = await browserOf(browser, 'editor')
   await page.goto(await owner.linkFor(email))
   const notice = page.getByText('The invitation was sent to')
   await expect(notice).toContainText(email)

@@ -1,5 +1,5 @@
 import { expect, test, type Page } from '@playwright/test'
-import { demoPerson, signIn } from './support/people'
+import { enterAs } from './support/people'
 
 const RUN_COUNT = 130
 const driveTrain = { axisKind: 'worm', wheelTeeth: 152, wormStarts: 1, stages: [] }
@@ -40,7 +40,8 @@ const next = (page: Page) => page.getByRole('button', { name: 'Next', exact: tru
 
 test('a long list is sorted, paged and filtered, and Back returns to the same place', async ({ page }) => {
   test.setTimeout(240_000)
-  await signIn(page, demoPerson('owner'))
+  await enterAs(page.context(), 'owner')
+  await page.goto('/projects')
   const id = await makeLongProject(page)
   await page.goto(`/projects/${id}/runs`)
   await expect(page.getByRole('heading', { level: 1 })).toContainText(`${RUN_COUNT} runs`)

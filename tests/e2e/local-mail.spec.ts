@@ -1,7 +1,9 @@
 import { expect, test, type Page } from '@playwright/test'
 import { invitationListSchema } from '@/lib/schemas/people'
 import { setMailRefusing, waitForMail } from './support/mail'
-import { demoPerson, signIn } from './support/people'
+import { demoAddress } from './support/demo-project'
+import { enterAs } from './support/people'
+import { SERVER_ORIGIN } from './support/server'
 
 const subject = /invites you to “Hillside club mount”/
 
@@ -10,10 +12,9 @@ const subject = /invites you to “Hillside club mount”/
  * project's invitations.
  */
 async function invite(page: Page, email: string): Promise<string> {
-  await signIn(page, demoPerson('owner'))
-  const href = await page.getByRole('link', { name: 'Hillside club mount' }).first().getAttribute('href')
-  const invitations = `/api${href}/invitations`
-  const options = { data: { email, role: 'viewer' }, headers: { origin: new URL(page.url()).origin } }
+  await enterAs(page.context(), 'owner')
+  const invitations = `/api${await demoAddress(page)}/invitations`
+  const options = { data: { email, role: 'viewer' }, headers: { origin: SERVER_ORIGIN } }
   expect((await page.request.post(invitations, options)).status()).toBe(201)
   return invitations
 }

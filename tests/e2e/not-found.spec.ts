@@ -1,11 +1,12 @@
 import { expect, test } from '@playwright/test'
-import { demoPerson, signIn } from './support/people'
+import { demoAddress } from './support/demo-project'
+import { enterAs } from './support/people'
 
 const NOBODYS_ID = '5f0c0b9e-7d3c-4a58-9f0a-3d2f6b1c9e11'
 
 test('addresses that name nothing lead to the page that says so', async ({ page }) => {
-  await signIn(page, demoPerson('viewer'))
-  const project = await page.getByRole('link', { name: 'Hillside club mount' }).first().getAttribute('href')
+  await enterAs(page.context(), 'viewer')
+  const project = await demoAddress(page)
   const below = ['runs', 'analyses', 'corrections'].map((part) => `${project}/${part}`)
   for (const folder of ['/projects', ...below]) {
     for (const id of [NOBODYS_ID, 'no-uuid']) {

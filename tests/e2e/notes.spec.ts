@@ -1,7 +1,9 @@
 import { expect, test } from '@playwright/test'
+import { comeBackFor } from './support/come-back'
 import { waitForMail } from './support/mail'
-import { addWholeNote, browserOf, noteWith, openDemoAnalysis, removeNote } from './support/notes-page'
-import { demoPerson } from './support/people'
+import { openDemoAnalysis } from './support/demo-project'
+import { addWholeNote, noteWith, removeNote } from './support/notes-page'
+import { browserOf, demoPerson } from './support/people'
 
 test('an editor pins a note by clicking a picture and names the owner, who gets a mail; a viewer only reads', async ({
   browser,
@@ -101,7 +103,6 @@ test('new notes of others appear when one comes back to the page', async ({ brow
   await owner.goto(address)
   const text = `Seen at dusk ${Date.now()}`
   await addWholeNote(owner, text)
-  await editor.evaluate(() => window.dispatchEvent(new Event('focus')))
-  await expect(noteWith(editor, text)).toBeVisible({ timeout: 40_000 })
+  await comeBackFor(editor, noteWith(editor, text))
   await removeNote(owner, text)
 })

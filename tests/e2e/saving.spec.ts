@@ -1,6 +1,6 @@
 import { expect, test, type Page, type Route } from '@playwright/test'
 import { BenchPage } from './support/bench-page'
-import { demoPerson, signIn } from './support/people'
+import { demoPerson, enterAs } from './support/people'
 
 async function openSample(page: Page): Promise<BenchPage> {
   await page.goto('/bench?sample=1')
@@ -12,7 +12,7 @@ async function openSample(page: Page): Promise<BenchPage> {
 
 test('a session that ended before saving leads through sign-in, and the work is still there', async ({ page }) => {
   const person = demoPerson('editor')
-  await signIn(page, person)
+  await enterAs(page.context(), 'editor')
   const bench = await openSample(page)
   await page.getByLabel('Drift', { exact: true }).selectOption('2')
   await expect(page).toHaveURL(/[?&]drift=2/)
@@ -44,7 +44,7 @@ async function loseFirstAnswer(page: Page, path: RegExp, method: string): Promis
 }
 
 test('answers that are lost while saving cost a second press, and nothing is stored twice', async ({ page }) => {
-  await signIn(page, demoPerson('editor'))
+  await enterAs(page.context(), 'editor')
   await openSample(page)
   await loseFirstAnswer(page, /\/runs\?/, 'POST')
   await loseFirstAnswer(page, /\/import$/, 'PUT')

@@ -2,17 +2,14 @@ import { execFileSync } from 'node:child_process'
 import { writeFileSync } from 'node:fs'
 import { expect, test, type Page } from '@playwright/test'
 import { expectNoAxeViolations } from './support/axe'
-import { demoPerson, signIn } from './support/people'
+import { openDemoAnalysis } from './support/demo-project'
+import { enterAs } from './support/people'
 import { reportIsDrawn, SharePanel, strangersPage } from './support/report-page'
 
-/** The editor on the first saved analysis of the demo. */
+/** The editor on the newest saved analysis of the demo. */
 async function openAnalysis(page: Page): Promise<void> {
-  await signIn(page, demoPerson('editor'))
-  await page.getByRole('link', { name: 'Hillside club mount' }).first().click()
-  await page.waitForURL(/\/projects\/[0-9a-f-]+$/)
-  await page.goto(`${page.url()}/analyses`)
-  await page.getByRole('table').getByRole('link').first().click()
-  await page.waitForURL(/\/analyses\/[0-9a-f-]+/)
+  await enterAs(page.context(), 'editor')
+  await openDemoAnalysis(page)
 }
 
 /** Pages of a PDF; its objects name each of them once. */

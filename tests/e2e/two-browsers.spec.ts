@@ -1,8 +1,9 @@
 import { expect, test, type Page } from '@playwright/test'
 import { visitorRecording } from './fixtures/recordings'
 import { BenchPage } from './support/bench-page'
-import { addWholeNote, browserOf, noteWith, openDemoAnalysis, removeNote } from './support/notes-page'
-import { demoPerson } from './support/people'
+import { openDemoAnalysis } from './support/demo-project'
+import { addWholeNote, noteWith, removeNote } from './support/notes-page'
+import { browserOf, demoPerson } from './support/people'
 
 const mira = demoPerson('owner').displayName
 const tomas = demoPerson('editor').displayName

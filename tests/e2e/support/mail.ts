@@ -1,5 +1,6 @@
 import { expect, type APIRequestContext } from '@playwright/test'
 import { localMailListSchema, localMailSchema } from '@/lib/schemas/local-mail'
+import { SERVER_ORIGIN } from './server'
 
 const ADDRESS = '/api/local-mail'
 
@@ -40,7 +41,6 @@ export async function waitForMail(
 
 /** Makes the local mail server turn every mail away, as a server that is down does, or take mail again. */
 export async function setMailRefusing(request: APIRequestContext, isRefusing: boolean): Promise<void> {
-  const { origin } = new URL((await request.get(ADDRESS)).url())
-  const answer = await request.put(`${ADDRESS}/refusing`, { data: { isRefusing }, headers: { origin } })
+  const answer = await request.put(`${ADDRESS}/refusing`, { data: { isRefusing }, headers: { origin: SERVER_ORIGIN } })
   expect(answer.status()).toBe(200)
 }

@@ -1,25 +1,4 @@
-import { expect, type Browser, type Locator, type Page } from '@playwright/test'
-import { BenchPage } from './bench-page'
-import { demoPerson, signIn, type DemoPerson } from './people'
-
-/** A browser of its own, signed in as this person of the demo. */
-export async function browserOf(browser: Browser, role: DemoPerson['role']): Promise<Page> {
-  const page = await (await browser.newContext()).newPage()
-  await signIn(page, demoPerson(role))
-  return page
-}
-
-/** Opens the newest analysis of the demo’s mount; its address. */
-export async function openDemoAnalysis(page: Page): Promise<string> {
-  await page.goto('/projects')
-  const address = await page.getByRole('link', { name: 'Hillside club mount' }).first().getAttribute('href')
-  await page.goto(`${address}/analyses`)
-  const href = await page.getByRole('table').getByRole('link').first().getAttribute('href')
-  if (!href) throw new Error('The demo has no analysis')
-  await page.goto(href)
-  await new BenchPage(page).allFigures()
-  return href
-}
+import { expect, type Locator, type Page } from '@playwright/test'
 
 export function noteWith(page: Page, text: string): Locator {
   return page.getByRole('listitem').filter({ hasText: text })
@@ -32,6 +11,16 @@ export async function addWholeNote(page: Page, text: string): Promise<void> {
   await whole.getByRole('textbox', { name: 'Note' }).fill(text)
   await whole.getByRole('button', { name: 'Add note' }).click()
   await expect(noteWith(page, text)).toBeVisible()
+}
+
+/** Pins a note to a time of the track, typed in whole minutes. */
+export async function addTrackNote(page: Page, text: string, minutes: number): Promise<void> {
+  const track = page.getByRole('region', { name: 'Track' })
+  await track.getByRole('button', { name: 'Add a note' }).click()
+  await track.getByLabel('Time into the run').fill(String(minutes))
+  await track.getByRole('textbox', { name: 'Note' }).fill(text)
+  await track.getByRole('button', { name: 'Add note' }).click()
+  await expect(noteWith(page, text)).toContainText(`at ${minutes} min`)
 }
 
 /** Takes the note with this text away, whoever wrote it. */

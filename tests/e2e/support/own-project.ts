@@ -1,5 +1,6 @@
 import { expect, type Page } from '@playwright/test'
 import { z } from 'zod'
+import { SERVER_ORIGIN } from './server'
 
 interface OwnProject {
   name: string
@@ -10,9 +11,8 @@ interface OwnProject {
 /** A project of the test's own, made by whoever is signed in on the page, so that the demo stays as others expect it. */
 export async function makeOwnProject(page: Page, purpose: string): Promise<OwnProject> {
   const name = `${purpose} ${Date.now()}`
-  const { origin } = new URL(page.url())
   const answer = await page.request.post('/api/projects', {
-    headers: { origin },
+    headers: { origin: SERVER_ORIGIN },
     data: { name, driveTrain: { axisKind: 'worm', wheelTeeth: 152, wormStarts: 1, stages: [] } },
   })
   expect(answer.status()).toBe(201)

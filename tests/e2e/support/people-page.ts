@@ -1,5 +1,7 @@
-import { expect, type Locator, type Page } from '@playwright/test'
+import { expect, type Browser, type Locator, type Page } from '@playwright/test'
 import { waitForMail } from './mail'
+import { makeOwnProject } from './own-project'
+import { browserOf } from './people'
 
 /** The People screen of a project as its owner uses it. */
 export class PeoplePage {
@@ -35,4 +37,24 @@ export class PeoplePage {
     if (!link) throw new Error('The mail holds no link of an invitation')
     return new URL(link).pathname
   }
+}
+
+/** The demo's owner on the People screen of a project of their own. */
+export async function ownersPeople(browser: Browser, purpose: string): Promise<PeoplePage> {
+  const page = await browserOf(browser, 'owner')
+  const people = new PeoplePage(page, await makeOwnProject(page, purpose))
+  await people.open()
+  return people
+}
+
+/** An address that nobody has been invited at. */
+export const newAddress = (name: string) => `${name}.${Date.now()}@hillside.example`
+
+/** Makes the account that an invitation asks for, and ends in the project. */
+export async function joinWithoutAccount(page: Page, link: string, name: string): Promise<void> {
+  await page.goto(link)
+  await page.getByLabel('Name', { exact: true }).fill(name)
+  await page.getByLabel('Password', { exact: true }).fill('a quiet evening')
+  await page.getByRole('button', { name: 'Make the account and join' }).click()
+  await expect(page).toHaveURL(/\/projects\/[0-9a-f-]{36}$/)
 }

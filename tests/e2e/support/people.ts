@@ -1,7 +1,8 @@
 import { readFileSync } from 'node:fs'
-import { expect, type Page } from '@playwright/test'
+import { expect, type Browser, type BrowserContext, type Cookie, type Page } from '@playwright/test'
 import { z } from 'zod'
 import { waitForMail } from './mail'
+import { SERVER_ORIGIN } from './server'
 
 const signInsSchema = z.array(
   z.object({
@@ -28,6 +29,35 @@ export async function signIn(page: Page, { email, password }: Pick<DemoPerson, '
   await page.getByLabel('Password', { exact: true }).fill(password)
   await page.getByRole('button', { name: 'Sign in' }).click()
   await expect(page).toHaveURL(/\/projects$/)
+}
+
+/** Sessions of the demo's people, one each for all tests in this process. */
+const sessions = new Map<DemoPerson['role'], Cookie[]>()
+
+/**
+ * Lets a browser be signed in as a person of the demo without the form, for tests of something else. Several browsers
+ * share the session, so nothing here may end it.
+ */
+export async function enterAs(context: BrowserContext, role: DemoPerson['role']): Promise<void> {
+  const kept = sessions.get(role)
+  if (kept) return context.addCookies(kept)
+  const { email, password } = demoPerson(role)
+  const answer = await context.request.post('/api/auth/sign-in', {
+    data: { email, password },
+    headers: { origin: SERVER_ORIGIN },
+  })
+  expect(answer.status(), `sign-in of the demo's ${role}`).toBe(200)
+  sessions.set(
+    role,
+    (await context.cookies()).filter(({ httpOnly }) => httpOnly),
+  )
+}
+
+/** A browser of its own, signed in as this person of the demo. */
+export async function browserOf(browser: Browser, role: DemoPerson['role']): Promise<Page> {
+  const context = await browser.newContext()
+  await enterAs(context, role)
+  return context.newPage()
 }
 
 export interface Newcomer {

@@ -9,14 +9,15 @@ export class SharePanel {
     await expect(this.page.getByRole('dialog', { name: 'Share this analysis' })).toBeVisible()
   }
 
-  /** Makes a link for a week, and answers its address. */
-  async make(preface: string): Promise<string> {
+  /** Makes a link for a week, which shows the one note that holds this text, and answers its address. */
+  async make(preface: string, shownNote?: string): Promise<string> {
     const another = this.page.getByRole('button', { name: 'Make another link' })
     const send = this.page.getByRole('button', { name: 'Make the link' })
     await expect(another.or(send)).toBeVisible()
     if (await another.isVisible()) await another.click()
     await this.page.getByLabel('How long it lasts').selectOption('week')
     await this.page.getByLabel('Words to the reader').fill(preface)
+    if (shownNote) await this.page.getByRole('checkbox', { name: shownNote }).check()
     await send.click()
     const address = this.page.getByLabel(/^Address of the link/).first()
     await expect(address).toHaveValue(/\/share\/[\w-]{43}$/)
