@@ -4,12 +4,12 @@ import { useEffect, type ReactNode } from 'react'
 import { ButtonLink } from '@/components/ui/button'
 import { Notice } from '@/components/ui/notice'
 import { onRefused, RequestError } from '@/lib/client/fetcher'
-import { projectKey, useProjectStanding } from '@/lib/client/project-data'
+import { projectKey, useProject } from '@/lib/client/project-data'
 import { canManageProject } from '@/lib/schemas/rights'
 
 /** Says above every page of a project when it is archived, or not there any more; what is on the page stays readable. */
 export function ProjectFrame({ projectId, children }: { projectId: string; children: ReactNode }) {
-  const { data, error, mutate } = useProjectStanding(projectId)
+  const { data, error, mutate } = useProject(projectId)
   const isGone = error instanceof RequestError && error.status === 404
 
   // Whoever was removed, or lost a right, meets it at the next request of any part of the page.

@@ -24,9 +24,15 @@ export const projectsKey = '/api/projects'
 /** Every view of the list of projects, for `mutate`: a project came, went or changed. */
 export const isProjectsKey = (key: unknown) => typeof key === 'string' && key.split('?')[0] === projectsKey
 
+/**
+ * Asks again when the page is come back to: somebody may have put the project away or deleted it meanwhile. SWR tells only
+ * one of all who use an address that the page is back, so every use of the project has to want it.
+ */
 export function useProject(projectId: string) {
-  return useSWR<z.output<typeof projectSchema>, Error>(projectKey(projectId), (url: string) =>
-    getJson(url, projectSchema),
+  return useSWR<z.output<typeof projectSchema>, Error>(
+    projectKey(projectId),
+    (url: string) => getJson(url, projectSchema),
+    { revalidateOnFocus: true, focusThrottleInterval: 2000 },
   )
 }
 
@@ -76,14 +82,5 @@ export function useProjectContents(projectId: string, isWanted: boolean) {
   return useSWR<z.output<typeof projectContentsSchema>, Error>(
     isWanted ? `${projectKey(projectId)}/contents` : null,
     (url: string) => getJson(url, projectContentsSchema),
-  )
-}
-
-/** Asks again when the page is come back to: somebody may have put the project away or deleted it meanwhile. */
-export function useProjectStanding(projectId: string) {
-  return useSWR<z.output<typeof projectSchema>, Error>(
-    projectKey(projectId),
-    (url: string) => getJson(url, projectSchema),
-    { revalidateOnFocus: true, focusThrottleInterval: 2000 },
   )
 }
