@@ -3,6 +3,7 @@
 import { useRef, useState, type DragEvent } from 'react'
 import { Button } from '@/components/ui/button'
 import { classNames } from '@/components/ui/class-names'
+import { NightFileNote } from '@/components/ui/night-file-note'
 import { Notice } from '@/components/ui/notice'
 import { tooLargeFault } from '@/lib/formats/faults'
 import { MAX_FILE_BYTES } from '@/lib/formats/limits'
@@ -123,27 +124,13 @@ export function FileIntake({ onFiles, onSample, isMultiple = false, isBusy = fal
         </div>
       </div>
       {isNightNoteOpen ? (
-        <Notice
-          tone="warning"
-          title="The file window of your system is not red"
-          isLive
-          actions={
-            <>
-              <Button
-                onClick={() => {
-                  setNightNoteOpen(false)
-                  input.current?.click()
-                }}
-              >
-                Open it all the same
-              </Button>
-              <Button onClick={() => setNightNoteOpen(false)}>Stay dark</Button>
-            </>
-          }
-        >
-          It comes in the system’s own colours, which Night cannot tint. Turn the screen away from your eyes first, or
-          drop the file here.
-        </Notice>
+        <NightFileNote
+          onOpen={() => {
+            setNightNoteOpen(false)
+            input.current?.click()
+          }}
+          onStay={() => setNightNoteOpen(false)}
+        />
       ) : null}
       {isPasting ? (
         <PasteBox

@@ -3,7 +3,7 @@
 import { useRef, useState } from 'react'
 import { Button } from '@/components/ui/button'
 import { classNames } from '@/components/ui/class-names'
-import { Notice } from '@/components/ui/notice'
+import { NightFileNote } from '@/components/ui/night-file-note'
 
 /** A place to drop one archive on, or to choose it. */
 export function ArchivePicker({ onFile, isBusy }: { onFile: (file: File) => void; isBusy: boolean }) {
@@ -64,27 +64,13 @@ export function ArchivePicker({ onFile, isBusy }: { onFile: (file: File) => void
         </Button>
       </div>
       {isNightNoteOpen ? (
-        <Notice
-          tone="warning"
-          title="The file window of your system is not red"
-          isLive
-          actions={
-            <>
-              <Button
-                onClick={() => {
-                  setNightNoteOpen(false)
-                  input.current?.click()
-                }}
-              >
-                Open it all the same
-              </Button>
-              <Button onClick={() => setNightNoteOpen(false)}>Stay dark</Button>
-            </>
-          }
-        >
-          It comes in the system’s own colours, which Night cannot tint. Turn the screen away from your eyes first, or
-          drop the file here.
-        </Notice>
+        <NightFileNote
+          onOpen={() => {
+            setNightNoteOpen(false)
+            input.current?.click()
+          }}
+          onStay={() => setNightNoteOpen(false)}
+        />
       ) : null}
     </>
   )
