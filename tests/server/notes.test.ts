@@ -15,6 +15,8 @@ let project: TestProject
 let people: TestProject['people']
 let projectId: string
 let analysisId: string
+/** Somebody who is a member, but of another project. */
+let elsewhere: string
 
 beforeAll(async () => {
   project = await makeProject(database.db)
@@ -22,6 +24,7 @@ beforeAll(async () => {
   people = project.people
   const owner = { projectId, cookie: people.owner.cookie }
   analysisId = (await makeAnalysis(owner, (await makeRun(owner)).id)).id
+  elsewhere = (await makeProject(database.db)).people.editor.id
 })
 
 beforeEach(async () => {
@@ -111,6 +114,7 @@ describe('who is named in a note', () => {
 
   test.each([
     ['a stranger', () => people.stranger.id],
+    ['a member of another project', () => elsewhere],
     ['nobody', () => '5f0c0b9e-7d3c-4a58-9f0a-3d2f6b1c9e11'],
   ])('must be a member: %s is refused, and nothing is kept or sent', async (_, userId) => {
     const response = await write(people.editor, [people.owner.id, userId()], 'To a stranger')
