@@ -1,6 +1,6 @@
 import type { AnalysisResult, Recipe } from '@/lib/analysis/types'
 import type { newNoteSchema } from '@/lib/schemas/api'
-import type { DemoRun } from '@/lib/simulate/demo'
+import type { DemoPersonKey, DemoRun } from '@/lib/simulate/demo'
 import { HILLSIDE_BELT_ORDER } from '@/lib/simulate/hillside'
 import { defaultRecipe } from '@/lib/schemas/recipe'
 import { DEMO_DRIVE_TRAIN } from '@/lib/simulate/demo'
@@ -14,6 +14,9 @@ interface DemoNote {
   text: string
   /** Null: the figure that the note is pinned to is not in this result, so the note is left out. */
   anchor: (result: AnalysisResult) => Anchor | null
+  /** Whom the text names; nobody is sent a mail about it. */
+  mentions?: DemoPersonKey[]
+  settledBy?: DemoRun['recordedBy']
 }
 
 /** What the club wrote beside its analyses. */
@@ -50,10 +53,24 @@ export const DEMO_NOTES: DemoNote[] = [
     anchor: ({ worm }) => worm && { kind: 'worm-angle', angleDegrees: Math.round(worm.furthestAheadDegrees) % 360 },
   },
   {
+    runKey: '2026-11-14',
+    author: 'mira',
+    text: 'The worm’s second harmonic stands out. Ease the mesh a little before the next run.',
+    anchor: () => ({ kind: 'whole' }),
+    settledBy: 'tomas',
+  },
+  {
     runKey: '2026-11-21',
     author: 'tomas',
     text: 'First run since 16 November: eccentric eased by a quarter turn, both grub screws re-seated.',
     anchor: () => ({ kind: 'whole' }),
+  },
+  {
+    runKey: '2026-11-21',
+    author: 'mira',
+    text: '@Tomas Lindqvist, make the table from this one. Keep a copy of what is in the mount first.',
+    anchor: () => ({ kind: 'whole' }),
+    mentions: ['tomas'],
   },
 ]
 

@@ -16,7 +16,7 @@ import {
 import { DEMO_CORRECTION, DEMO_NOTES, demoRecipe } from './demo-story'
 import { accessProject, type ProjectAccess } from './queries/access'
 import { insertAnalysis } from './queries/analyses'
-import { insertAuditEvent } from './queries/audit'
+import { insertAuditEvent, type AuditEntry } from './queries/audit'
 import { insertCorrection } from './queries/corrections'
 import { insertNote } from './queries/notes'
 import { insertOpticsPreset } from './queries/optics-presets'
@@ -65,11 +65,15 @@ export async function seedDemo(db: Kysely<Database>, users: DemoUserIds): Promis
         analysisId,
         note: { anchor, text: note.text, mentions: [] },
       })
+      const settled = note.settledBy ? { resolvedAt: momentOf(index + 1), resolvedBy: users[note.settledBy] } : {}
       await trx
         .updateTable('notes')
-        .set({ createdAt: momentOf(index) })
+        .set({ createdAt: momentOf(index), ...settled })
         .where('id', '=', id)
         .execute()
+      for (const key of note.mentions ?? []) {
+        await trx.insertInto('noteMentions').values({ noteId: id, userId: users[key] }).execute()
+      }
     }
     await storeCorrection(trx, access[DEMO_CORRECTION.author], stored.get(DEMO_CORRECTION.runKey)!)
     const { run } = prepared[prepared.length - 1]
@@ -112,7 +116,7 @@ async function storeProject(trx: Transaction<Database>, users: DemoUserIds) {
     mira: await accessOf('mira'),
     tomas: await accessOf('tomas'),
   }
-  await insertAuditEvent(trx, access.mira, { action: 'project.create', subject: DEMO_PROJECT_NAME })
+  await writeLog(trx, access.mira, { action: 'project.create', subject: DEMO_PROJECT_NAME }, 0)
   await insertOpticsPreset(trx, access.mira, DEMO_OPTICS)
   return access
 }
@@ -145,8 +149,8 @@ async function storeRun(
     samplesSha256: read.samplesSha256,
     worm: result.worm,
   })
-  await insertAuditEvent(trx, access, { action: 'run.upload', subject: run.name })
-  await insertAuditEvent(trx, access, { action: 'analysis.save', subject: analysis.name })
+  await writeLog(trx, access, { action: 'run.upload', subject: run.name }, 2 * index + 1)
+  await writeLog(trx, access, { action: 'analysis.save', subject: analysis.name }, 2 * index + 2)
   await trx
     .updateTable('runs')
     .set({ createdAt: momentOf(index) })
@@ -174,12 +178,24 @@ async function storeCorrection(
     table: result.table,
     senseBasis: 'proven',
   })
-  await insertAuditEvent(trx, access, { action: 'correction.create', subject: name })
+  await writeLog(trx, access, { action: 'correction.create', subject: name }, 100)
 }
 
 function analysisName(run: DemoRun): string {
   const [date] = run.name.split(',')
   return `${date}, drift and worm`
+}
+
+/** An entry of the log with its place in the story; no two in it have the same action and subject. */
+async function writeLog(trx: Transaction<Database>, access: ProjectAccess, entry: AuditEntry, ordinal: number) {
+  await insertAuditEvent(trx, access, entry)
+  await trx
+    .updateTable('auditEvents')
+    .set({ at: momentOf(ordinal) })
+    .where('projectId', '=', access.projectId)
+    .where('action', '=', entry.action)
+    .where('subject', '=', entry.subject)
+    .execute()
 }
 
 /** All is stored in one transaction and hence at one time; lists by time want an order. */

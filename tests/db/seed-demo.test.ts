@@ -1,9 +1,11 @@
 import { createHash } from 'node:crypto'
 import { gunzipSync } from 'node:zlib'
+import { sql } from 'kysely'
 import { beforeAll, describe, expect, test } from 'vitest'
 import { accessProject, type ProjectAccess } from '@/db/queries/access'
 import { findAnalysis } from '@/db/queries/analyses'
 import { findCorrection } from '@/db/queries/corrections'
+import { listAuditEvents } from '@/db/queries/list-audit-events'
 import { listAnalyses } from '@/db/queries/list-analyses'
 import { listCorrections } from '@/db/queries/list-corrections'
 import { listProjects } from '@/db/queries/list-projects'
@@ -20,6 +22,7 @@ import { correctionSchema, noteListSchema } from '@/lib/schemas/api'
 import {
   analysisListSchema,
   analysisQuerySchema,
+  auditQuerySchema,
   correctionQuerySchema,
   projectQuerySchema,
   runListSchema,
@@ -143,12 +146,30 @@ describe('analyses', () => {
   test('carry notes of every kind', async () => {
     const { analyses } = await allAnalyses()
     const kinds = new Set<string>()
+    const settled: (string | null)[] = []
+    const named: string[] = []
     for (const { id } of analyses) {
       const { notes } = noteListSchema.parse(answered({ notes: await listNotes(database.db, access, id) }))
-      for (const { anchor } of notes) kinds.add(anchor.kind)
+      for (const { anchor, resolvedAt, resolvedByName, mentions } of notes) {
+        kinds.add(anchor.kind)
+        if (resolvedAt) settled.push(resolvedByName)
+        named.push(...mentions.map(({ displayName }) => displayName))
+      }
     }
     expect([...kinds].sort()).toEqual(['period', 'time', 'whole', 'worm-angle'])
+    expect(settled).toEqual(['Tomas Lindqvist'])
+    expect(named).toEqual(['Tomas Lindqvist'])
+    // Nobody at hillside.example reads mail.
+    const { rows } = await sql`select from graphile_worker._private_jobs`.execute(database.db)
+    expect(rows).toHaveLength(0)
   })
+})
+
+test('the log tells the story in its order', async () => {
+  const { events } = await listAuditEvents(database.db, access, auditQuerySchema.parse(wholePage))
+  const actions = events.map(({ action }) => action).reverse()
+  const perRun = demo.flatMap(() => ['run.upload', 'analysis.save'])
+  expect(actions).toEqual(['project.create', ...perRun, 'correction.create'])
 })
 
 test('there is one correction table, made after the mesh was eased; it closes over a turn', async () => {
