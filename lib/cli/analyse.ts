@@ -1,4 +1,4 @@
 import { printOutcome } from './print-outcome'
 import { runAnalyse } from './run-analyse'
 
-await printOutcome(() => runAnalyse(process.argv.slice(2)))
+await printOutcome(async (print) => print(await runAnalyse(process.argv.slice(2))))
