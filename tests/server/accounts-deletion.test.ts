@@ -1,3 +1,4 @@
+import { sql } from 'kysely'
 import { expect, test } from 'vitest'
 import { GET as planOf } from '@/app/api/account/deletion/route'
 import { DELETE as deleteAccount } from '@/app/api/account/route'
@@ -9,11 +10,13 @@ import { PATCH as changeRole } from '@/app/api/projects/[projectId]/members/[use
 import { GET as listMembers } from '@/app/api/projects/[projectId]/members/route'
 import { GET as listRuns } from '@/app/api/projects/[projectId]/runs/route'
 import { POST as createProject } from '@/app/api/projects/route'
+import { lockPeople } from '@/db/queries/memberships'
+import { openSession } from '@/lib/server/auth'
 import { takeMailJobs, writeTokenMail } from '../support/mail-queue'
 import { openTestDatabase } from '../support/test-database'
 import { insertPendingInvitation } from '../support/test-invitation'
 import { DRIVE_TRAIN, makeAnalysis, makeProject, makeRun, type TestProject } from '../support/test-project'
-import { call, PASSWORD, signUpPerson, type Person } from '../support/test-server'
+import { call, makeRequest, PASSWORD, signUpPerson, type Person } from '../support/test-server'
 
 const database = openTestDatabase()
 
@@ -96,6 +99,38 @@ test('two owners who delete their accounts at once leave no project without one'
   expect(await owners.where('role', '=', 'owner').execute()).toHaveLength(1)
 })
 
+test('an owner who deletes their account while the other one leaves waits, and is then the last', async () => {
+  const shared = await makeProject(database.db)
+  const { owner, editor } = shared.people
+  const other = { projectId: shared.id, userId: editor.id }
+  await database.db
+    .updateTable('memberships')
+    .set({ role: 'owner' })
+    .where('projectId', '=', other.projectId)
+    .where('userId', '=', other.userId)
+    .execute()
+  let removal: Promise<Response> | undefined
+  await database.db.transaction().execute(async (trx) => {
+    await lockPeople(trx, shared.id)
+    let isAnswered = false
+    removal = remove(owner).finally(() => (isAnswered = true))
+    // Either it waits for us, or it went ahead without.
+    while (!isAnswered && !(await isSomebodyWaiting())) await new Promise((resolve) => setTimeout(resolve, 5))
+    await trx
+      .deleteFrom('memberships')
+      .where('projectId', '=', other.projectId)
+      .where('userId', '=', other.userId)
+      .execute()
+  })
+  expect((await removal)?.status).toBe(409)
+  expect((await row(owner.id)).deletedAt).toBeNull()
+})
+
+async function isSomebodyWaiting(): Promise<boolean> {
+  const { rows } = await sql`select from pg_locks where not granted`.execute(database.db)
+  return rows.length > 0
+}
+
 test.each([1, 2, 3])(
   'people of the same projects who go while their roles change wait for each other (round %i)',
   async () => {
@@ -145,6 +180,8 @@ test('an empty shell stays, which nothing opens', async () => {
   await makeRun({ projectId: own, cookie: person.cookie })
   await writeTokenMail(database.db, 'reset-password', { userId: person.id, email: person.email })
   await takeMailJobs(database.db)
+  // Another browser in which they are signed in.
+  await openSession(makeRequest('/'), person.id)
   const response = await remove(person, { email: person.email.toUpperCase() })
   expect(response.status).toBe(204)
   expect(response.headers.get('set-cookie')).toMatch(/Max-Age=0/i)
