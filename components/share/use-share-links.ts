@@ -37,7 +37,6 @@ export function useShareLinks(projectId: string, analysisId: string) {
   }
 }
 
-
 /** The address that is handed on. */
 export function addressOf({ token }: ShareLink): string {
   return `${window.location.origin}/share/${token}`
