@@ -27,20 +27,25 @@ export interface Box {
  *
  * @param points in the order of their importance; pixels count from the upper left corner
  * @param room.blocked places that other writing takes
+ * @param room.floorPx where the stems below the points end, if there are any; a label stands across one only for want of another place
  */
 export function placeLabels(
   points: readonly LabelPoint[],
-  { widthPx, blocked = [] }: { widthPx: number; blocked?: readonly Box[] },
+  { widthPx, blocked = [], floorPx }: { widthPx: number; blocked?: readonly Box[]; floorPx?: number },
 ): PlacedLabel[] {
   const dots = points.map(({ xPx, yPx }) => ({ left: xPx - 5, right: xPx + 5, top: yPx - 5, bottom: yPx + 5 }))
+  const stems = points.flatMap(({ xPx, yPx }) =>
+    floorPx === undefined ? [] : [{ left: xPx - 1, right: xPx + 1, top: yPx, bottom: floorPx }],
+  )
   const taken: Box[] = [...blocked, ...dots]
   const placed: PlacedLabel[] = []
   for (const point of points) {
-    const found = candidates(point).find((candidate) => {
+    const free = candidates(point).filter((candidate) => {
       const box = boxOf(candidate)
       const isInside = box.left >= 0 && box.right <= widthPx && box.top >= 0
       return isInside && taken.every((other) => !overlap(box, other))
     })
+    const found = free.find((candidate) => stems.every((stem) => !overlap(boxOf(candidate), stem))) ?? free.at(0)
     if (!found) continue
     placed.push(found)
     taken.push(boxOf(found))

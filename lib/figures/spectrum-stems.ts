@@ -94,23 +94,30 @@ export function stemLabels(
   const titleWidth = Math.max(128, 7.3 * axisTitle.length + 8)
   const left = isNarrow(frame) ? width - titleWidth : 0
   const blocked = [{ left, right: left + titleWidth, top: 0, bottom: 17 }, taken]
-  return placeLabels(points, { widthPx: width, blocked }).map(({ xPx, yPx, text, anchor, liftPx }) => {
-    const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
-    return {
-      text,
-      x: xPx / width,
-      xref: 'paper',
-      xanchor: anchor === 'over' ? 'center' : anchor === 'right' ? 'left' : 'right',
-      xshift: anchor === 'over' ? 0 : anchor === 'right' ? 7 : -7,
-      y: 1 - yPx / heightPx,
-      yref: 'paper',
-      yanchor: anchor === 'over' ? 'bottom' : 'middle',
-      yshift: liftPx + (anchor === 'over' ? 5 : 3),
-      showarrow: false,
-      // A curve that passes behind the word would strike it through.
-      bgcolor: withAlpha(frame.colors.card, 0.8),
-      borderpad: 0,
-      font: { family: SANS, size: 13, weight: 600, color: stem?.isWorm ? frame.colors.brass : frame.colors.verdigris },
-    }
-  })
+  return placeLabels(points, { widthPx: width, blocked, floorPx: heightPx }).map(
+    ({ xPx, yPx, text, anchor, liftPx }) => {
+      const stem = points.find((point) => point.xPx === xPx && point.text === text)?.stem
+      return {
+        text,
+        x: xPx / width,
+        xref: 'paper',
+        xanchor: anchor === 'over' ? 'center' : anchor === 'right' ? 'left' : 'right',
+        xshift: anchor === 'over' ? 0 : anchor === 'right' ? 7 : -7,
+        y: 1 - yPx / heightPx,
+        yref: 'paper',
+        yanchor: anchor === 'over' ? 'bottom' : 'middle',
+        yshift: liftPx + (anchor === 'over' ? 5 : 3),
+        showarrow: false,
+        // A curve that passes behind the word would strike it through.
+        bgcolor: withAlpha(frame.colors.card, 0.8),
+        borderpad: 0,
+        font: {
+          family: SANS,
+          size: 13,
+          weight: 600,
+          color: stem?.isWorm ? frame.colors.brass : frame.colors.verdigris,
+        },
+      }
+    },
+  )
 }

@@ -74,6 +74,16 @@ describe('labels beside stems', () => {
     expect(label).toMatchObject({ anchor: 'right', liftPx: -9 })
     expect(placeLabels([{ xPx: 3, yPx: 60, text: 'a long name' }], { widthPx: 800 })[0].anchor).toBe('right')
   })
+
+  test('is not struck through by a stem where another place is free, and stands across one where none is', () => {
+    const points = [
+      { xPx: 96, yPx: 20, text: 'worm' },
+      { xPx: 108, yPx: 90, text: 'belt' },
+    ]
+    expect(placeLabels(points, { widthPx: 800 })[1].anchor).toBe('over')
+    expect(placeLabels(points, { widthPx: 800, floorPx: 200 })[1].anchor).toBe('right')
+    expect(placeLabels(points, { widthPx: 130, floorPx: 200 })[1].anchor).toBe('over')
+  })
 })
 
 describe('error ellipse', () => {
