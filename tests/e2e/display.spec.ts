@@ -97,7 +97,7 @@ test('the start of a run is shown in the zone of the person, named', async ({ br
   const recorded = page.getByText('Recorded', { exact: true }).locator('xpath=following-sibling::dd')
   await expect(recorded).toHaveText(/UTC$/)
   await page.goto('/account')
-  await chooseZone(page, 'calcutta', /^Calcutta time/)
+  await chooseZone(page, 'calcutta', /^Kolkata time/)
   await page.goto(run)
   await expect(recorded).toHaveText(/GMT\+5:30$/)
   await page.context().close()
